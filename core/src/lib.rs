@@ -1,0 +1,5 @@
+//! Endwall.
+#![no_std]
+pub mod gas;
+pub mod number;
+pub mod shock;

@@ -1,0 +1,299 @@
+//! [`Ball`]: a pair of doubles with a running error radius.
+
+use super::counted::Counted;
+use super::enclosure::Enclosure;
+use super::rational::Rational;
+use super::round::{UNIT, add_down, add_up, in_range, power_of_two, sqrt, two_product, two_sum};
+use super::traits::{Positive, Semifield};
+use core::ops::{Add, Div, Mul, Neg, Sub};
+
+/// A real number within `radius` of head + tail: about 30 digits, and a bound that is computed along.
+///
+/// It proves formulas with subtraction, at a point. Every rounding error that is not recovered by an error-free transform is
+/// bounded by u times the magnitude of the rounded result and added to the radius.
+///
+/// ```
+/// use endwall::number::{Ball, Semifield};
+/// let tiny = Ball::from(1e-20);
+/// let one = Ball::whole(1);
+/// let recovered = (one + tiny) - one;
+/// assert!(recovered.enclosure().contains(1e-20));
+/// assert!(recovered.enclosure().width() < 1e-31);
+/// ```
+#[derive(Clone, Copy, Debug)]
+pub struct Ball {
+    head: f64,
+    tail: f64,
+    radius: f64,
+}
+
+/// Added wherever a rounding may have underflowed: products here are at least 2⁻⁹⁶⁰, their tails' errors at most 2⁻¹⁰⁷⁴ each.
+const TINY: f64 = f64::from_bits(1 << 52);
+
+/// u times a sum of magnitudes of rounded results, rounded up; 0 only if all are 0.
+#[inline(always)]
+fn roundings(magnitudes: f64) -> f64 {
+    if magnitudes == 0.0 { 0.0 } else { up(magnitudes * UNIT) + 64.0 * TINY }
+}
+
+/// Covers the at most 2⁶ roundings by which a sum of non-negative terms may be too small.
+#[inline(always)]
+fn up(radius: f64) -> f64 {
+    radius * (1.0 + 64.0 * f64::EPSILON)
+}
+
+/// a·b of non-negative bounds, rounded up; 0 only if one is 0.
+#[inline(always)]
+fn product_up(a: f64, b: f64) -> f64 {
+    if a == 0.0 || b == 0.0 { 0.0 } else { up(a * b) + TINY }
+}
+
+impl From<f64> for Ball {
+    /// The exact number x.
+    #[inline(always)]
+    fn from(x: f64) -> Self {
+        Self::computed(x, 0.0, 0.0)
+    }
+}
+
+impl From<Counted> for Ball {
+    #[inline(always)]
+    fn from(x: Counted) -> Self {
+        let (head, tail) = x.pair();
+        Self::computed(head, tail, x.error_bound())
+    }
+}
+
+impl From<Rational> for Ball {
+    /// An exact rational number within 2^±900, else unknown.
+    fn from(x: Rational) -> Self {
+        if x.is_zero() {
+            return Self::from(0.0);
+        }
+        let nearest = x.to_f64();
+        if Rational::from(nearest) == x {
+            return Self::from(nearest);
+        }
+        let magnitude = Counted::from_rational(x, -900, 900).map_or(Self::UNKNOWN, Self::from);
+        if x.is_negative() { -magnitude } else { magnitude }
+    }
+}
+
+impl Ball {
+    /// 2⁻²⁰⁰, the least value that enters a relation.
+    pub const SMALLEST_ENTRY: f64 = power_of_two(-200);
+    /// 2²⁰⁰, the greatest.
+    pub const LARGEST_ENTRY: f64 = power_of_two(200);
+
+    /// Nothing is known.
+    pub(crate) const UNKNOWN: Self = Self { head: 0.0, tail: 0.0, radius: f64::INFINITY };
+
+    /// head + tail ± radius, brought into normal form; unknown if it is not finite.
+    #[inline(always)]
+    fn computed(head: f64, tail: f64, radius: f64) -> Self {
+        let (head, tail) = two_sum(head, tail);
+        // A radius that is not a number fails the comparison.
+        if head.is_finite() && tail.is_finite() && radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
+    }
+
+    /// The ball of all numbers in the enclosure.
+    pub fn around(x: Enclosure) -> Self {
+        let middle = x.middle();
+        let radius = add_up(x.high(), -middle).max(add_up(middle, -x.low()));
+        Self::computed(middle, 0.0, radius)
+    }
+
+    /// The same ball, larger by a non-negative amount.
+    #[inline(always)]
+    pub(crate) fn widened(self, by: f64) -> Self {
+        Self::computed(self.head, self.tail, up(self.radius + by))
+    }
+
+    /// The double nearest to the middle.
+    #[inline(always)]
+    pub fn nearest(self) -> f64 {
+        self.head
+    }
+
+    /// The bound on the distance between the number and the middle.
+    pub fn radius(self) -> f64 {
+        self.radius
+    }
+
+    /// x/2, at any magnitude.
+    #[inline(always)]
+    pub(crate) fn halved(self) -> Self {
+        // Only a subnormal loses a bit.
+        let lost = if self.magnitude() == 0.0 { 0.0 } else { TINY };
+        Self::computed(self.head * 0.5, self.tail * 0.5, self.radius * 0.5 + lost)
+    }
+
+    /// 2ⁿ·x for small n; exact.
+    #[inline(always)]
+    pub(crate) fn scaled(self, n: i32) -> Self {
+        let factor = power_of_two(n.clamp(-1000, 1000));
+        let scaled = Self { head: self.head * factor, tail: self.tail * factor, radius: product_up(self.radius, factor) };
+        if scaled.head == 0.0 && self.head == 0.0 || in_range(scaled.head) { scaled } else { Self::UNKNOWN }
+    }
+
+    /// The best enclosure of the ball.
+    #[inline(always)]
+    pub fn enclosure(self) -> Enclosure {
+        if self.radius == f64::INFINITY {
+            return Enclosure::UNKNOWN;
+        }
+        Enclosure::ordered(
+            add_down(self.head, add_down(self.tail, -self.radius)),
+            add_up(self.head, add_up(self.tail, self.radius)),
+        )
+    }
+
+    /// A bound on |x| from above.
+    #[inline(always)]
+    pub(crate) fn magnitude(self) -> f64 {
+        up(self.head.abs() + self.tail.abs() + self.radius)
+    }
+
+    /// A positive bound on |x| from below, or something ≤ 0.
+    #[inline(always)]
+    fn mignitude(self) -> f64 {
+        let inner = self.head.abs() - self.tail.abs() - self.radius;
+        inner - inner.abs() * 8.0 * f64::EPSILON
+    }
+
+    /// True if every number of the ball is positive.
+    pub fn is_certainly_positive(self) -> bool {
+        self.head > 0.0 && self.mignitude() > 0.0
+    }
+
+    /// True if every number of the ball is negative.
+    pub fn is_certainly_negative(self) -> bool {
+        (-self).is_certainly_positive()
+    }
+}
+
+impl Semifield for Ball {
+    #[inline(always)]
+    fn whole(n: u32) -> Self {
+        Self { head: f64::from(n), tail: 0.0, radius: 0.0 }
+    }
+
+    #[inline(always)]
+    fn doubled(self) -> Self {
+        Self::computed(self.head + self.head, self.tail + self.tail, self.radius + self.radius)
+    }
+}
+
+impl Add for Ball {
+    type Output = Self;
+    #[inline(always)]
+    fn add(self, other: Self) -> Self {
+        let (head, error) = two_sum(self.head, other.head);
+        let (tails, first) = two_sum(self.tail, other.tail);
+        let (tail, second) = two_sum(error, tails);
+        // Sums of doubles never underflow inexactly, so the errors themselves are known and are added to the radius as they are.
+        Self::computed(head, tail, up(self.radius + other.radius + first.abs() + second.abs()))
+    }
+}
+
+impl Neg for Ball {
+    type Output = Self;
+    #[inline(always)]
+    fn neg(self) -> Self {
+        Self { head: -self.head, tail: -self.tail, radius: self.radius }
+    }
+}
+
+impl Sub for Ball {
+    type Output = Self;
+    #[inline(always)]
+    fn sub(self, other: Self) -> Self {
+        self + -other
+    }
+}
+
+impl Mul for Ball {
+    type Output = Self;
+    /// head·head exactly as two doubles, plus both cross products; what is dropped is tail·tail.
+    #[inline(always)]
+    fn mul(self, other: Self) -> Self {
+        let spread = product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius);
+        if self.head == 0.0 || other.head == 0.0 {
+            // A zero head means a zero middle: all that is left is the spread.
+            return Self::computed(0.0, 0.0, up(spread));
+        }
+        let head = self.head * other.head;
+        if !(in_range(head) && in_range(self.head) && in_range(other.head)) {
+            return Self::UNKNOWN;
+        }
+        let (head, error) = two_product(self.head, other.head);
+        let first = self.head * other.tail;
+        let second = self.tail * other.head;
+        let (cross, third) = two_sum(first, second);
+        let (tail, fourth) = two_sum(error, cross);
+        let dropped = product_up(self.tail.abs(), other.tail.abs());
+        let lost = roundings(first.abs() + second.abs()) + third.abs() + fourth.abs() + dropped;
+        Self::computed(head, tail, up(spread + lost))
+    }
+}
+
+impl Div for Ball {
+    type Output = Self;
+    /// q = RN(head/head) with its exact remainder r; A/B − q = (r + a.tail − q·b.tail + …)/B.
+    #[inline(always)]
+    fn div(self, other: Self) -> Self {
+        let divisor = other.mignitude();
+        // A divisor that is not a number, or that may be zero, fails here.
+        if !(divisor > 0.0 && divisor < f64::INFINITY) {
+            return Self::UNKNOWN;
+        }
+        if self.head == 0.0 {
+            let radius = self.radius / divisor;
+            return Self::computed(0.0, 0.0, if self.radius == 0.0 { 0.0 } else { up(radius) + TINY });
+        }
+        let quotient = self.head / other.head;
+        if !(in_range(quotient) && in_range(self.head) && in_range(other.head)) {
+            return Self::UNKNOWN;
+        }
+        let (p, error) = two_product(quotient, other.head);
+        let remainder = (self.head - p) - error;
+        let shift = quotient * other.tail;
+        let (tails, first) = two_sum(self.tail, -shift);
+        let (numerator, second) = two_sum(remainder, tails);
+        let tail = numerator / other.head;
+        // The quotient of the remainder is exact only if there is none.
+        let last = roundings(tail.abs());
+        let spread = self.radius
+            + product_up(quotient.abs(), other.radius)
+            + roundings(shift.abs())
+            + first.abs()
+            + second.abs()
+            // Divided by head instead of by the true divisor.
+            + product_up(tail.abs(), other.tail.abs() + other.radius);
+        let spread = if spread == 0.0 { 0.0 } else { up(spread) / divisor + TINY };
+        Self::computed(quotient, tail, up(spread + last))
+    }
+}
+
+impl Positive for Ball {
+    /// s = RN(√head) with its exact remainder; √X = s + Δ/2s − Δ²/(2s(s + √X)²), Δ = X − s².
+    #[inline(always)]
+    fn sqrt(self) -> Self {
+        if self.head == 0.0 && self.radius == 0.0 {
+            return self;
+        }
+        if !self.is_certainly_positive() || !in_range(self.head) {
+            return Self::UNKNOWN;
+        }
+        let root = sqrt(self.head);
+        let (p, error) = two_product(root, root);
+        let remainder = (self.head - p) - error;
+        let (numerator, first) = two_sum(remainder, self.tail);
+        let tail = numerator / (root + root);
+        let distance = up(remainder.abs() + self.tail.abs() + self.radius);
+        let curvature = product_up(distance, distance / root) / (2.0 * root * root);
+        let spread = up(self.radius + first.abs()) / (root + root) + curvature;
+        let spread = if spread == 0.0 { 0.0 } else { up(spread) + TINY };
+        Self::computed(root, tail, up(spread + roundings(tail.abs())))
+    }
+}

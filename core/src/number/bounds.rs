@@ -1,0 +1,157 @@
+//! The range of a function of several inputs, each known within a tolerance.
+
+use super::dual::Dual;
+use super::enclosure::Enclosure;
+use super::known::Known;
+
+/// Halvings of one input, at most.
+const HALVINGS: u32 = 6;
+/// Boxes that are looked at, at most.
+const BOXES: u32 = 4096;
+/// Boxes that wait: one for each halving on the way to the smallest.
+const WAITING: usize = 48;
+
+/// A part of the box of all inputs.
+#[derive(Clone, Copy)]
+struct Part<const N: usize> {
+    inputs: [Known; N],
+    halvings: [u32; N],
+}
+
+/// An enclosure of all values of a function over the box of its inputs.
+///
+/// `slopes` gives value and slopes over a box, `point` the enclosure at one corner. On a part of the box where every slope keeps its sign
+/// (proven by interval arithmetic) the function is monotone in each input, so two corners bound it as tightly as `point` does. Elsewhere the
+/// part is halved along the input that matters most, at most 2⁶ times each; what then still has no sign is bounded by the mean-value
+/// form value(middle) + slope·(box − middle), whose over-width falls with the square of the part's width.
+pub(crate) fn bounds<const N: usize>(
+    inputs: [Known; N],
+    slopes: impl Fn([Dual<Enclosure, N>; N]) -> Dual<Enclosure, N>,
+    point: impl Fn([Known; N]) -> Enclosure,
+) -> Enclosure {
+    let whole = Part { inputs, halvings: [0; N] };
+    let mut waiting = [whole; WAITING];
+    let mut count = 1usize;
+    let mut range = point(inputs.map(middle));
+    let mut looked_at = 0;
+    while count > 0 {
+        count -= 1;
+        let part = waiting.get(count).copied().unwrap_or(whole);
+        looked_at += 1;
+        let mut index = 0;
+        let variables = part.inputs.map(|input| {
+            index += 1;
+            Dual::variable(input.enclosure(), index - 1)
+        });
+        let result = slopes(variables);
+        if result.value().is_bounded() && range.encloses(result.value()) {
+            continue;
+        }
+        let worst = worst_input(&part, &result);
+        let room = count + 2 <= WAITING && looked_at < BOXES;
+        match worst {
+            None => {
+                let corner = |upper: bool| {
+                    let mut inputs = part.inputs;
+                    for (input, slope) in inputs.iter_mut().zip(result.slopes()) {
+                        *input = end(*input, (slope.low() >= 0.0) == upper);
+                    }
+                    point(inputs)
+                };
+                range = range.hull(corner(false)).hull(corner(true));
+            }
+            Some(at) if room && part.halvings.get(at).is_some_and(|done| *done < HALVINGS) => {
+                for (half, slot) in halves(&part, at).into_iter().zip(waiting.iter_mut().skip(count)) {
+                    *slot = half;
+                }
+                count += 2;
+            }
+            Some(_) => range = range.hull(mean_value(&part, &result, &point)),
+        }
+    }
+    range
+}
+
+/// The input whose slope has no proven sign and contributes most to the width; `None` if the function is monotone in all.
+fn worst_input<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>) -> Option<usize> {
+    let mut worst = None;
+    let mut most = -1.0;
+    for (at, (input, slope)) in part.inputs.iter().zip(result.slopes()).enumerate() {
+        let signed = slope.is_bounded() && (slope.low() >= 0.0 || slope.high() <= 0.0);
+        if input.exact().is_none() && !signed {
+            let weight = slope.low().abs().max(slope.high().abs()) * input.enclosure().width();
+            if weight > most || weight.is_nan() {
+                (worst, most) = (Some(at), weight);
+            }
+        }
+    }
+    worst
+}
+
+/// Both halves of a part along one input.
+fn halves<const N: usize>(part: &Part<N>, at: usize) -> [Part<N>; 2] {
+    let half = |upper: bool| {
+        let mut half = *part;
+        if let (Some(input), Some(done)) = (half.inputs.get_mut(at), half.halvings.get_mut(at)) {
+            let whole = input.enclosure();
+            let middle = whole.middle();
+            *input = Known::Within(if upper { Enclosure::ordered(middle, whole.high()) } else { Enclosure::ordered(whole.low(), middle) });
+            *done += 1;
+        }
+        half
+    };
+    [half(false), half(true)]
+}
+
+/// value(middle) + Σ slope·(box − middle), and no more than the plain value over the box.
+fn mean_value<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, point: impl Fn([Known; N]) -> Enclosure) -> Enclosure {
+    let mut value = point(part.inputs.map(middle));
+    for (input, slope) in part.inputs.iter().zip(result.slopes()) {
+        if input.exact().is_none() {
+            let whole = input.enclosure();
+            value = value + slope * (whole - Enclosure::from(whole.middle()));
+        }
+    }
+    value.intersection(result.value()).unwrap_or(value)
+}
+
+/// The middle of a tolerance, or the exact number.
+fn middle(input: Known) -> Known {
+    end_of(input, Enclosure::middle)
+}
+
+/// One end of a tolerance, or the exact number.
+fn end(input: Known, upper: bool) -> Known {
+    end_of(input, if upper { Enclosure::high } else { Enclosure::low })
+}
+
+fn end_of(input: Known, choice: fn(Enclosure) -> f64) -> Known {
+    match input {
+        Known::Exactly(_) => input,
+        Known::Within(x) => Known::from(choice(x)),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::number::Signed;
+
+    /// x² − xy, whose least value inside a box lies at no corner.
+    fn saddle<S: Signed>([x, y]: [S; 2]) -> S {
+        x.squared() - x * y
+    }
+
+    #[test]
+    fn a_minimum_inside_is_found() {
+        let within = |low, high| Known::Within(Enclosure::new(low, high).unwrap());
+        let point = |inputs: [Known; 2]| saddle(inputs.map(Known::enclosure));
+        // On x in [0, 1], y = 1: least −1/4 at 1/2, greatest 0.
+        let range = bounds([within(0.0, 1.0), Known::from(1.0)], saddle, point);
+        assert!(range.contains(-0.25) && range.contains(0.0));
+        assert!(range.width() < 0.25 * 1.01, "{range:?}");
+        // Monotone in both: the two corners, exactly.
+        let range = bounds([within(2.0, 3.0), within(1.0, 1.5)], saddle, point);
+        assert_eq!((range.low(), range.high()), (1.0, 6.0));
+    }
+}

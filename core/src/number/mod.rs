@@ -1,0 +1,27 @@
+//! Floor 1: what a number is, and how it is proven.
+mod ball;
+mod bounds;
+mod counted;
+mod dual;
+mod display;
+mod elementary;
+mod enclosure;
+mod exact;
+mod known;
+mod plain;
+mod rational;
+mod root;
+mod round;
+mod traits;
+mod wide;
+pub use ball::Ball;
+pub(crate) use bounds::bounds;
+pub use counted::Counted;
+pub use display::Digits;
+pub use dual::Dual;
+pub use enclosure::{Enclosure, Quality};
+pub use exact::Exact;
+pub use known::Known;
+pub use rational::{Rational, RationalError};
+pub use root::{Function, RootError, root};
+pub use traits::{Elementary, ElementarySlopes, Positive, Semifield, Signed};

@@ -1,0 +1,454 @@
+//! Exact decimals and ratios: a number as it was typed.
+
+use core::cmp::Ordering;
+use core::fmt;
+use core::str::FromStr;
+
+/// An exact rational number ± numerator/denominator · 2ᵉ.
+///
+/// A typed decimal (`296.2`), a ratio (`5/3`) and a double are all of this form, so nothing is rounded on entry. The two
+/// integers have 128 bits: about 38 significant digits, or powers of ten to 10^±38.
+///
+/// A double that is not a number is kept as an indefinite value, and is refused by the function that receives it.
+///
+/// ```
+/// use endwall::number::Rational;
+/// let temperature: Rational = "296.2".parse().unwrap();
+/// assert_eq!(temperature, Rational::ratio(2962, 10).unwrap());
+/// assert_ne!(temperature, Rational::from(296.2)); // the double nearest 296.2 is another number
+/// assert_eq!(temperature.to_f64(), 296.2);
+/// ```
+#[derive(Clone, Copy, Debug)]
+pub struct Rational {
+    negative: bool,
+    numerator: u128,
+    denominator: u128,
+    exponent: i32,
+}
+
+/// Why a text is not an exact number.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum RationalError {
+    /// The text is empty.
+    Empty,
+    /// A character that does not belong into a number, and its position in bytes.
+    Character(usize),
+    /// More digits, or a larger or smaller power of ten, than 128-bit integers hold (38 digits).
+    TooLong,
+    /// The denominator of a ratio is zero.
+    DividedByZero,
+}
+
+impl fmt::Display for RationalError {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        match self {
+            Self::Empty => f.write_str("no number was given"),
+            Self::Character(at) => write!(f, "not a number: character {} does not belong there", at + 1),
+            Self::TooLong => f.write_str("a number may have at most 38 digits and a power of ten within 1e-38 to 1e38"),
+            Self::DividedByZero => f.write_str("the denominator of a ratio must not be zero"),
+        }
+    }
+}
+
+impl core::error::Error for RationalError {}
+
+impl Rational {
+    /// Zero.
+    pub const ZERO: Self = Self::integer(0);
+    /// One.
+    pub const ONE: Self = Self::integer(1);
+
+    /// A whole number.
+    pub const fn integer(n: i64) -> Self {
+        Self { negative: n < 0, numerator: n.unsigned_abs() as u128, denominator: 1, exponent: 0 }
+    }
+
+    /// numerator/denominator in lowest terms; `None` if the denominator is zero.
+    pub const fn ratio(numerator: u128, denominator: u128) -> Option<Self> {
+        if denominator == 0 {
+            return None;
+        }
+        Some(Self { negative: false, numerator, denominator, exponent: 0 }.reduced())
+    }
+
+    /// The exact number that the double is.
+    fn from_double(x: f64) -> Self {
+        if !x.is_finite() {
+            return Self { negative: x < 0.0, numerator: u128::from(!x.is_nan()), denominator: 0, exponent: 0 };
+        }
+        let bits = x.to_bits();
+        let biased = ((bits >> 52) & 0x7ff) as i32;
+        let fraction = bits & ((1 << 52) - 1);
+        let mantissa = if biased == 0 { fraction } else { fraction | (1 << 52) };
+        Self {
+            negative: x < 0.0,
+            numerator: u128::from(mantissa),
+            denominator: 1,
+            exponent: biased.max(1) - 1075,
+        }
+        .reduced()
+    }
+
+    /// Lowest terms: odd numerator and denominator (the powers of two in the exponent), no common factor; one form for each number.
+    const fn reduced(mut self) -> Self {
+        if self.denominator == 0 {
+            return self;
+        }
+        if self.numerator == 0 {
+            return Self { negative: false, numerator: 0, denominator: 1, exponent: 0 };
+        }
+        let up = self.numerator.trailing_zeros();
+        let down = self.denominator.trailing_zeros();
+        self.numerator >>= up;
+        self.denominator >>= down;
+        self.exponent += up as i32 - down as i32;
+        let (mut a, mut b) = (self.numerator, self.denominator);
+        while b != 0 {
+            (a, b) = (b, a % b);
+        }
+        self.numerator /= a;
+        self.denominator /= a;
+        self
+    }
+
+    /// True unless it came from a double that is infinite or not a number.
+    pub const fn is_finite(self) -> bool {
+        self.denominator != 0
+    }
+
+    /// True if greater than zero.
+    pub const fn is_positive(self) -> bool {
+        self.is_finite() && self.numerator != 0 && !self.negative
+    }
+
+    /// True if equal to zero.
+    pub const fn is_zero(self) -> bool {
+        self.is_finite() && self.numerator == 0
+    }
+
+    /// True if less than zero.
+    pub const fn is_negative(self) -> bool {
+        self.is_finite() && self.negative
+    }
+
+    /// The absolute value.
+    pub const fn abs(mut self) -> Self {
+        self.negative = false;
+        self
+    }
+
+    /// The number with its sign changed.
+    pub const fn negated(mut self) -> Self {
+        self.negative = !self.negative && self.numerator != 0;
+        self
+    }
+
+    /// The numerator (odd or zero), the denominator (odd) and the power of two of |x|.
+    pub(crate) const fn parts(self) -> (u128, u128, i32) {
+        (self.numerator, self.denominator, self.exponent)
+    }
+
+    /// x·y, exactly; `None` where 128 bits do not hold it or an operand is not finite.
+    pub fn checked_mul(self, other: Self) -> Option<Self> {
+        if !self.is_finite() || !other.is_finite() {
+            return None;
+        }
+        // Cross-cancelled first, so that a result that fits is found.
+        let a = Self::ratio(self.numerator, other.denominator)?;
+        let b = Self::ratio(other.numerator, self.denominator)?;
+        Some(
+            Self {
+                negative: self.negative != other.negative,
+                numerator: a.numerator.checked_mul(b.numerator)?,
+                denominator: a.denominator.checked_mul(b.denominator)?,
+                exponent: self.exponent.checked_add(other.exponent)?.checked_add(a.exponent)?.checked_add(b.exponent)?,
+            }
+            .reduced(),
+        )
+    }
+
+    /// x/y, exactly; `None` where 128 bits do not hold it, y is zero or an operand is not finite.
+    pub fn checked_div(self, other: Self) -> Option<Self> {
+        if !other.is_finite() || other.numerator == 0 {
+            return None;
+        }
+        self.checked_mul(Self {
+            negative: other.negative,
+            numerator: other.denominator,
+            denominator: other.numerator,
+            exponent: other.exponent.checked_neg()?,
+        })
+    }
+
+    /// x + y, exactly; `None` where 128 bits do not hold it or an operand is not finite.
+    pub fn checked_add(self, other: Self) -> Option<Self> {
+        if !self.is_finite() || !other.is_finite() {
+            return None;
+        }
+        let exponent = if self.numerator == 0 {
+            other.exponent
+        } else if other.numerator == 0 {
+            self.exponent
+        } else {
+            self.exponent.min(other.exponent)
+        };
+        let common = {
+            let (mut a, mut b) = (self.denominator, other.denominator);
+            while b != 0 {
+                (a, b) = (b, a % b);
+            }
+            a
+        };
+        let denominator = self.denominator.checked_mul(other.denominator / common)?;
+        let scaled = |x: Self| -> Option<u128> {
+            let shift = if x.numerator == 0 { 0 } else { u32::try_from(x.exponent.checked_sub(exponent)?).ok()? };
+            let wide = x.numerator.checked_mul(denominator / x.denominator)?;
+            (shift <= wide.leading_zeros()).then(|| wide.checked_shl(shift).unwrap_or(0))
+        };
+        let (a, b) = (scaled(self)?, scaled(other)?);
+        let (negative, numerator) = if self.negative == other.negative {
+            (self.negative, a.checked_add(b)?)
+        } else if a >= b {
+            (self.negative, a - b)
+        } else {
+            (other.negative, b - a)
+        };
+        Some(Self { negative, numerator, denominator, exponent }.reduced())
+    }
+
+    /// x − y, exactly; `None` where 128 bits do not hold it or an operand is not finite.
+    pub fn checked_sub(self, other: Self) -> Option<Self> {
+        self.checked_add(other.negated())
+    }
+
+    /// Order by value; `None` if one is not finite or 128 bits do not hold the difference.
+    pub fn compare(self, other: Self) -> Option<Ordering> {
+        if self.is_finite() && other.is_finite() && (self.is_positive() != other.is_positive() || self.negative != other.negative) {
+            return Some(self.signum().cmp(&other.signum()));
+        }
+        let difference = self.checked_sub(other)?;
+        Some(difference.signum().cmp(&0))
+    }
+
+    const fn signum(self) -> i32 {
+        if self.numerator == 0 {
+            0
+        } else if self.negative {
+            -1
+        } else {
+            1
+        }
+    }
+
+    /// The nearest double, ties to even; infinite beyond the range of a double.
+    pub fn to_f64(self) -> f64 {
+        let magnitude = if self.denominator == 0 {
+            if self.numerator == 0 { f64::NAN } else { f64::INFINITY }
+        } else {
+            nearest(self.numerator, self.denominator, self.exponent)
+        };
+        if self.negative { -magnitude } else { magnitude }
+    }
+}
+
+/// RN(numerator/denominator·2ᵉ).
+fn nearest(numerator: u128, denominator: u128, exponent: i32) -> f64 {
+    if numerator == 0 {
+        return 0.0;
+    }
+    // The quotient by long division: leading part, then bits one by one until 66 are known, with what is left as sticky.
+    let mut quotient = numerator / denominator;
+    let mut rest = numerator % denominator;
+    let mut exponent = i64::from(exponent);
+    while quotient >> 66 == 0 && rest != 0 {
+        let twice_exceeds = rest >= denominator - rest;
+        rest = if twice_exceeds { rest - (denominator - rest) } else { rest + rest };
+        quotient = (quotient << 1) | u128::from(twice_exceeds);
+        exponent -= 1;
+    }
+    let length = 128 - i64::from(quotient.leading_zeros());
+    // Bits kept: 53, fewer where the result is subnormal.
+    let lowest = (exponent + length - 53).max(-1074);
+    let drop = lowest - exponent;
+    if drop <= 0 {
+        return scaled(quotient, exponent);
+    }
+    let mantissa = if drop > 127 {
+        0
+    } else {
+        let kept = quotient >> drop;
+        let lost = quotient & ((1 << drop) - 1);
+        let half = 1 << (drop - 1);
+        kept + u128::from(lost > half || (lost == half && (rest != 0 || kept & 1 == 1)))
+    };
+    scaled(mantissa, lowest)
+}
+
+/// m·2ⁿ where that is a double or overflows.
+fn scaled(mantissa: u128, exponent: i64) -> f64 {
+    libm::scalbn(mantissa as f64, exponent.clamp(-4000, 4000) as i32)
+}
+
+impl PartialEq for Rational {
+    fn eq(&self, other: &Self) -> bool {
+        self.is_finite()
+            && other.is_finite()
+            && (self.negative, self.numerator, self.denominator, self.exponent)
+                == (other.negative, other.numerator, other.denominator, other.exponent)
+    }
+}
+
+impl From<f64> for Rational {
+    fn from(x: f64) -> Self {
+        Self::from_double(x)
+    }
+}
+
+impl From<u32> for Rational {
+    fn from(n: u32) -> Self {
+        Self::integer(i64::from(n))
+    }
+}
+
+impl From<i32> for Rational {
+    fn from(n: i32) -> Self {
+        Self::integer(i64::from(n))
+    }
+}
+
+impl FromStr for Rational {
+    type Err = RationalError;
+
+    /// A decimal (`-12.5`, `1.2e-3`) or a ratio of two of them (`5/3`).
+    fn from_str(text: &str) -> Result<Self, RationalError> {
+        match text.split_once('/') {
+            None => decimal(text, 0),
+            Some((above, below)) => {
+                let divisor = decimal(below, above.len() + 1)?;
+                if divisor.numerator == 0 {
+                    return Err(RationalError::DividedByZero);
+                }
+                decimal(above, 0)?.checked_div(divisor).ok_or(RationalError::TooLong)
+            }
+        }
+    }
+}
+
+/// One decimal; `offset` is its place in the whole text, for the error.
+fn decimal(text: &str, offset: usize) -> Result<Rational, RationalError> {
+    let trimmed = text.trim_start();
+    let offset = offset + text.len() - trimmed.len();
+    let trimmed = trimmed.trim_end();
+    let (negative, digits, offset) = match trimmed.strip_prefix('-') {
+        Some(rest) => (true, rest, offset + 1),
+        None => match trimmed.strip_prefix('+') {
+            Some(rest) => (false, rest, offset + 1),
+            None => (false, trimmed, offset),
+        },
+    };
+    if digits.is_empty() {
+        return Err(RationalError::Empty);
+    }
+    let mut mantissa: u128 = 0;
+    let mut pending_zeros: i32 = 0;
+    let mut ten: i32 = 0;
+    let (mut seen_point, mut seen_digit) = (false, false);
+    let mut bytes = digits.bytes().enumerate();
+    for (at, byte) in bytes.by_ref() {
+        match byte {
+            b'0' if mantissa == 0 => seen_digit = true,
+            // Zeros are kept back until a digit follows, so that 1000000 does not use up the digits.
+            b'0' => {
+                seen_digit = true;
+                pending_zeros = pending_zeros.checked_add(1).ok_or(RationalError::TooLong)?;
+            }
+            b'1'..=b'9' => {
+                seen_digit = true;
+                for _ in 0..=pending_zeros {
+                    mantissa = mantissa.checked_mul(10).ok_or(RationalError::TooLong)?;
+                }
+                pending_zeros = 0;
+                mantissa = mantissa.checked_add(u128::from(byte - b'0')).ok_or(RationalError::TooLong)?;
+            }
+            b'.' if !seen_point => {
+                seen_point = true;
+                continue;
+            }
+            b'e' | b'E' if seen_digit => {
+                let power = digits.get(at + 1..).unwrap_or("");
+                let value: i32 = power.parse().map_err(|_| RationalError::Character(offset + at))?;
+                ten = ten.checked_add(value).ok_or(RationalError::TooLong)?;
+                break;
+            }
+            _ => return Err(RationalError::Character(offset + at)),
+        }
+        if seen_point {
+            ten = ten.checked_sub(1).ok_or(RationalError::TooLong)?;
+        }
+    }
+    if !seen_digit {
+        return Err(RationalError::Character(offset));
+    }
+    if mantissa == 0 {
+        return Ok(Rational::ZERO);
+    }
+    let ten = ten.checked_add(pending_zeros).ok_or(RationalError::TooLong)?;
+    let power = 5u128.checked_pow(ten.unsigned_abs()).ok_or(RationalError::TooLong)?;
+    let base = Rational { negative, numerator: mantissa, denominator: 1, exponent: ten }.reduced();
+    let five = Rational::ratio(power, 1).ok_or(RationalError::TooLong)?;
+    if ten < 0 { base.checked_div(five) } else { base.checked_mul(five) }.ok_or(RationalError::TooLong)
+}
+
+#[cfg(test)]
+mod tests {
+    extern crate std;
+    use super::*;
+    use std::string::ToString;
+
+    #[test]
+    fn decimals_are_read_exactly_and_rounded_once() {
+        let cases = [
+            "0", "1", "0.1", "296.2", "39.948e-3", "1e22", "1e23", "9007199254740993", "0.3", "123456789012345678901234567890",
+            "1.7976931348623157e30", "8.31446261815324", "-2.5e-7", "1e-38", "2.2250738585072011e-20", "4.35", "0.000001",
+        ];
+        for text in cases {
+            let exact: Rational = text.parse().unwrap();
+            let double: f64 = text.parse().unwrap();
+            assert_eq!(exact.to_f64(), double, "{text}");
+        }
+    }
+
+    #[test]
+    fn doubles_go_in_and_come_back() {
+        for x in [0.1, 1.0, 5e-324, 1.1e-310, f64::MAX, f64::MIN_POSITIVE, -3.25, 2f64.powi(200), 1.0 + f64::EPSILON] {
+            assert_eq!(Rational::from(x).to_f64(), x);
+        }
+        assert!(Rational::from(f64::NAN).to_f64().is_nan());
+        assert_eq!(Rational::from(f64::NEG_INFINITY).to_f64(), f64::NEG_INFINITY);
+    }
+
+    #[test]
+    fn arithmetic_is_exact() {
+        let r = |text: &str| text.parse::<Rational>().unwrap();
+        assert_eq!(r("0.1").checked_add(r("0.2")), Some(r("0.3")));
+        assert_eq!(r("5/3").checked_sub(r("1")), Some(r("2/3")));
+        assert_eq!(r("1.5").checked_mul(r("-2/3")), Some(r("-1")));
+        assert_eq!(r("1").checked_div(r("7")), Some(r("1/7")));
+        assert_eq!(r("1/3").compare(r("0.3333333333333333")), Some(Ordering::Greater));
+        assert_eq!(r("-1").compare(r("0")), Some(Ordering::Less));
+    }
+
+    #[test]
+    fn what_is_no_number_is_refused_with_its_place() {
+        let error = |text: &str| text.parse::<Rational>().unwrap_err();
+        assert_eq!(error(""), RationalError::Empty);
+        assert_eq!(error("1,5"), RationalError::Character(1));
+        assert_eq!(error("12x"), RationalError::Character(2));
+        assert_eq!(error("1/0"), RationalError::DividedByZero);
+        assert_eq!(error("1e99"), RationalError::TooLong);
+        assert_eq!(error("."), RationalError::Character(0));
+        assert_eq!(error("e5"), RationalError::Character(0));
+        assert_eq!(error("3/4/5"), RationalError::Character(3));
+        assert!(error("1e99").to_string().contains("38 digits"));
+    }
+}

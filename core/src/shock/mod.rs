@@ -1,0 +1,13 @@
+//! Floor 3: the stationary jump, the incident and the reflected shock.
+mod entry;
+mod incident;
+mod output;
+mod relations;
+mod state;
+pub use entry::{Branch, Entry, Problem};
+pub use incident::Incident;
+pub use output::{Flow, Form, Output};
+pub use relations::{
+    Jump, Quadratic, from_density_excess, from_gas_speed_squared, from_mach, from_pressure_excess, from_shock_speed, mach_excess,
+};
+pub use state::State;
