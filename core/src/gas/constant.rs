@@ -132,16 +132,15 @@ impl HeatCapacityRatio {
         self.value.enclosure()
     }
 
-    /// d and q as two exact doubles, q in [1, 2), where both integers have at most 53 bits.
-    #[inline(always)]
-    pub(crate) fn small(self) -> Option<(f64, f64)> {
+    /// γ − 1 as a quotient of two exact doubles, where γ is a ratio of integers below 2⁵³.
+    pub fn small(self) -> Option<SmallRatio> {
         const LIMIT: u128 = 1 << 53;
         let (n, d, exponent) = self.excess.exact()?.parts();
         if n >= LIMIT || d >= LIMIT {
             return None;
         }
         let shift = d.ilog2() as i32;
-        Some((libm::scalbn(n as f64, exponent - shift), libm::scalbn(d as f64, -shift)))
+        Some(SmallRatio { d: libm::scalbn(n as f64, exponent - shift), q: libm::scalbn(d as f64, -shift) })
     }
 
     /// For an exact ratio: d = γ − 1 as a pair, q = 1.
@@ -153,6 +152,21 @@ impl HeatCapacityRatio {
     /// For an exact ratio: both integers.
     pub(crate) fn exact(self) -> Option<Gamma<Exact>> {
         Some(Gamma::from_excess(Exact::from(self.excess.exact()?)))
+    }
+}
+
+/// γ − 1 = d/q with two exact doubles, q in [1, 2): the form in which the fast relations take γ.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SmallRatio {
+    d: f64,
+    q: f64,
+}
+
+impl SmallRatio {
+    /// d and q.
+    #[inline(always)]
+    pub fn parts(self) -> (f64, f64) {
+        (self.d, self.q)
     }
 }
 

@@ -4,7 +4,7 @@ mod constant;
 mod error;
 mod fill;
 mod mixture;
-pub use constant::{Gamma, Gas, HeatCapacityRatio, molar_gas_constant, sound_speed_squared};
+pub use constant::{Gamma, Gas, HeatCapacityRatio, SmallRatio, molar_gas_constant, sound_speed_squared};
 pub use error::{InputError, Parameter, Rule};
 pub use fill::Fill;
 pub use mixture::{Component, mixture};

@@ -5,7 +5,7 @@ use super::output::{Flow, Form, Output};
 use super::relations::{Jump, mach_excess};
 use super::state::State;
 use crate::gas::{Fill, Gamma, InputError, Parameter, Rule, positive};
-use crate::number::{Ball, Counted, Dual, Enclosure, Exact, Known, Positive, Rational, Semifield, bounds};
+use crate::number::{Ball, Counted, Dual, Enclosure, Exact, Known, Positive, Rational, Semifield, Signed, bounds};
 
 /// M is at most 2⁶⁴, M − 1 at least 2⁻²⁰⁰: within these the counted proof excludes overflow and underflow.
 const MACH_EXPONENT: i32 = 64;
@@ -94,7 +94,7 @@ impl Incident {
             return self.value.enclosure();
         }
         match self.strength {
-            Strength::Rational => self.counted(output).unwrap_or_else(|| self.ball_flow(self.ball_z()).evaluate(output).enclosure()),
+            Strength::Rational => self.counted(output).unwrap_or_else(|| self.ball_flow(self.z()).evaluate(output).enclosure()),
             Strength::Algebraic { mach, .. } if output == Output::Mach => mach,
             Strength::Algebraic { mach_excess, .. } if output == Output::MachExcess => mach_excess,
             Strength::Algebraic { z, .. } => self.ball_flow(z).evaluate(output).enclosure(),
@@ -152,12 +152,12 @@ impl Incident {
     }
 
     /// All inputs: the entry, γ − 1, p1, T1, W.
-    fn inputs(&self) -> [Known; 5] {
+    pub(super) fn inputs(&self) -> [Known; 5] {
         let gas = self.fill.gas();
         [self.basis.1, gas.heat_capacity_ratio().excess(), self.fill.pressure(), self.fill.temperature(), gas.molar_mass()]
     }
 
-    fn is_exact(&self) -> bool {
+    pub(super) fn is_exact(&self) -> bool {
         self.inputs().iter().all(|input| input.exact().is_some())
     }
 
@@ -235,7 +235,7 @@ impl Incident {
     }
 
     /// The inputs as balls.
-    fn ball_problem(&self) -> Problem<Ball> {
+    pub(super) fn ball_problem(&self) -> Problem<Ball> {
         let [entry, excess, pressure, temperature, molar_mass] = self.inputs().map(Known::ball);
         Problem { gamma: Gamma::from_excess(excess), pressure, temperature, molar_mass, entry }
     }
@@ -308,20 +308,31 @@ impl Incident {
 
     /// The range of an output over the box of all inputs.
     fn range(&self, output: Output) -> Enclosure {
-        let slopes = |[entry, excess, pressure, temperature, molar_mass]: [Dual<Enclosure, 5>; 5]| {
-            let gamma = Gamma::from_excess(excess);
-            let problem = Problem { gamma, pressure, temperature, molar_mass, entry };
-            let jump = match self.entry {
-                Entry::MachExcess => Jump::from_mach_excess(gamma, entry),
-                _ => Jump::new(gamma, problem.mach_squared_excess(self.entry, self.branch)),
-            };
-            Flow::new(jump, gamma, pressure, temperature, molar_mass).evaluate(output)
+        let slopes = |variables: [Dual<Enclosure, 5>; 5]| {
+            let (problem, z) = self.over_box(variables);
+            let jump = Jump::new(problem.gamma, z);
+            Flow::new(jump, problem.gamma, problem.pressure, problem.temperature, problem.molar_mass).evaluate(output)
         };
         bounds(self.inputs(), slopes, |inputs| self.at(inputs).map_or(Enclosure::UNKNOWN, |shock| shock.output(output)))
     }
 
+    /// The problem and z over a box of inputs.
+    pub(super) fn over_box<S: Signed>(&self, [entry, excess, pressure, temperature, molar_mass]: [S; 5]) -> (Problem<S>, S) {
+        let problem = Problem { gamma: Gamma::from_excess(excess), pressure, temperature, molar_mass, entry };
+        (problem, problem.mach_squared_excess(self.basis.0, self.branch))
+    }
+
+    /// z = M² − 1 at a point.
+    pub(super) fn z(&self) -> Ball {
+        let rational = || self.exact_jump()?.mach_squared_excess().counted(Z_RANGE.0, Z_RANGE.1);
+        match self.strength {
+            Strength::Algebraic { z, .. } => z,
+            _ => rational().map_or_else(|| self.ball_z(), Ball::from),
+        }
+    }
+
     /// The same shock at one point of the box.
-    fn at(&self, [value, excess, pressure, temperature, molar_mass]: [Known; 5]) -> Option<Self> {
+    pub(super) fn at(&self, [value, excess, pressure, temperature, molar_mass]: [Known; 5]) -> Option<Self> {
         let fill = self.fill.at(excess, molar_mass, pressure, temperature)?;
         Some(Self { fill, value, basis: (self.entry, value), ..*self }.solved())
     }

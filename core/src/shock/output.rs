@@ -45,6 +45,8 @@ pub enum Output {
     GasSpeedRatio,
     /// M2, the gas speed behind the shock over the sound speed there, in the frame of the shock.
     MachBehind,
+    /// Gas speed behind the shock in the frame of the shock, U − u2, m/s.
+    ShockFrameSpeed2,
     /// p5/p2.
     ReflectedOverIncidentPressure,
     /// p5/p1.
@@ -83,7 +85,7 @@ pub enum Output {
 
 impl Output {
     /// Every output, in the order of the states.
-    pub const ALL: [Self; 36] = [
+    pub const ALL: [Self; 37] = [
         Self::ShockSpeed,
         Self::Mach,
         Self::MachExcess,
@@ -103,6 +105,7 @@ impl Output {
         Self::GasSpeed2,
         Self::GasSpeedRatio,
         Self::MachBehind,
+        Self::ShockFrameSpeed2,
         Self::ReflectedOverIncidentPressure,
         Self::ReflectedPressureRatio,
         Self::ReflectedPressureExcess,
@@ -194,6 +197,7 @@ impl<S: Semifield> Flow<S> {
             Output::GasSpeed2 => Root(self.sound_speed_squared * jump.gas_speed_squared()),
             Output::GasSpeedRatio => Root(jump.gas_speed_squared()),
             Output::MachBehind => Root(jump.mach_behind_squared()),
+            Output::ShockFrameSpeed2 => Root(self.sound_speed_squared * jump.shock_frame_speed_squared()),
             Output::ReflectedOverIncidentPressure => Value(jump.reflected_over_incident_pressure()),
             Output::ReflectedPressureRatio => Value(jump.reflected_pressure_ratio()),
             Output::ReflectedPressureExcess => Value(jump.reflected_pressure_excess()),

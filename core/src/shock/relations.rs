@@ -126,6 +126,12 @@ impl<S: Semifield> Jump<S> {
         (self.gamma.q * self.z).doubled() / (self.up * mach)
     }
 
+    /// ((U − u2)/a1)² = B²/(G²M²), the gas speed behind the shock in the frame of the shock: M·a1·ρ1/ρ2.
+    #[inline(always)]
+    pub fn shock_frame_speed_squared(&self) -> S {
+        self.b.squared() / self.scale()
+    }
+
     /// M2² = B/A, the Mach number behind the shock in its own frame.
     #[inline(always)]
     pub fn mach_behind_squared(&self) -> S {

@@ -1,0 +1,202 @@
+//! Reflection from a wall that moves: a yielding plate, a piston.
+
+use super::entry::Problem;
+use super::incident::Incident;
+use super::output::{Flow, Output};
+use super::relations::Jump;
+use super::state::State;
+use crate::gas::{Gamma, InputError, Parameter, Rule};
+use crate::number::{Ball, Dual, Elementary, Enclosure, Known, Semifield, Signed, bounds};
+
+/// What runs back from the wall.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
+pub enum Wave {
+    /// The wall is slower than the gas: a shock.
+    Shock,
+    /// The wall recedes faster than the gas: an expansion.
+    Expansion,
+    /// The wall recedes so fast that the gas cannot follow: an expansion to vacuum.
+    Vacuum,
+    /// The wall speed cannot be told from the gas speed: the enclosures cover a weak wave of either kind.
+    Weak,
+}
+
+/// The state between the wall and the wave that runs back from it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
+pub struct WallReflection {
+    /// What runs back.
+    pub wave: Wave,
+    /// The state at the wall; the gas moves with it. For [`Wave::Vacuum`] pressure, temperature, density and sound speed are zero.
+    pub state: State,
+    /// Speed of the wave's front in the laboratory, away from the wall's rest position, m/s: the shock, or the head of the expansion.
+    pub front_speed: Enclosure,
+    /// Mach number of the shock relative to the gas ahead of it; 1 for an expansion.
+    pub mach: Enclosure,
+}
+
+/// The outputs that depend on the kind of wave.
+#[derive(Clone, Copy)]
+enum WallOutput {
+    Pressure,
+    Temperature,
+    Density,
+    SoundSpeed,
+    FrontSpeed,
+    Mach,
+}
+
+/// State 2 and the speed of the gas toward the wall, in one kind of number.
+struct Approach<S> {
+    gamma: Gamma<S>,
+    flow: Flow<S>,
+    /// u2 − V.
+    closing_speed: S,
+}
+
+impl<S: Elementary> Approach<S> {
+    fn new(jump: Jump<S>, problem: &Problem<S>, wall_speed: S) -> Self {
+        let flow = Flow::new(jump, problem.gamma, problem.pressure, problem.temperature, problem.molar_mass);
+        Self { gamma: problem.gamma, closing_speed: flow.evaluate(Output::GasSpeed2) - wall_speed, flow }
+    }
+
+    /// With s = (γ+1)(u2 − V)/(4a2): `M_R` = s + √(1 + s²), `M_R`² − 1 = 2s·`M_R`; the jump across the reflected shock is the stationary one.
+    ///
+    /// From the relation between the gas speed behind a shock and its Mach number, u = 2a(M² − 1)/((γ+1)M), solved for M.
+    fn shock(&self, output: WallOutput) -> S {
+        let sound_speed = self.flow.evaluate(Output::SoundSpeed2);
+        let s = self.gamma.plus_one() * self.closing_speed / (S::whole(4) * self.gamma.q * sound_speed);
+        let mach = s + (S::whole(1) + s.squared()).sqrt();
+        let jump = Jump::new(self.gamma, (s * mach).doubled());
+        match output {
+            WallOutput::Pressure => self.flow.evaluate(Output::Pressure2) * jump.pressure_ratio(),
+            WallOutput::Temperature => self.flow.evaluate(Output::Temperature2) * jump.temperature_ratio(),
+            WallOutput::Density => self.flow.evaluate(Output::Density2) * jump.density_ratio(),
+            WallOutput::SoundSpeed => sound_speed * jump.temperature_ratio().sqrt(),
+            WallOutput::FrontSpeed => mach * sound_speed - self.flow.evaluate(Output::GasSpeed2),
+            WallOutput::Mach => mach,
+        }
+    }
+
+    /// β = a5/a2 = 1 + (γ−1)(u2 − V)/(2a2), from the invariant along the characteristic that crosses the expansion.
+    fn sound_speed_ratio(&self) -> S {
+        let sound_speed = self.flow.evaluate(Output::SoundSpeed2);
+        S::whole(1) + self.gamma.d * self.closing_speed / (self.gamma.q * sound_speed).doubled()
+    }
+
+    /// Isentropic: T5/T2 = β², ρ5/ρ2 = β^(2/(γ−1)), p5/p2 = β^(2γ/(γ−1)).
+    fn expansion(&self, output: WallOutput) -> S {
+        let beta = self.sound_speed_ratio();
+        let exponent = self.gamma.q.doubled() / self.gamma.d;
+        match output {
+            WallOutput::Pressure => self.flow.evaluate(Output::Pressure2) * beta.pow(exponent * self.gamma.value()),
+            WallOutput::Temperature => self.flow.evaluate(Output::Temperature2) * beta.squared(),
+            WallOutput::Density => self.flow.evaluate(Output::Density2) * beta.pow(exponent),
+            WallOutput::SoundSpeed => self.flow.evaluate(Output::SoundSpeed2) * beta,
+            WallOutput::FrontSpeed => self.flow.evaluate(Output::SoundSpeed2) - self.flow.evaluate(Output::GasSpeed2),
+            WallOutput::Mach => S::whole(1),
+        }
+    }
+}
+
+impl Incident {
+    /// Reflection from an end wall that moves with a constant velocity V along the incident direction (positive: it recedes; m/s).
+    ///
+    /// For V < u2 a shock runs back, for V > u2 an expansion, and for V ≥ u2 + 2a2/(γ−1) the gas cannot follow: vacuum. Enclosures of at most
+    /// 2 ulp for exact inputs, the range for tolerances. V = 0 is the rigid wall, for which [`Incident::state_5`] is optimal.
+    ///
+    /// # Errors
+    /// [`InputError`] for a velocity that is not finite or beyond 2^±200.
+    ///
+    /// ```
+    /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
+    /// use endwall::shock::{Entry, Incident, Wave};
+    /// let gas = Gas::new(HeatCapacityRatio::ratio(7, 5)?, 0.0289652)?;
+    /// let shock = Incident::new(&Fill::new(gas, 100e3, 295.0)?, Entry::Mach, 2.0)?;
+    /// let rigid = shock.reflected_from_wall(0.0)?;
+    /// assert!(rigid.state.pressure.contains(1.5e6) && rigid.wave == Wave::Shock);
+    /// let yielding = shock.reflected_from_wall(100.0)?;
+    /// assert!(yielding.state.pressure.certainly_less(rigid.state.pressure));
+    /// assert_eq!(shock.reflected_from_wall(600.0)?.wave, Wave::Expansion);
+    /// assert_eq!(shock.reflected_from_wall(4000.0)?.wave, Wave::Vacuum);
+    /// # Ok::<(), endwall::gas::InputError>(())
+    /// ```
+    pub fn reflected_from_wall(&self, wall_speed: impl Into<Known>) -> Result<WallReflection, InputError> {
+        let wall_speed = wall_speed.into();
+        let velocity = wall_speed.enclosure();
+        if !velocity.is_proven() || velocity.low().abs().max(velocity.high().abs()) > Ball::LARGEST_ENTRY {
+            let rule = Rule::Between(-Ball::LARGEST_ENTRY, Ball::LARGEST_ENTRY);
+            return Err(InputError { parameter: Parameter::WallSpeed, value: wall_speed.nominal(), rule });
+        }
+        let wave = self.wave(velocity);
+        let zero = Enclosure::whole(0);
+        let answer = |output| match wave {
+            Wave::Shock => self.wall_output(wall_speed, output, true),
+            Wave::Expansion => self.wall_output(wall_speed, output, false),
+            Wave::Weak => self.wall_output(wall_speed, output, true).hull(self.wall_output(wall_speed, output, false)),
+            Wave::Vacuum => match output {
+                WallOutput::FrontSpeed => self.wall_output(wall_speed, output, false),
+                WallOutput::Mach => Enclosure::whole(1),
+                _ => zero,
+            },
+        };
+        Ok(WallReflection {
+            wave,
+            state: State {
+                pressure: answer(WallOutput::Pressure),
+                temperature: answer(WallOutput::Temperature),
+                density: answer(WallOutput::Density),
+                sound_speed: answer(WallOutput::SoundSpeed),
+                gas_speed: velocity,
+            },
+            front_speed: answer(WallOutput::FrontSpeed),
+            mach: answer(WallOutput::Mach),
+        })
+    }
+
+    /// The kind of wave, from proven bounds on u2 − V and on β.
+    fn wave(&self, velocity: Enclosure) -> Wave {
+        let closing_speed = self.output(Output::GasSpeed2) - velocity;
+        let excess = self.fill().gas().heat_capacity_ratio().excess().enclosure();
+        let beta = Enclosure::whole(1) + excess * closing_speed / self.output(Output::SoundSpeed2).doubled();
+        if closing_speed.low() > 0.0 {
+            Wave::Shock
+        } else if closing_speed.high() >= 0.0 {
+            Wave::Weak
+        } else if beta.low() > 0.0 {
+            Wave::Expansion
+        } else {
+            // A tolerance that reaches vacuum is reported as vacuum at its far end only where all of it is.
+            if beta.high() <= 0.0 { Wave::Vacuum } else { Wave::Expansion }
+        }
+    }
+
+    fn wall_output(&self, wall_speed: Known, output: WallOutput, shock: bool) -> Enclosure {
+        if self.is_exact() && wall_speed.exact().is_some() {
+            return self.wall_at(wall_speed, output, shock);
+        }
+        let slopes = |variables: [Dual<Enclosure, 6>; 6]| {
+            let [value, excess, pressure, temperature, molar_mass, wall_speed] = variables;
+            let (problem, z) = self.over_box([value, excess, pressure, temperature, molar_mass]);
+            choose(&Approach::new(Jump::new(problem.gamma, z), &problem, wall_speed), output, shock)
+        };
+        let [value, excess, pressure, temperature, molar_mass] = self.inputs();
+        bounds([value, excess, pressure, temperature, molar_mass, wall_speed], slopes, |inputs| {
+            let [value, excess, pressure, temperature, molar_mass, wall_speed] = inputs;
+            let point = self.at([value, excess, pressure, temperature, molar_mass]);
+            point.map_or(Enclosure::UNKNOWN, |point| point.wall_at(wall_speed, output, shock))
+        })
+    }
+
+    /// At a point, by balls.
+    fn wall_at(&self, wall_speed: Known, output: WallOutput, shock: bool) -> Enclosure {
+        let problem = self.ball_problem();
+        let approach = Approach::new(Jump::new(problem.gamma, self.z()), &problem, wall_speed.ball());
+        choose(&approach, output, shock).enclosure()
+    }
+}
+
+fn choose<S: Elementary + Signed>(approach: &Approach<S>, output: WallOutput, shock: bool) -> S {
+    if shock { approach.shock(output) } else { approach.expansion(output) }
+}
