@@ -32,8 +32,8 @@ impl Fill {
         Ok(Self { gas, pressure, temperature })
     }
 
-    /// The same fill at one point of its tolerances.
-    pub(crate) fn at(&self, gamma_excess: Known, molar_mass: Known, pressure: Known, temperature: Known) -> Option<Self> {
+    /// A fill at one point of the tolerances of another.
+    pub(crate) fn at(gamma_excess: Known, molar_mass: Known, pressure: Known, temperature: Known) -> Option<Self> {
         let gas = Gas::new(HeatCapacityRatio::from_excess(gamma_excess)?, molar_mass).ok()?;
         Some(Self { gas, pressure, temperature })
     }

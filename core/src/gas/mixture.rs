@@ -68,17 +68,13 @@ pub fn mixture(components: &[Component]) -> Result<Gas, InputError> {
     Gas::new(HeatCapacityRatio::new(Enclosure::whole(1) + Enclosure::whole(1) / capacity)?, mass)
 }
 
-/// Σx, Σx/(γ−1) and ΣxW, where all inputs are exact and the sums fit.
+/// The sums of x, x/(γ−1) and x·W, where all inputs are exact and the sums fit.
 fn exact_sums(components: &[Component]) -> Option<(Rational, Rational, Rational)> {
     components.iter().try_fold((Rational::ZERO, Rational::ZERO, Rational::ZERO), |(sum, capacity, mass), component| {
         let x = component.fraction.exact()?;
         let excess = component.gas.heat_capacity_ratio().excess().exact()?;
         let w = component.gas.molar_mass().exact()?;
-        Some((
-            sum.checked_add(x)?,
-            capacity.checked_add(x.checked_div(excess)?)?,
-            mass.checked_add(x.checked_mul(w)?)?,
-        ))
+        Some((sum.checked_add(x)?, capacity.checked_add(x.checked_div(excess)?)?, mass.checked_add(x.checked_mul(w)?)?))
     })
 }
 

@@ -142,10 +142,7 @@ impl Ball {
         if self.radius == f64::INFINITY {
             return Enclosure::UNKNOWN;
         }
-        Enclosure::ordered(
-            add_down(self.head, add_down(self.tail, -self.radius)),
-            add_up(self.head, add_up(self.tail, self.radius)),
-        )
+        Enclosure::ordered(add_down(self.head, add_down(self.tail, -self.radius)), add_up(self.head, add_up(self.tail, self.radius)))
     }
 
     /// A bound on |x| from above.

@@ -103,11 +103,7 @@ impl Counted {
     /// Applies the limits: a result whose counts or range leave them is unknown.
     #[inline(always)]
     fn checked(self) -> Self {
-        if self.tail_count > LIMIT || self.error_count > LIMIT || self.low < -WIDEST || self.high > WIDEST {
-            Self::UNKNOWN
-        } else {
-            self
-        }
+        if self.tail_count > LIMIT || self.error_count > LIMIT || self.low < -WIDEST || self.high > WIDEST { Self::UNKNOWN } else { self }
     }
 
     /// k, the bound on the tail in units of u·head.
@@ -164,11 +160,7 @@ impl Counted {
         }
         let (nearest, rest, bound) = self.rounded();
         let bits = nearest.to_bits();
-        let (above, below) = if self.error_count == 0 {
-            (rest >= 0.0, rest <= 0.0)
-        } else {
-            (rest > bound, -rest > bound)
-        };
+        let (above, below) = if self.error_count == 0 { (rest >= 0.0, rest <= 0.0) } else { (rest > bound, -rest > bound) };
         // Positive and far from both ends of the range: neighbours by their bits.
         let low = f64::from_bits(bits - u64::from(!above));
         let high = f64::from_bits(bits + u64::from(!below));
@@ -205,8 +197,8 @@ impl Counted {
         let low_order = rest + (self.tail - other.tail);
         let total = difference + low_order;
         // Rounding of the three sums: each at most u of its result.
-        let slack = (self.error_bound() + other.error_bound())
-            + 4.0 * UNIT * (self.tail.abs() + other.tail.abs() + low_order.abs() + total.abs());
+        let slack =
+            (self.error_bound() + other.error_bound()) + 4.0 * UNIT * (self.tail.abs() + other.tail.abs() + low_order.abs() + total.abs());
         if total > slack {
             Some(Ordering::Greater)
         } else if -total > slack {
@@ -313,11 +305,7 @@ impl Mul for Counted {
         } else {
             let cross = self.head * other.tail + self.tail * other.head;
             let sum = k1.saturating_add(k2);
-            (
-                error + cross,
-                sum.saturating_add(2),
-                k1.saturating_mul(k2).saturating_add(sum.saturating_mul(3)).saturating_add(3),
-            )
+            (error + cross, sum.saturating_add(2), k1.saturating_mul(k2).saturating_add(sum.saturating_mul(3)).saturating_add(3))
         };
         Self {
             head,

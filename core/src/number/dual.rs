@@ -93,6 +93,7 @@ impl<S: Signed, const N: usize> Neg for Dual<S, N> {
     }
 }
 
+#[expect(clippy::suspicious_arithmetic_impl, reason = "the product rule")]
 impl<S: Signed, const N: usize> Mul for Dual<S, N> {
     type Output = Self;
     fn mul(self, other: Self) -> Self {
@@ -100,6 +101,7 @@ impl<S: Signed, const N: usize> Mul for Dual<S, N> {
     }
 }
 
+#[expect(clippy::suspicious_arithmetic_impl, reason = "the quotient rule")]
 impl<S: Signed, const N: usize> Div for Dual<S, N> {
     type Output = Self;
     fn div(self, other: Self) -> Self {

@@ -168,9 +168,7 @@ impl ElementarySlopes for Ball {
         if self.magnitude() <= 0.5 {
             // 1/2 + x(2/6 + x(3/24 + …)): the ratio of neighbouring coefficients is (n+1)/(n(n+2)).
             let one = Self::whole(1);
-            let sum = (1..=25)
-                .rev()
-                .fold(one, |sum, n| one + self * sum * Self::whole(n + 1) / (Self::whole(n) * Self::whole(n + 2)));
+            let sum = (1..=25).rev().fold(one, |sum, n| one + self * sum * Self::whole(n + 1) / (Self::whole(n) * Self::whole(n + 2)));
             return sum.widened(SMALL).halved();
         }
         (self.exp() - self.expm1_ratio()) / self

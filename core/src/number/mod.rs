@@ -2,8 +2,8 @@
 mod ball;
 mod bounds;
 mod counted;
-mod dual;
 mod display;
+mod dual;
 mod elementary;
 mod enclosure;
 mod exact;

@@ -80,13 +80,7 @@ impl Rational {
         let biased = ((bits >> 52) & 0x7ff) as i32;
         let fraction = bits & ((1 << 52) - 1);
         let mantissa = if biased == 0 { fraction } else { fraction | (1 << 52) };
-        Self {
-            negative: x < 0.0,
-            numerator: u128::from(mantissa),
-            denominator: 1,
-            exponent: biased.max(1) - 1075,
-        }
-        .reduced()
+        Self { negative: x < 0.0, numerator: u128::from(mantissa), denominator: 1, exponent: biased.max(1) - 1075 }.reduced()
     }
 
     /// Lowest terms: odd numerator and denominator (the powers of two in the exponent), no common factor; one form for each number.
@@ -408,8 +402,23 @@ mod tests {
     #[test]
     fn decimals_are_read_exactly_and_rounded_once() {
         let cases = [
-            "0", "1", "0.1", "296.2", "39.948e-3", "1e22", "1e23", "9007199254740993", "0.3", "123456789012345678901234567890",
-            "1.7976931348623157e30", "8.31446261815324", "-2.5e-7", "1e-38", "2.2250738585072011e-20", "4.35", "0.000001",
+            "0",
+            "1",
+            "0.1",
+            "296.2",
+            "39.948e-3",
+            "1e22",
+            "1e23",
+            "9007199254740993",
+            "0.3",
+            "123456789012345678901234567890",
+            "1.7976931348623157e30",
+            "8.31446261815324",
+            "-2.5e-7",
+            "1e-38",
+            "2.2250738585072011e-20",
+            "4.35",
+            "0.000001",
         ];
         for text in cases {
             let exact: Rational = text.parse().unwrap();

@@ -1,9 +1,9 @@
 //! A certified root of one function in a bracket.
 
+use super::Ball;
 use super::dual::Dual;
 use super::enclosure::Enclosure;
 use super::traits::Elementary;
-use super::Ball;
 use core::fmt;
 
 /// A function written once for every kind of number, as [`root`] needs it.
@@ -57,7 +57,10 @@ impl fmt::Display for RootError {
         match self {
             Self::Bracket { low, high } => write!(f, "the bracket from {low} to {high} must be finite and in order"),
             Self::Existence { at_low, at_high } => {
-                write!(f, "existence is not proven: the function must have opposite signs at both ends, but is {at_low:.6} and {at_high:.6}")
+                write!(
+                    f,
+                    "existence is not proven: the function must have opposite signs at both ends, but is {at_low:.6} and {at_high:.6}"
+                )
             }
             Self::Uniqueness { piece, slope } => {
                 write!(f, "uniqueness is not proven: on {piece:.6} the slope lies in {slope:.3}, which contains zero")
@@ -108,10 +111,8 @@ fn sign<F: Function>(f: &F, x: f64) -> Option<i32> {
 /// ```
 pub fn root<F: Function>(f: &F, low: f64, high: f64) -> Result<Enclosure, RootError> {
     let bracket = Enclosure::new(low, high).ok_or(RootError::Bracket { low, high })?;
-    let no_sign = || RootError::Existence {
-        at_low: f.evaluate(Ball::from(low)).enclosure(),
-        at_high: f.evaluate(Ball::from(high)).enclosure(),
-    };
+    let no_sign =
+        || RootError::Existence { at_low: f.evaluate(Ball::from(low)).enclosure(), at_high: f.evaluate(Ball::from(high)).enclosure() };
     let at_low = sign(f, low).ok_or_else(no_sign)?;
     let at_high = sign(f, high).ok_or_else(no_sign)?;
     if at_low * at_high > 0 || (at_low == 0 && at_high == 0) {

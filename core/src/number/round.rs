@@ -109,11 +109,7 @@ pub(crate) fn multiply_down(a: f64, b: f64) -> f64 {
         return 0.0;
     }
     let p = a * b;
-    if in_range(p) && in_range(a) && in_range(b) {
-        down(p, two_product(a, b).1)
-    } else {
-        overflowed_down(p)
-    }
+    if in_range(p) && in_range(a) && in_range(b) { down(p, two_product(a, b).1) } else { overflowed_down(p) }
 }
 
 /// The least double ≥ a·b.

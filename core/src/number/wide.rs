@@ -22,12 +22,7 @@ impl From<u128> for Wide {
 impl Wide {
     /// Number of bits without leading zeros.
     pub(crate) fn length(&self) -> u32 {
-        self.0
-            .iter()
-            .enumerate()
-            .rev()
-            .find(|(_, limb)| **limb != 0)
-            .map_or(0, |(at, limb)| at as u32 * 64 + 64 - limb.leading_zeros())
+        self.0.iter().enumerate().rev().find(|(_, limb)| **limb != 0).map_or(0, |(at, limb)| at as u32 * 64 + 64 - limb.leading_zeros())
     }
 
     /// Limbs without leading zero limbs.

@@ -1,9 +1,7 @@
 //! What fixes the strength of an incident shock: any one of thirteen quantities.
 
 use super::output::Output;
-use super::relations::{
-    Jump, Quadratic, from_density_excess, from_gas_speed_squared, from_mach, from_pressure_excess, from_shock_speed,
-};
+use super::relations::{Jump, Quadratic, from_density_excess, from_gas_speed_squared, from_mach, from_pressure_excess, from_shock_speed};
 use crate::gas::{Gamma, Parameter, sound_speed_squared};
 use crate::number::{Exact, Rational, Semifield, Signed};
 use core::cmp::Ordering;
@@ -133,9 +131,7 @@ impl<S: Signed> Problem<S> {
         Some(match entry {
             Entry::TemperatureRatio => Quadratic::from_temperature_excess(gamma, value - one),
             Entry::ReflectedPressureRatio => Quadratic::from_reflected_pressure_excess(gamma, value - one),
-            Entry::ReflectedPressure => {
-                Quadratic::from_reflected_pressure_excess(gamma, (value - self.pressure) / self.pressure)
-            }
+            Entry::ReflectedPressure => Quadratic::from_reflected_pressure_excess(gamma, (value - self.pressure) / self.pressure),
             Entry::Step => Quadratic::from_reflected_pressure_excess(gamma, value / self.pressure),
             Entry::ReflectedTemperatureRatio => Quadratic::from_reflected_temperature_excess(gamma, value - one),
             Entry::ReflectedTemperature => {
@@ -203,8 +199,8 @@ impl Problem<Exact> {
 
     /// The order of the true M − 1 and a candidate, by the direct relation at the candidate, which
     /// increases with M.
-    pub(crate) fn order_of_mach_excess(&self, entry: Entry, value: Rational, candidate: Exact) -> Option<Ordering> {
-        let jump = Jump::from_mach_excess(self.gamma, candidate);
+    pub(crate) fn order_of_mach_excess(&self, entry: Entry, value: Rational, candidate: &Exact) -> Option<Ordering> {
+        let jump = Jump::from_mach_excess(self.gamma, *candidate);
         let less_one = || Some(Exact::from(value.checked_sub(Rational::ONE)?));
         let (wanted, at_candidate) = match entry {
             Entry::TemperatureRatio => (less_one()?, jump.temperature_excess()),

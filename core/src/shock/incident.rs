@@ -102,6 +102,16 @@ impl Incident {
         }
     }
 
+    /// The double nearest to the exact answer at the nominal inputs (one of its two neighbours where the answer is half-way between to 2⁻⁹⁵).
+    pub fn nearest(&self, output: Output) -> f64 {
+        if output == self.entry.output() {
+            return self.value.nominal();
+        }
+        let bounds = self.output(output);
+        let nearest = if self.is_exact() { self.ball_flow(self.z()).evaluate(output).nearest() } else { bounds.middle() };
+        nearest.clamp(bounds.low(), bounds.high())
+    }
+
     /// State 1, the fill.
     pub fn state_1(&self) -> State {
         State {
@@ -274,7 +284,7 @@ impl Incident {
         let middle = three.low().next_up();
         let order = || {
             let candidate = Exact::from(excess(Rational::from(middle))?);
-            self.exact_problem()?.order_of_mach_excess(self.entry, self.value.exact()?, candidate)
+            self.exact_problem()?.order_of_mach_excess(self.entry, self.value.exact()?, &candidate)
         };
         three.split_at(middle, order())
     }
@@ -333,7 +343,7 @@ impl Incident {
 
     /// The same shock at one point of the box.
     pub(super) fn at(&self, [value, excess, pressure, temperature, molar_mass]: [Known; 5]) -> Option<Self> {
-        let fill = self.fill.at(excess, molar_mass, pressure, temperature)?;
+        let fill = Fill::at(excess, molar_mass, pressure, temperature)?;
         Some(Self { fill, value, basis: (self.entry, value), ..*self }.solved())
     }
 }

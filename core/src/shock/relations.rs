@@ -48,16 +48,7 @@ impl<S: Semifield> Jump<S> {
         let up = gamma.plus_one();
         let rise = (gamma.ratio() * z).doubled();
         let drop = gamma.d * z;
-        Self {
-            gamma,
-            z,
-            mach_squared,
-            up,
-            a: up + rise,
-            b: up + drop,
-            c: up + gamma.thrice_minus_one() * z,
-            d: up + drop.doubled(),
-        }
+        Self { gamma, z, mach_squared, up, a: up + rise, b: up + drop, c: up + gamma.thrice_minus_one() * z, d: up + drop.doubled() }
     }
 
     /// M².
@@ -285,11 +276,7 @@ impl<S: Signed> Quadratic<S> {
     #[inline(always)]
     pub fn from_reflected_temperature_excess(gamma: Gamma<S>, excess: S) -> Self {
         let up = gamma.plus_one();
-        Self {
-            a: (gamma.d * gamma.thrice_minus_one()).doubled(),
-            b: up * (S::whole(4) * gamma.d - excess * up),
-            c: excess * up.squared(),
-        }
+        Self { a: (gamma.d * gamma.thrice_minus_one()).doubled(), b: up * (S::whole(4) * gamma.d - excess * up), c: excess * up.squared() }
     }
 
     /// √(b² + 4ac).

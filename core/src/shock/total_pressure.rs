@@ -51,19 +51,15 @@ impl Incident {
     /// # Ok::<(), endwall::gas::InputError>(())
     /// ```
     pub fn total_pressure_ratio(&self) -> Enclosure {
-        self.from_logarithm(Elementary::exp, Dual::exp)
+        self.of_logarithm(Elementary::exp, Dual::exp)
     }
 
     /// Total-pressure loss 1 − pt2/pt1, accurate for the weakest shock: it vanishes as (16γ/(3(γ+1)²))·(M − 1)³.
     pub fn total_pressure_loss(&self) -> Enclosure {
-        self.from_logarithm(|l| -(l * l.expm1_ratio()), |l| -(l * l.expm1_ratio()))
+        self.of_logarithm(|l| -(l * l.expm1_ratio()), |l| -(l * l.expm1_ratio()))
     }
 
-    fn from_logarithm(
-        &self,
-        point: impl Fn(Ball) -> Ball,
-        slopes: impl Fn(Dual<Enclosure, 5>) -> Dual<Enclosure, 5>,
-    ) -> Enclosure {
+    fn of_logarithm(&self, point: impl Fn(Ball) -> Ball, slopes: impl Fn(Dual<Enclosure, 5>) -> Dual<Enclosure, 5>) -> Enclosure {
         let at = |shock: &Self| {
             let (gamma, z) = (shock.ball_problem().gamma, shock.z());
             point(if z.nearest() < WEAK { weak_logarithm(gamma, z) } else { logarithm(gamma, z) }).enclosure()

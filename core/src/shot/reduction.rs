@@ -1,0 +1,412 @@
+//! Reduction of a shot: arrival times or a shock speed, and a fill, to the states with their uncertainties.
+
+use super::coverage::{LEVEL_TWO_SIGMA, coverage_factor, effective_degrees_of_freedom};
+use super::fit::{FitSettings, fit};
+use super::fit_error::FitError;
+use super::fit_result::{Fit, FitSource};
+use super::propagate::Inputs;
+use super::station::Station;
+use crate::gas::{Fill, Gamma, Gas, HeatCapacityRatio, InputError};
+use crate::number::{Dual, Enclosure, Known};
+use crate::shock::{Entry, Flow, Incident, Jump, Output, Problem};
+use core::fmt;
+
+/// Lines of a budget, at most: seven of a fit (or one of a given speed), γ, W, p1, T1.
+const LINES: usize = 11;
+/// Inputs of the model: shock speed, γ − 1, p1, T1, W. The Mach number is not one of them.
+const VARIABLES: usize = 5;
+
+/// The shape of what is known about an input, for the Monte Carlo check.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub enum Distribution {
+    /// Normal.
+    #[default]
+    Normal,
+    /// Rectangular between limits: half-width √3 standard uncertainties.
+    Rectangular,
+}
+
+/// The standard uncertainty of an input (JCGM 100:2008, 2.3.1), in the unit of the input.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Uncertainty {
+    /// Standard uncertainty, zero or more.
+    pub standard: f64,
+    /// Degrees of freedom; infinite where it was stated and not estimated.
+    pub degrees_of_freedom: f64,
+    /// Shape.
+    pub distribution: Distribution,
+}
+
+impl Uncertainty {
+    /// A stated standard uncertainty of a normal distribution.
+    pub const fn standard(standard: f64) -> Self {
+        Self { standard, degrees_of_freedom: f64::INFINITY, distribution: Distribution::Normal }
+    }
+}
+
+/// A measured input: its nominal value, and its standard uncertainty if one was stated.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Measured {
+    /// Nominal value, SI.
+    pub value: Known,
+    /// Standard uncertainty; `None` where none was stated.
+    pub uncertainty: Option<Uncertainty>,
+}
+
+impl Measured {
+    /// A value with a stated standard uncertainty.
+    pub fn new(value: impl Into<Known>, standard_uncertainty: f64) -> Self {
+        Self { value: value.into(), uncertainty: Some(Uncertainty::standard(standard_uncertainty)) }
+    }
+
+    /// A value taken as exact.
+    pub fn exact(value: impl Into<Known>) -> Self {
+        Self::new(value, 0.0)
+    }
+}
+
+/// Where the shock speed comes from.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum SpeedSource<'a> {
+    /// Arrival times, which are fitted.
+    Stations(&'a [Station], FitSettings),
+    /// A shock speed at the end wall, m/s.
+    Given(Measured),
+}
+
+/// What is known of a shot.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Shot<'a> {
+    /// Heat-capacity ratio of the driven gas.
+    pub heat_capacity_ratio: Measured,
+    /// Molar mass of the driven gas, kg/mol.
+    pub molar_mass: Measured,
+    /// Fill pressure p1, Pa, absolute.
+    pub pressure: Measured,
+    /// Fill temperature T1, K.
+    pub temperature: Measured,
+    /// Incident shock.
+    pub speed: SpeedSource<'a>,
+}
+
+/// Why a shot cannot be reduced.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum ReductionError {
+    /// The arrival times cannot be fitted.
+    Fit(FitError),
+    /// An input of the shock relations was refused.
+    Input(InputError),
+    /// A stated standard uncertainty is negative or not a number.
+    Uncertainty {
+        /// Of which input.
+        source: Source,
+        /// Its value.
+        value: f64,
+    },
+}
+
+impl fmt::Display for ReductionError {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        match self {
+            Self::Fit(error) => error.fmt(f),
+            Self::Input(error) => error.fmt(f),
+            Self::Uncertainty { source, value } => {
+                write!(f, "standard uncertainty {value} of the {} must be zero or more", source.name())
+            }
+        }
+    }
+}
+
+impl core::error::Error for ReductionError {}
+
+impl From<FitError> for ReductionError {
+    fn from(error: FitError) -> Self {
+        Self::Fit(error)
+    }
+}
+
+impl From<InputError> for ReductionError {
+    fn from(error: InputError) -> Self {
+        Self::Input(error)
+    }
+}
+
+/// What a line of the budget is about.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Source {
+    /// A part of the fitted shock speed.
+    Fit(FitSource),
+    /// A given shock speed.
+    ShockSpeed,
+    /// Heat-capacity ratio.
+    HeatCapacityRatio,
+    /// Fill pressure.
+    FillPressure,
+    /// Fill temperature.
+    FillTemperature,
+    /// Molar mass.
+    MolarMass,
+}
+
+impl Source {
+    /// The name in a budget.
+    pub const fn name(self) -> &'static str {
+        match self {
+            Self::Fit(FitSource::ArrivalTimes) => "arrival times",
+            Self::Fit(FitSource::StationPositions) => "station positions",
+            Self::Fit(FitSource::Allowance) => "attenuation allowance",
+            Self::Fit(FitSource::Clock) => "clock rate",
+            Self::Fit(FitSource::SurveyScale) => "survey scale",
+            Self::Fit(FitSource::SurveyOffset) => "survey offset",
+            Self::Fit(FitSource::Curvature) => "curvature of the speed profile",
+            Self::ShockSpeed => "shock speed",
+            Self::HeatCapacityRatio => "heat-capacity ratio",
+            Self::FillPressure => "fill pressure",
+            Self::FillTemperature => "fill temperature",
+            Self::MolarMass => "molar mass",
+        }
+    }
+
+    /// The input of the model on which it acts.
+    const fn variable(self) -> usize {
+        match self {
+            Self::Fit(_) | Self::ShockSpeed => 0,
+            Self::HeatCapacityRatio => 1,
+            Self::FillPressure => 2,
+            Self::FillTemperature => 3,
+            Self::MolarMass => 4,
+        }
+    }
+}
+
+/// One line of the uncertainty budget.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct BudgetLine {
+    /// What it is about.
+    pub source: Source,
+    /// Its standard uncertainty, in the unit of the input on which it acts (m/s for all lines of the shock speed); `None` if not stated.
+    pub uncertainty: Option<Uncertainty>,
+}
+
+/// One result: the nominal value, what is proven of it, and how well it is known. Three different things.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Estimate {
+    /// The double nearest to the model's exact answer at the nominal inputs.
+    pub value: f64,
+    /// The enclosure of that answer; `None` for what is fitted and not computed by a proven relation.
+    pub proven: Option<Enclosure>,
+    /// Combined standard uncertainty (JCGM 100:2008, equation 10); `None` if an input that matters states none.
+    pub standard_uncertainty: Option<f64>,
+    /// Effective degrees of freedom (Welch–Satterthwaite, JCGM 100:2008, equation G.2b).
+    pub degrees_of_freedom: Option<f64>,
+    /// Coverage factor for 95.45 %: 2 for many degrees of freedom, else from the t-distribution.
+    pub coverage_factor: Option<f64>,
+    /// Expanded uncertainty.
+    pub expanded: Option<f64>,
+}
+
+/// A reduced shot.
+#[derive(Clone, Copy, Debug)]
+pub struct Reduction {
+    incident: Incident,
+    fit: Option<Fit>,
+    lines: [BudgetLine; LINES],
+    used: usize,
+}
+
+/// Reduces a shot: fits the arrival times if there are any, solves the incident and the reflected shock at the nominal inputs with proof, and
+/// sets up the law of propagation of uncertainty (JCGM 100:2008, 5.1) with sensitivities at fixed shock speed.
+///
+/// # Errors
+/// [`ReductionError`] names the input.
+///
+/// ```
+/// use endwall::number::Rational;
+/// use endwall::shock::Output;
+/// use endwall::shot::{Measured, Shot, SpeedSource, reduce};
+/// let exact = |text: &str| text.parse::<Rational>().unwrap();
+/// let shot = Shot {
+///     heat_capacity_ratio: Measured::exact(exact("7/5")),
+///     molar_mass: Measured::exact(exact("0.0289652")),
+///     pressure: Measured::new(exact("100e3"), 100.0),
+///     temperature: Measured::new(exact("295.15"), 0.5),
+///     speed: SpeedSource::Given(Measured::new(exact("620"), 0.93)),
+/// };
+/// let reduction = reduce(&shot)?;
+/// let step = reduction.estimate(Output::Step);
+/// assert!((step.value - 949.38e3).abs() < 10.0);
+/// assert_eq!(step.coverage_factor, Some(2.0));
+/// // The shock speed contributes most: 5.47 kPa.
+/// assert!((step.standard_uncertainty.unwrap() - 6.34e3).abs() < 20.0);
+/// # Ok::<(), endwall::shot::ReductionError>(())
+/// ```
+pub fn reduce(shot: &Shot<'_>) -> Result<Reduction, ReductionError> {
+    let gas = Gas::new(HeatCapacityRatio::new(shot.heat_capacity_ratio.value)?, shot.molar_mass.value)?;
+    let fill = Fill::new(gas, shot.pressure.value, shot.temperature.value)?;
+    let (fitted, speed) = match shot.speed {
+        SpeedSource::Stations(stations, settings) => {
+            let fitted = fit(stations, &settings)?;
+            (Some(fitted), Known::from(fitted.shock_speed))
+        }
+        SpeedSource::Given(measured) => (None, measured.value),
+    };
+    let incident = Incident::new(&fill, Entry::ShockSpeed, speed)?;
+    let mut reduction =
+        Reduction { incident, fit: fitted, lines: [BudgetLine { source: Source::ShockSpeed, uncertainty: None }; LINES], used: 0 };
+    match (&fitted, shot.speed) {
+        (Some(fitted), _) => {
+            // Without uncertainties of the stations the lines are zero for want of knowledge.
+            let known = fitted.covariance().is_some();
+            for line in fitted.lines() {
+                let uncertainty = known.then(|| Uncertainty::standard(line.shock_speed_uncertainty()));
+                reduction.add(Source::Fit(line.source), uncertainty)?;
+            }
+        }
+        (None, SpeedSource::Given(measured)) => reduction.add(Source::ShockSpeed, measured.uncertainty)?,
+        (None, SpeedSource::Stations(..)) => {}
+    }
+    reduction.add(Source::FillPressure, shot.pressure.uncertainty)?;
+    reduction.add(Source::FillTemperature, shot.temperature.uncertainty)?;
+    reduction.add(Source::HeatCapacityRatio, shot.heat_capacity_ratio.uncertainty)?;
+    reduction.add(Source::MolarMass, shot.molar_mass.uncertainty)?;
+    Ok(reduction)
+}
+
+impl Reduction {
+    fn add(&mut self, source: Source, uncertainty: Option<Uncertainty>) -> Result<(), ReductionError> {
+        let refused = |stated: &Uncertainty| !(stated.standard >= 0.0 && stated.standard.is_finite());
+        if let Some(stated) = uncertainty.filter(refused) {
+            return Err(ReductionError::Uncertainty { source, value: stated.standard });
+        }
+        if let Some(line) = self.lines.get_mut(self.used) {
+            *line = BudgetLine { source, uncertainty };
+            self.used += 1;
+        }
+        Ok(())
+    }
+
+    /// The shock at the nominal inputs.
+    pub fn incident(&self) -> &Incident {
+        &self.incident
+    }
+
+    /// The fit of the arrival times, if there were any.
+    pub fn fit(&self) -> Option<&Fit> {
+        self.fit.as_ref()
+    }
+
+    /// The lines of the budget.
+    pub fn budget(&self) -> &[BudgetLine] {
+        self.lines.get(..self.used).unwrap_or(&self.lines)
+    }
+
+    /// Slopes of an output with respect to shock speed, γ, p1, T1 and W, at fixed shock speed.
+    fn slopes(&self, output: Output) -> [f64; VARIABLES] {
+        let nominal = self.incident.nominal();
+        let variable = Dual::<f64, VARIABLES>::variable;
+        let gamma = Gamma::from_excess(variable(nominal.gamma.d, 1));
+        let problem = Problem {
+            gamma,
+            entry: variable(nominal.entry, 0),
+            pressure: variable(nominal.pressure, 2),
+            temperature: variable(nominal.temperature, 3),
+            molar_mass: variable(nominal.molar_mass, 4),
+        };
+        let z = problem.mach_squared_excess(Entry::ShockSpeed, self.incident.branch());
+        let flow = Flow::new(Jump::new(gamma, z), gamma, problem.pressure, problem.temperature, problem.molar_mass);
+        match output {
+            // The inputs themselves.
+            Output::ShockSpeed => problem.entry.slopes(),
+            output => flow.evaluate(output).slopes(),
+        }
+    }
+
+    /// Sensitivity of an output to each line of the budget: the slope with respect to the input on which the line acts.
+    pub fn sensitivities(&self, output: Output) -> [f64; LINES] {
+        self.per_line(self.slopes(output))
+    }
+
+    fn per_line(&self, slopes: [f64; VARIABLES]) -> [f64; LINES] {
+        let mut sensitivities = [0.0; LINES];
+        for (sensitivity, line) in sensitivities.iter_mut().zip(self.budget()) {
+            *sensitivity = slopes.get(line.source.variable()).copied().unwrap_or(0.0);
+        }
+        sensitivities
+    }
+
+    /// Standard uncertainties of all lines, if every line to which one of the sensitivities is not zero states one.
+    fn uncertainties(&self, sensitivities: &[[f64; LINES]]) -> Option<[f64; LINES]> {
+        let mut uncertainties = [0.0; LINES];
+        for (at, (uncertainty, line)) in uncertainties.iter_mut().zip(self.budget()).enumerate() {
+            let matters = sensitivities.iter().any(|row| row.get(at).is_some_and(|c| *c != 0.0));
+            *uncertainty = match line.uncertainty {
+                Some(stated) => stated.standard,
+                None if matters => return None,
+                None => 0.0,
+            };
+        }
+        Some(uncertainties)
+    }
+
+    /// An output with its proof and its uncertainty.
+    pub fn estimate(&self, output: Output) -> Estimate {
+        let proven = (output != Output::ShockSpeed || self.fit.is_none()).then(|| self.incident.output(output));
+        self.estimated(self.incident.nearest(output), proven, self.slopes(output))
+    }
+
+    /// p1 as an estimate; its own uncertainty is the only line.
+    pub fn fill_pressure(&self) -> Estimate {
+        let fill = self.incident.fill();
+        self.estimated(fill.pressure().nominal(), Some(fill.pressure().enclosure()), [0.0, 0.0, 1.0, 0.0, 0.0])
+    }
+
+    /// T1 as an estimate.
+    pub fn fill_temperature(&self) -> Estimate {
+        let fill = self.incident.fill();
+        self.estimated(fill.temperature().nominal(), Some(fill.temperature().enclosure()), [0.0, 0.0, 0.0, 1.0, 0.0])
+    }
+
+    fn estimated(&self, value: f64, proven: Option<Enclosure>, slopes: [f64; VARIABLES]) -> Estimate {
+        let sensitivities = self.per_line(slopes);
+        let combined = || {
+            let uncertainties = self.uncertainties(&[sensitivities])?;
+            let standard = Inputs::new(&uncertainties, None).ok()?.standard_uncertainty(&sensitivities).ok()?;
+            let mut components = [(0.0, f64::INFINITY); LINES];
+            for ((component, line), (c, u)) in components.iter_mut().zip(self.budget()).zip(sensitivities.iter().zip(uncertainties)) {
+                let degrees = line.uncertainty.map_or(f64::INFINITY, |stated| stated.degrees_of_freedom);
+                *component = ((c * u).abs(), degrees);
+            }
+            let degrees = effective_degrees_of_freedom(&components).unwrap_or(f64::INFINITY);
+            // The level is that of two standard deviations of a normal distribution.
+            let factor = if degrees == f64::INFINITY { 2.0 } else { coverage_factor(LEVEL_TWO_SIGMA, degrees).ok()? };
+            Some((standard, degrees, factor))
+        };
+        let known = combined();
+        Estimate {
+            value,
+            proven,
+            standard_uncertainty: known.map(|(standard, ..)| standard),
+            degrees_of_freedom: known.map(|(_, degrees, _)| degrees),
+            coverage_factor: known.map(|(.., factor)| factor),
+            expanded: known.map(|(standard, _, factor)| standard * factor),
+        }
+    }
+
+    /// Share of each line in the variance of an output, in the order of [`Reduction::budget`]; `None` if the uncertainty is not known or zero.
+    pub fn shares(&self, output: Output) -> Option<[f64; LINES]> {
+        let sensitivities = self.sensitivities(output);
+        let uncertainties = self.uncertainties(&[sensitivities])?;
+        let mut shares = [0.0; LINES];
+        let inputs = Inputs::new(&uncertainties, None).ok()?;
+        inputs.shares(&sensitivities, &mut shares).ok()?;
+        shares.iter().all(|share| share.is_finite()).then_some(shares)
+    }
+
+    /// Correlation of two outputs from the inputs that they share (JCGM 102:2011, 6.2).
+    pub fn correlation(&self, first: Output, second: Output) -> Option<f64> {
+        let rows = [self.sensitivities(first), self.sensitivities(second)];
+        let uncertainties = self.uncertainties(&rows)?;
+        let [c, d] = rows;
+        Inputs::new(&uncertainties, None).ok()?.correlation(&c, &d).ok()?
+    }
+}
