@@ -43,6 +43,8 @@ pub enum Parameter {
     ReflectedTemperature,
     /// Velocity of the end wall along the incident direction.
     WallSpeed,
+    /// Acoustic impedance of the end wall.
+    WallImpedance,
     /// Speed of the gas ahead of a shock.
     UpstreamSpeed,
 }
@@ -70,6 +72,7 @@ impl Parameter {
             Self::ReflectedTemperatureRatio => "temperature ratio T5/T1",
             Self::ReflectedTemperature => "temperature T5",
             Self::WallSpeed => "wall velocity",
+            Self::WallImpedance => "acoustic impedance of the wall",
             Self::UpstreamSpeed => "gas speed ahead of the shock",
         }
     }
@@ -81,6 +84,7 @@ impl Parameter {
             Self::FillPressure | Self::PressureRise | Self::ReflectedPressure | Self::Step => " Pa",
             Self::FillTemperature | Self::ReflectedTemperature => " K",
             Self::ShockSpeed | Self::GasSpeed | Self::WallSpeed | Self::UpstreamSpeed => " m/s",
+            Self::WallImpedance => " Pa s/m",
             _ => "",
         }
     }

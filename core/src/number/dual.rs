@@ -21,6 +21,11 @@ pub struct Dual<S, const N: usize> {
 }
 
 impl<S: Semifield, const N: usize> Dual<S, N> {
+    /// A value with known slopes, such as those of the implicit function rule.
+    pub fn with_slopes(value: S, slopes: [S; N]) -> Self {
+        Self { value, slopes }
+    }
+
     /// The value.
     pub fn value(self) -> S {
         self.value

@@ -105,7 +105,11 @@ impl Elementary for Ball {
         if is_tiny(self) {
             return linear(Self::whole(1), self, self);
         }
-        // Beyond this the result leaves the range of error-free products.
+        // Below this the result is positive and less than 2⁻⁹³⁶.
+        if x < -650.0 && self.radius() <= power_of_two(-10) {
+            return Self::from(0.0).widened(power_of_two(-936));
+        }
+        // Beyond this it leaves the range of error-free products.
         if !(x.abs() <= 650.0 && self.radius() <= power_of_two(-10)) {
             return Self::UNKNOWN;
         }
@@ -207,9 +211,8 @@ impl Elementary for Enclosure {
     }
 
     fn exp(self) -> Self {
-        let raw = increasing(self, Ball::exp);
-        // e^x > 0 whatever else is unknown.
-        if raw.low() < 0.0 { Self::hull(Self::from(0.0), Self::UNKNOWN).marked(raw.quality()) } else { raw }
+        // eˣ > 0 whatever else is unknown.
+        increasing(self, Ball::exp).at_least_zero()
     }
 
     fn log1p_ratio(self) -> Self {

@@ -179,6 +179,11 @@ impl Enclosure {
         Self { low: self.low.min(other.low), high: self.high.max(other.high), quality: self.quality.max(other.quality) }
     }
 
+    /// The part that is not negative, for a quantity that is known not to be.
+    pub(crate) fn at_least_zero(self) -> Self {
+        Self { low: self.low.max(0.0), ..self }
+    }
+
     /// The part of the enclosure on the side of `middle` where the exact answer is, given their order.
     pub(crate) fn split_at(self, middle: f64, order: Option<Ordering>) -> Self {
         match order {

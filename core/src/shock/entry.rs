@@ -1,7 +1,7 @@
 //! What fixes the strength of an incident shock: any one of thirteen quantities.
 
 use super::output::Output;
-use super::relations::{Jump, Quadratic, from_density_excess, from_gas_speed_squared, from_mach, from_pressure_excess, from_shock_speed};
+use super::relations::{Jump, Quadratic, from_density_excess, from_gas_speed_squared, from_pressure_excess, from_shock_speed};
 use crate::gas::{Gamma, Parameter, sound_speed_squared};
 use crate::number::{Exact, Rational, Semifield, Signed};
 use core::cmp::Ordering;
@@ -125,40 +125,58 @@ impl<S: Semifield> Problem<S> {
 }
 
 impl<S: Signed> Problem<S> {
+    /// What the strength is computed from: the entry's value less the value without a shock, relative to it (p5/p1 − 1 …); the value itself
+    /// where there is none without a shock or where the relation takes it as it is.
+    pub fn relative_excess(&self, entry: Entry) -> S {
+        let value = self.entry;
+        match entry {
+            Entry::Mach
+            | Entry::PressureRatio
+            | Entry::DensityRatio
+            | Entry::TemperatureRatio
+            | Entry::ReflectedPressureRatio
+            | Entry::ReflectedTemperatureRatio => value - S::whole(1),
+            Entry::PressureRise | Entry::Step => value / self.pressure,
+            Entry::ReflectedPressure => (value - self.pressure) / self.pressure,
+            Entry::ReflectedTemperature => (value - self.temperature) / self.temperature,
+            Entry::MachExcess | Entry::ShockSpeed | Entry::GasSpeed => value,
+        }
+    }
+
     /// The quadratic for z where the entry leads to one.
-    fn quadratic(&self, entry: Entry) -> Option<Quadratic<S>> {
-        let (gamma, value, one) = (self.gamma, self.entry, S::whole(1));
-        Some(match entry {
-            Entry::TemperatureRatio => Quadratic::from_temperature_excess(gamma, value - one),
-            Entry::ReflectedPressureRatio => Quadratic::from_reflected_pressure_excess(gamma, value - one),
-            Entry::ReflectedPressure => Quadratic::from_reflected_pressure_excess(gamma, (value - self.pressure) / self.pressure),
-            Entry::Step => Quadratic::from_reflected_pressure_excess(gamma, value / self.pressure),
-            Entry::ReflectedTemperatureRatio => Quadratic::from_reflected_temperature_excess(gamma, value - one),
-            Entry::ReflectedTemperature => {
-                Quadratic::from_reflected_temperature_excess(gamma, (value - self.temperature) / self.temperature)
+    fn quadratic(&self, entry: Entry, excess: S) -> Option<Quadratic<S>> {
+        match entry {
+            Entry::TemperatureRatio => Some(Quadratic::from_temperature_excess(self.gamma, excess)),
+            Entry::ReflectedPressureRatio | Entry::ReflectedPressure | Entry::Step => {
+                Some(Quadratic::from_reflected_pressure_excess(self.gamma, excess))
             }
-            _ => return None,
-        })
+            Entry::ReflectedTemperatureRatio | Entry::ReflectedTemperature => {
+                Some(Quadratic::from_reflected_temperature_excess(self.gamma, excess))
+            }
+            _ => None,
+        }
     }
 
     /// z = M² − 1 from the entry.
     pub fn mach_squared_excess(&self, entry: Entry, branch: Branch) -> S {
-        let (gamma, value, one) = (self.gamma, self.entry, S::whole(1));
-        if let Some(quadratic) = self.quadratic(entry) {
+        self.mach_squared_excess_from(entry, branch, self.relative_excess(entry))
+    }
+
+    /// z = M² − 1 from the relative excess of the entry, where that is known better than by subtraction in this kind of number.
+    pub(crate) fn mach_squared_excess_from(&self, entry: Entry, branch: Branch, excess: S) -> S {
+        if let Some(quadratic) = self.quadratic(entry, excess) {
             return match branch {
                 Branch::PositiveLinear => quadratic.root_for_positive_linear(),
                 Branch::NegativeLinear => quadratic.root_for_negative_linear(),
             };
         }
         match entry {
-            Entry::MachExcess => value * (S::whole(2) + value),
-            Entry::Mach => from_mach(value),
-            Entry::ShockSpeed => from_shock_speed(value, self.sound_speed_squared()),
-            Entry::PressureRise => from_pressure_excess(gamma, value / self.pressure),
-            Entry::DensityRatio => from_density_excess(gamma, value - one),
-            Entry::GasSpeed => from_gas_speed_squared(gamma, value.squared() / self.sound_speed_squared()),
-            // What is left is the pressure ratio: every quadratic entry has returned above.
-            _ => from_pressure_excess(gamma, value - one),
+            Entry::MachExcess | Entry::Mach => excess * (S::whole(2) + excess),
+            Entry::ShockSpeed => from_shock_speed(excess, self.sound_speed_squared()),
+            Entry::DensityRatio => from_density_excess(self.gamma, excess),
+            Entry::GasSpeed => from_gas_speed_squared(self.gamma, excess.squared() / self.sound_speed_squared()),
+            // What is left is the pressure ratio and the pressure rise: every quadratic entry has returned above.
+            _ => from_pressure_excess(self.gamma, excess),
         }
     }
 }
@@ -166,7 +184,7 @@ impl<S: Signed> Problem<S> {
 impl Problem<f64> {
     /// The branch for these nominal inputs.
     pub fn branch(&self, entry: Entry) -> Branch {
-        match self.quadratic(entry) {
+        match self.quadratic(entry, self.relative_excess(entry)) {
             Some(quadratic) if quadratic.linear() < 0.0 => Branch::NegativeLinear,
             _ => Branch::PositiveLinear,
         }
@@ -174,21 +192,30 @@ impl Problem<f64> {
 }
 
 impl Problem<Exact> {
-    /// The jump where z is a rational function of the inputs and integers hold it; `entry` is the value of the entry as it was given.
+    /// [`Problem::relative_excess`] in integers; `value` is the value of the entry as it was given.
+    pub(crate) fn exact_relative_excess(&self, entry: Entry, value: Rational) -> Option<Exact> {
+        let above = |base: Exact| Some(self.entry.difference(&base)?.1 / base);
+        match entry {
+            Entry::PressureRise | Entry::Step => Some(self.entry / self.pressure),
+            Entry::ReflectedPressure => above(self.pressure),
+            Entry::ReflectedTemperature => above(self.temperature),
+            Entry::MachExcess | Entry::ShockSpeed | Entry::GasSpeed => Some(self.entry),
+            _ => Some(Exact::from(value.checked_sub(Rational::ONE)?)),
+        }
+    }
+
+    /// The jump where z is a rational function of the inputs and integers hold it.
     pub(crate) fn jump(&self, entry: Entry, value: Rational) -> Option<Jump<Exact>> {
         let gamma = self.gamma;
-        let less_one = || Some(Exact::from(value.checked_sub(Rational::ONE)?));
+        let excess = self.exact_relative_excess(entry, value)?;
         let z = match entry {
-            Entry::MachExcess => return Some(Jump::from_mach_excess(gamma, self.entry)),
-            Entry::Mach => return Some(Jump::from_mach_excess(gamma, less_one()?)),
+            Entry::MachExcess | Entry::Mach => return Some(Jump::from_mach_excess(gamma, excess)),
             Entry::ShockSpeed => {
                 let sound = self.sound_speed_squared();
-                self.entry.squared().difference(&sound)?.1 / sound
+                excess.squared().difference(&sound)?.1 / sound
             }
-            Entry::PressureRatio => from_pressure_excess(gamma, less_one()?),
-            Entry::PressureRise => from_pressure_excess(gamma, self.entry / self.pressure),
+            Entry::PressureRatio | Entry::PressureRise => from_pressure_excess(gamma, excess),
             Entry::DensityRatio => {
-                let excess = less_one()?;
                 let below = gamma.q.doubled().difference(&(gamma.d * excess))?.1;
                 excess * gamma.plus_one() / below
             }
@@ -197,21 +224,15 @@ impl Problem<Exact> {
         Some(Jump::new(gamma, z))
     }
 
-    /// The order of the true M − 1 and a candidate, by the direct relation at the candidate, which
-    /// increases with M.
+    /// The order of the true M − 1 and a candidate, by the direct relation at the candidate, which increases with M.
     pub(crate) fn order_of_mach_excess(&self, entry: Entry, value: Rational, candidate: &Exact) -> Option<Ordering> {
         let jump = Jump::from_mach_excess(self.gamma, *candidate);
-        let less_one = || Some(Exact::from(value.checked_sub(Rational::ONE)?));
+        let excess = self.exact_relative_excess(entry, value)?;
         let (wanted, at_candidate) = match entry {
-            Entry::TemperatureRatio => (less_one()?, jump.temperature_excess()),
-            Entry::GasSpeed => (self.entry.squared() / self.sound_speed_squared(), jump.gas_speed_squared()),
-            Entry::ReflectedPressureRatio => (less_one()?, jump.reflected_pressure_excess()),
-            Entry::ReflectedPressure => (self.entry.difference(&self.pressure)?.1 / self.pressure, jump.reflected_pressure_excess()),
-            Entry::Step => (self.entry / self.pressure, jump.reflected_pressure_excess()),
-            Entry::ReflectedTemperatureRatio => (less_one()?, jump.reflected_temperature_excess()),
-            Entry::ReflectedTemperature => {
-                (self.entry.difference(&self.temperature)?.1 / self.temperature, jump.reflected_temperature_excess())
-            }
+            Entry::TemperatureRatio => (excess, jump.temperature_excess()),
+            Entry::GasSpeed => (excess.squared() / self.sound_speed_squared(), jump.gas_speed_squared()),
+            Entry::ReflectedPressureRatio | Entry::ReflectedPressure | Entry::Step => (excess, jump.reflected_pressure_excess()),
+            Entry::ReflectedTemperatureRatio | Entry::ReflectedTemperature => (excess, jump.reflected_temperature_excess()),
             _ => return None,
         };
         wanted.compare(&at_candidate)

@@ -94,10 +94,10 @@ impl Incident {
             return self.value.enclosure();
         }
         match self.strength {
-            Strength::Rational => self.counted(output).unwrap_or_else(|| self.ball_flow(self.z()).evaluate(output).enclosure()),
+            Strength::Rational => self.counted(output).unwrap_or_else(|| self.ball(output).enclosure()),
             Strength::Algebraic { mach, .. } if output == Output::Mach => mach,
             Strength::Algebraic { mach_excess, .. } if output == Output::MachExcess => mach_excess,
-            Strength::Algebraic { z, .. } => self.ball_flow(z).evaluate(output).enclosure(),
+            Strength::Algebraic { .. } => self.ball(output).enclosure(),
             Strength::Box => self.range(output),
         }
     }
@@ -108,7 +108,7 @@ impl Incident {
             return self.value.nominal();
         }
         let bounds = self.output(output);
-        let nearest = if self.is_exact() { self.ball_flow(self.z()).evaluate(output).nearest() } else { bounds.middle() };
+        let nearest = if self.is_exact() { self.ball(output).nearest() } else { bounds.middle() };
         nearest.clamp(bounds.low(), bounds.high())
     }
 
@@ -250,8 +250,18 @@ impl Incident {
         Problem { gamma: Gamma::from_excess(excess), pressure, temperature, molar_mass, entry }
     }
 
+    /// z by balls, from an excess that integers formed where they hold it: near the weakest shock nearly all digits of a ratio cancel.
     fn ball_z(&self) -> Ball {
-        self.ball_problem().mach_squared_excess(self.basis.0, self.branch)
+        let (entry, value) = self.basis;
+        let problem = self.ball_problem();
+        let exact = || self.exact_problem()?.exact_relative_excess(entry, value.exact()?)?.counted(-900, 900);
+        let excess = exact().map_or_else(|| problem.relative_excess(entry), Ball::from);
+        problem.mach_squared_excess_from(entry, self.branch, excess)
+    }
+
+    /// An output at a point, as a ball.
+    pub(super) fn ball(&self, output: Output) -> Ball {
+        self.ball_flow(self.z()).evaluate(output)
     }
 
     fn ball_flow(&self, z: Ball) -> Flow<Ball> {

@@ -54,7 +54,13 @@ impl MovingShock {
     /// The state behind, with the gas speed in the laboratory.
     pub fn state_behind(&self) -> State {
         let state = self.shock.state_2();
-        State { gas_speed: self.upstream_speed.enclosure() + state.gas_speed, ..state }
+        // Two speeds of opposite sign cancel: by balls where the inputs are exact.
+        let gas_speed = if self.shock.is_exact() && self.upstream_speed.exact().is_some() {
+            (self.upstream_speed.ball() + self.shock.ball(Output::GasSpeed2)).enclosure()
+        } else {
+            self.upstream_speed.enclosure() + state.gas_speed
+        };
+        State { gas_speed, ..state }
     }
 
     /// Gas speeds ahead of and behind the shock in the frame of the shock, both toward it and away from it positive, m/s.

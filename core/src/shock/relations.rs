@@ -208,12 +208,6 @@ pub fn mach_excess<S: Positive>(z: S) -> S {
     z / (S::whole(1) + (S::whole(1) + z).sqrt())
 }
 
-/// z = M² − 1 from M.
-#[inline(always)]
-pub fn from_mach<S: Signed>(mach: S) -> S {
-    (mach - S::whole(1)) * (mach + S::whole(1))
-}
-
 /// z from M² = U²W/(γRT1): the difference is formed once.
 #[inline(always)]
 pub fn from_shock_speed<S: Signed>(shock_speed: S, sound_speed_squared: S) -> S {

@@ -41,6 +41,8 @@ impl Incident {
     ///
     /// pt2/pt1 = (ρ2/ρ1)^(γ/(γ−1))·(p2/p1)^(−1/(γ−1)), NACA Report 1135, equation 99.
     ///
+    /// Below 2⁻⁹³⁶ the enclosure is [0, 2⁻⁹³⁶].
+    ///
     /// ```
     /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
     /// use endwall::shock::{Entry, Incident};
@@ -51,7 +53,7 @@ impl Incident {
     /// # Ok::<(), endwall::gas::InputError>(())
     /// ```
     pub fn total_pressure_ratio(&self) -> Enclosure {
-        self.of_logarithm(Elementary::exp, Dual::exp)
+        self.of_logarithm(Elementary::exp, Dual::exp).at_least_zero()
     }
 
     /// Total-pressure loss 1 − pt2/pt1, accurate for the weakest shock: it vanishes as (16γ/(3(γ+1)²))·(M − 1)³.

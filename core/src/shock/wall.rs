@@ -6,7 +6,7 @@ use super::output::{Flow, Output};
 use super::relations::Jump;
 use super::state::State;
 use crate::gas::{Gamma, InputError, Parameter, Rule};
-use crate::number::{Ball, Dual, Elementary, Enclosure, Known, Semifield, Signed, bounds};
+use crate::number::{Ball, Dual, Elementary, Enclosure, Known, Semifield, bounds};
 
 /// What runs back from the wall.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -36,67 +36,74 @@ pub struct WallReflection {
     pub mach: Enclosure,
 }
 
-/// The outputs that depend on the kind of wave.
-#[derive(Clone, Copy)]
-enum WallOutput {
-    Pressure,
-    Temperature,
-    Density,
-    SoundSpeed,
-    FrontSpeed,
-    Mach,
-}
-
 /// State 2 and the speed of the gas toward the wall, in one kind of number.
-struct Approach<S> {
+#[derive(Clone, Copy, Debug)]
+pub struct Approach<S> {
     gamma: Gamma<S>,
     flow: Flow<S>,
+    fill_pressure: S,
     /// u2 − V.
     closing_speed: S,
 }
 
 impl<S: Elementary> Approach<S> {
-    fn new(jump: Jump<S>, problem: &Problem<S>, wall_speed: S) -> Self {
-        let flow = Flow::new(jump, problem.gamma, problem.pressure, problem.temperature, problem.molar_mass);
-        Self { gamma: problem.gamma, closing_speed: flow.evaluate(Output::GasSpeed2) - wall_speed, flow }
+    /// The gas behind the shock of a problem with z = M² − 1, and a wall of velocity V along the incident direction.
+    pub fn new(problem: &Problem<S>, z: S, wall_speed: S) -> Self {
+        let flow = Flow::new(Jump::new(problem.gamma, z), problem.gamma, problem.pressure, problem.temperature, problem.molar_mass);
+        let closing_speed = flow.evaluate(Output::GasSpeed2) - wall_speed;
+        Self { gamma: problem.gamma, flow, fill_pressure: problem.pressure, closing_speed }
+    }
+
+    /// u2 − V: a shock runs back if it is positive, an expansion if it is negative.
+    pub fn closing_speed(&self) -> S {
+        self.closing_speed
+    }
+
+    /// An output of state 5 or of the reflected wave, where a shock or an expansion runs back; outputs that the wall does not change are those
+    /// of the incident shock, and ratios of state 5 are not offered (`None`).
+    pub fn evaluate(&self, output: Output, shock: bool) -> Option<S> {
+        match output {
+            Output::Step => Some(self.evaluate(Output::Pressure5, shock)? - self.fill_pressure),
+            Output::ReflectedMachExcess => Some(self.evaluate(Output::ReflectedMach, shock)? - S::whole(1)),
+            _ if shock => self.shock(output),
+            _ => self.expansion(output),
+        }
     }
 
     /// With s = (γ+1)(u2 − V)/(4a2): `M_R` = s + √(1 + s²), `M_R`² − 1 = 2s·`M_R`; the jump across the reflected shock is the stationary one.
     ///
     /// From the relation between the gas speed behind a shock and its Mach number, u = 2a(M² − 1)/((γ+1)M), solved for M.
-    fn shock(&self, output: WallOutput) -> S {
+    fn shock(&self, output: Output) -> Option<S> {
         let sound_speed = self.flow.evaluate(Output::SoundSpeed2);
         let s = self.gamma.plus_one() * self.closing_speed / (S::whole(4) * self.gamma.q * sound_speed);
         let mach = s + (S::whole(1) + s.squared()).sqrt();
         let jump = Jump::new(self.gamma, (s * mach).doubled());
-        match output {
-            WallOutput::Pressure => self.flow.evaluate(Output::Pressure2) * jump.pressure_ratio(),
-            WallOutput::Temperature => self.flow.evaluate(Output::Temperature2) * jump.temperature_ratio(),
-            WallOutput::Density => self.flow.evaluate(Output::Density2) * jump.density_ratio(),
-            WallOutput::SoundSpeed => sound_speed * jump.temperature_ratio().sqrt(),
-            WallOutput::FrontSpeed => mach * sound_speed - self.flow.evaluate(Output::GasSpeed2),
-            WallOutput::Mach => mach,
-        }
+        Some(match output {
+            Output::Pressure5 => self.flow.evaluate(Output::Pressure2) * jump.pressure_ratio(),
+            Output::Temperature5 => self.flow.evaluate(Output::Temperature2) * jump.temperature_ratio(),
+            Output::Density5 => self.flow.evaluate(Output::Density2) * jump.density_ratio(),
+            Output::SoundSpeed5 => sound_speed * jump.temperature_ratio().sqrt(),
+            Output::ReflectedSpeed => mach * sound_speed - self.flow.evaluate(Output::GasSpeed2),
+            Output::ReflectedMach => mach,
+            _ => return None,
+        })
     }
 
-    /// β = a5/a2 = 1 + (γ−1)(u2 − V)/(2a2), from the invariant along the characteristic that crosses the expansion.
-    fn sound_speed_ratio(&self) -> S {
+    /// Isentropic, with β = a5/a2: T5/T2 = β², ρ5/ρ2 = β^(2/(γ−1)), p5/p2 = β^(2γ/(γ−1)).
+    fn expansion(&self, output: Output) -> Option<S> {
         let sound_speed = self.flow.evaluate(Output::SoundSpeed2);
-        S::whole(1) + self.gamma.d * self.closing_speed / (self.gamma.q * sound_speed).doubled()
-    }
-
-    /// Isentropic: T5/T2 = β², ρ5/ρ2 = β^(2/(γ−1)), p5/p2 = β^(2γ/(γ−1)).
-    fn expansion(&self, output: WallOutput) -> S {
-        let beta = self.sound_speed_ratio();
+        // From the invariant along the characteristic that crosses the expansion: β = 1 + (γ−1)(u2 − V)/(2a2).
+        let beta = S::whole(1) + self.gamma.d * self.closing_speed / (self.gamma.q * sound_speed).doubled();
         let exponent = self.gamma.q.doubled() / self.gamma.d;
-        match output {
-            WallOutput::Pressure => self.flow.evaluate(Output::Pressure2) * beta.pow(exponent * self.gamma.value()),
-            WallOutput::Temperature => self.flow.evaluate(Output::Temperature2) * beta.squared(),
-            WallOutput::Density => self.flow.evaluate(Output::Density2) * beta.pow(exponent),
-            WallOutput::SoundSpeed => self.flow.evaluate(Output::SoundSpeed2) * beta,
-            WallOutput::FrontSpeed => self.flow.evaluate(Output::SoundSpeed2) - self.flow.evaluate(Output::GasSpeed2),
-            WallOutput::Mach => S::whole(1),
-        }
+        Some(match output {
+            Output::Pressure5 => self.flow.evaluate(Output::Pressure2) * beta.pow(exponent * self.gamma.value()),
+            Output::Temperature5 => self.flow.evaluate(Output::Temperature2) * beta.squared(),
+            Output::Density5 => self.flow.evaluate(Output::Density2) * beta.pow(exponent),
+            Output::SoundSpeed5 => sound_speed * beta,
+            Output::ReflectedSpeed => sound_speed - self.flow.evaluate(Output::GasSpeed2),
+            Output::ReflectedMach => S::whole(1),
+            _ => return None,
+        })
     }
 }
 
@@ -129,30 +136,33 @@ impl Incident {
             let rule = Rule::Between(-Ball::LARGEST_ENTRY, Ball::LARGEST_ENTRY);
             return Err(InputError { parameter: Parameter::WallSpeed, value: wall_speed.nominal(), rule });
         }
+        Ok(self.at_wall(wall_speed))
+    }
+
+    /// Reflection from a wall whose velocity has been checked.
+    pub(super) fn at_wall(&self, wall_speed: Known) -> WallReflection {
+        let velocity = wall_speed.enclosure();
         let wave = self.wave(velocity);
-        let zero = Enclosure::whole(0);
-        let answer = |output| match wave {
-            Wave::Shock => self.wall_output(wall_speed, output, true),
-            Wave::Expansion => self.wall_output(wall_speed, output, false),
-            Wave::Weak => self.wall_output(wall_speed, output, true).hull(self.wall_output(wall_speed, output, false)),
-            Wave::Vacuum => match output {
-                WallOutput::FrontSpeed => self.wall_output(wall_speed, output, false),
-                WallOutput::Mach => Enclosure::whole(1),
-                _ => zero,
-            },
+        let answer = |output| match (wave, output) {
+            (Wave::Shock, _) => self.wall_output(wall_speed, output, true),
+            (Wave::Weak, _) => self.wall_output(wall_speed, output, true).hull(self.wall_output(wall_speed, output, false)),
+            (Wave::Expansion, _) | (Wave::Vacuum, Output::ReflectedSpeed | Output::ReflectedMach) => {
+                self.wall_output(wall_speed, output, false)
+            }
+            (Wave::Vacuum, _) => Enclosure::whole(0),
         };
-        Ok(WallReflection {
+        WallReflection {
             wave,
             state: State {
-                pressure: answer(WallOutput::Pressure),
-                temperature: answer(WallOutput::Temperature),
-                density: answer(WallOutput::Density),
-                sound_speed: answer(WallOutput::SoundSpeed),
+                pressure: answer(Output::Pressure5),
+                temperature: answer(Output::Temperature5),
+                density: answer(Output::Density5),
+                sound_speed: answer(Output::SoundSpeed5),
                 gas_speed: velocity,
             },
-            front_speed: answer(WallOutput::FrontSpeed),
-            mach: answer(WallOutput::Mach),
-        })
+            front_speed: answer(Output::ReflectedSpeed),
+            mach: answer(Output::ReflectedMach),
+        }
     }
 
     /// The kind of wave, from proven bounds on u2 − V and on β.
@@ -172,31 +182,25 @@ impl Incident {
         }
     }
 
-    fn wall_output(&self, wall_speed: Known, output: WallOutput, shock: bool) -> Enclosure {
+    fn wall_output(&self, wall_speed: Known, output: Output, shock: bool) -> Enclosure {
         if self.is_exact() && wall_speed.exact().is_some() {
-            return self.wall_at(wall_speed, output, shock);
+            return self.wall_ball(wall_speed.ball(), output, shock).enclosure();
         }
-        let slopes = |variables: [Dual<Enclosure, 6>; 6]| {
-            let [value, excess, pressure, temperature, molar_mass, wall_speed] = variables;
+        let slopes = |[value, excess, pressure, temperature, molar_mass, wall_speed]: [Dual<Enclosure, 6>; 6]| {
             let (problem, z) = self.over_box([value, excess, pressure, temperature, molar_mass]);
-            choose(&Approach::new(Jump::new(problem.gamma, z), &problem, wall_speed), output, shock)
+            let over_box = Approach::new(&problem, z, wall_speed).evaluate(output, shock);
+            over_box.unwrap_or(Dual::constant(Enclosure::UNKNOWN))
         };
         let [value, excess, pressure, temperature, molar_mass] = self.inputs();
         bounds([value, excess, pressure, temperature, molar_mass, wall_speed], slopes, |inputs| {
             let [value, excess, pressure, temperature, molar_mass, wall_speed] = inputs;
             let point = self.at([value, excess, pressure, temperature, molar_mass]);
-            point.map_or(Enclosure::UNKNOWN, |point| point.wall_at(wall_speed, output, shock))
+            point.map_or(Enclosure::UNKNOWN, |point| point.wall_ball(wall_speed.ball(), output, shock).enclosure())
         })
     }
 
-    /// At a point, by balls.
-    fn wall_at(&self, wall_speed: Known, output: WallOutput, shock: bool) -> Enclosure {
-        let problem = self.ball_problem();
-        let approach = Approach::new(Jump::new(problem.gamma, self.z()), &problem, wall_speed.ball());
-        choose(&approach, output, shock).enclosure()
+    /// At a point.
+    pub(super) fn wall_ball(&self, wall_speed: Ball, output: Output, shock: bool) -> Ball {
+        Approach::new(&self.ball_problem(), self.z(), wall_speed).evaluate(output, shock).unwrap_or(Ball::UNKNOWN)
     }
-}
-
-fn choose<S: Elementary + Signed>(approach: &Approach<S>, output: WallOutput, shock: bool) -> S {
-    if shock { approach.shock(output) } else { approach.expansion(output) }
 }

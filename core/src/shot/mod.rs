@@ -2,6 +2,7 @@
 mod arrival;
 mod coverage;
 mod coverage_interval;
+mod estimate;
 mod fit;
 mod fit_error;
 mod fit_lines;
@@ -28,7 +29,7 @@ pub use monte_carlo_result::{
 pub use propagate::{Inputs, PropagationError};
 pub use random::Generator;
 pub use reduction::{
-    BudgetLine, Distribution, Estimate, Measured, Reduction, ReductionError, Shot, Source, SpeedSource, Uncertainty, reduce,
+    BudgetLine, Distribution, EndWall, Estimate, Measured, Reduction, ReductionError, Shot, Source, SpeedSource, Uncertainty, reduce,
 };
 pub use station::{MAX_STATIONS, Station, seconds_between};
 pub use validation::{Validation, numerical_tolerance, validate_linear};

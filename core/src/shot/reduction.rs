@@ -1,20 +1,18 @@
 //! Reduction of a shot: arrival times or a shock speed, and a fill, to the states with their uncertainties.
 
-use super::coverage::{LEVEL_TWO_SIGMA, coverage_factor, effective_degrees_of_freedom};
 use super::fit::{FitSettings, fit};
 use super::fit_error::FitError;
 use super::fit_result::{Fit, FitSource};
-use super::propagate::Inputs;
 use super::station::Station;
-use crate::gas::{Fill, Gamma, Gas, HeatCapacityRatio, InputError};
-use crate::number::{Dual, Enclosure, Known};
-use crate::shock::{Entry, Flow, Incident, Jump, Output, Problem};
+use crate::gas::{Fill, Gas, HeatCapacityRatio, InputError};
+use crate::number::{Enclosure, Known};
+use crate::shock::{Entry, Incident, WallReflection};
 use core::fmt;
 
-/// Lines of a budget, at most: seven of a fit (or one of a given speed), γ, W, p1, T1.
-const LINES: usize = 11;
-/// Inputs of the model: shock speed, γ − 1, p1, T1, W. The Mach number is not one of them.
-const VARIABLES: usize = 5;
+/// Lines of a budget, at most: seven of a fit (or one of a given speed), γ, W, p1, T1, wall.
+pub(super) const LINES: usize = 12;
+/// Inputs of the model: shock speed, γ − 1, p1, T1, W, wall velocity or impedance. The Mach number is not one of them.
+pub(super) const VARIABLES: usize = 6;
 
 /// The shape of what is known about an input, for the Monte Carlo check.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
@@ -74,6 +72,18 @@ pub enum SpeedSource<'a> {
     Given(Measured),
 }
 
+/// The end wall.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub enum EndWall {
+    /// At rest.
+    #[default]
+    Rigid,
+    /// Moves with this velocity along the incident direction, m/s.
+    Moving(Measured),
+    /// Yields elastically: its face moves with (p5 − p1)/Z for this acoustic impedance Z, Pa·s/m.
+    Yielding(Measured),
+}
+
 /// What is known of a shot.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Shot<'a> {
@@ -87,6 +97,8 @@ pub struct Shot<'a> {
     pub temperature: Measured,
     /// Incident shock.
     pub speed: SpeedSource<'a>,
+    /// End wall.
+    pub wall: EndWall,
 }
 
 /// Why a shot cannot be reduced.
@@ -146,6 +158,8 @@ pub enum Source {
     FillTemperature,
     /// Molar mass.
     MolarMass,
+    /// Velocity or impedance of the end wall.
+    EndWall,
 }
 
 impl Source {
@@ -164,17 +178,19 @@ impl Source {
             Self::FillPressure => "fill pressure",
             Self::FillTemperature => "fill temperature",
             Self::MolarMass => "molar mass",
+            Self::EndWall => "end wall",
         }
     }
 
     /// The input of the model on which it acts.
-    const fn variable(self) -> usize {
+    pub(super) const fn variable(self) -> usize {
         match self {
             Self::Fit(_) | Self::ShockSpeed => 0,
             Self::HeatCapacityRatio => 1,
             Self::FillPressure => 2,
             Self::FillTemperature => 3,
             Self::MolarMass => 4,
+            Self::EndWall => 5,
         }
     }
 }
@@ -209,6 +225,8 @@ pub struct Estimate {
 #[derive(Clone, Copy, Debug)]
 pub struct Reduction {
     incident: Incident,
+    wall: EndWall,
+    reflection: Option<WallReflection>,
     fit: Option<Fit>,
     lines: [BudgetLine; LINES],
     used: usize,
@@ -223,7 +241,7 @@ pub struct Reduction {
 /// ```
 /// use endwall::number::Rational;
 /// use endwall::shock::Output;
-/// use endwall::shot::{Measured, Shot, SpeedSource, reduce};
+/// use endwall::shot::{EndWall, Measured, Shot, SpeedSource, reduce};
 /// let exact = |text: &str| text.parse::<Rational>().unwrap();
 /// let shot = Shot {
 ///     heat_capacity_ratio: Measured::exact(exact("7/5")),
@@ -231,6 +249,7 @@ pub struct Reduction {
 ///     pressure: Measured::new(exact("100e3"), 100.0),
 ///     temperature: Measured::new(exact("295.15"), 0.5),
 ///     speed: SpeedSource::Given(Measured::new(exact("620"), 0.93)),
+///     wall: EndWall::Rigid,
 /// };
 /// let reduction = reduce(&shot)?;
 /// let step = reduction.estimate(Output::Step);
@@ -251,8 +270,19 @@ pub fn reduce(shot: &Shot<'_>) -> Result<Reduction, ReductionError> {
         SpeedSource::Given(measured) => (None, measured.value),
     };
     let incident = Incident::new(&fill, Entry::ShockSpeed, speed)?;
-    let mut reduction =
-        Reduction { incident, fit: fitted, lines: [BudgetLine { source: Source::ShockSpeed, uncertainty: None }; LINES], used: 0 };
+    let reflection = match shot.wall {
+        EndWall::Rigid => None,
+        EndWall::Moving(velocity) => Some(incident.reflected_from_wall(velocity.value)?),
+        EndWall::Yielding(impedance) => Some(incident.reflected_from_yielding_wall(impedance.value)?),
+    };
+    let mut reduction = Reduction {
+        incident,
+        wall: shot.wall,
+        reflection,
+        fit: fitted,
+        lines: [BudgetLine { source: Source::ShockSpeed, uncertainty: None }; LINES],
+        used: 0,
+    };
     match (&fitted, shot.speed) {
         (Some(fitted), _) => {
             // Without uncertainties of the stations the lines are zero for want of knowledge.
@@ -269,6 +299,9 @@ pub fn reduce(shot: &Shot<'_>) -> Result<Reduction, ReductionError> {
     reduction.add(Source::FillTemperature, shot.temperature.uncertainty)?;
     reduction.add(Source::HeatCapacityRatio, shot.heat_capacity_ratio.uncertainty)?;
     reduction.add(Source::MolarMass, shot.molar_mass.uncertainty)?;
+    if let EndWall::Moving(wall) | EndWall::Yielding(wall) = shot.wall {
+        reduction.add(Source::EndWall, wall.uncertainty)?;
+    }
     Ok(reduction)
 }
 
@@ -300,113 +333,13 @@ impl Reduction {
         self.lines.get(..self.used).unwrap_or(&self.lines)
     }
 
-    /// Slopes of an output with respect to shock speed, γ, p1, T1 and W, at fixed shock speed.
-    fn slopes(&self, output: Output) -> [f64; VARIABLES] {
-        let nominal = self.incident.nominal();
-        let variable = Dual::<f64, VARIABLES>::variable;
-        let gamma = Gamma::from_excess(variable(nominal.gamma.d, 1));
-        let problem = Problem {
-            gamma,
-            entry: variable(nominal.entry, 0),
-            pressure: variable(nominal.pressure, 2),
-            temperature: variable(nominal.temperature, 3),
-            molar_mass: variable(nominal.molar_mass, 4),
-        };
-        let z = problem.mach_squared_excess(Entry::ShockSpeed, self.incident.branch());
-        let flow = Flow::new(Jump::new(gamma, z), gamma, problem.pressure, problem.temperature, problem.molar_mass);
-        match output {
-            // The inputs themselves.
-            Output::ShockSpeed => problem.entry.slopes(),
-            output => flow.evaluate(output).slopes(),
-        }
+    /// The end wall as it was given.
+    pub fn wall(&self) -> &EndWall {
+        &self.wall
     }
 
-    /// Sensitivity of an output to each line of the budget: the slope with respect to the input on which the line acts.
-    pub fn sensitivities(&self, output: Output) -> [f64; LINES] {
-        self.per_line(self.slopes(output))
-    }
-
-    fn per_line(&self, slopes: [f64; VARIABLES]) -> [f64; LINES] {
-        let mut sensitivities = [0.0; LINES];
-        for (sensitivity, line) in sensitivities.iter_mut().zip(self.budget()) {
-            *sensitivity = slopes.get(line.source.variable()).copied().unwrap_or(0.0);
-        }
-        sensitivities
-    }
-
-    /// Standard uncertainties of all lines, if every line to which one of the sensitivities is not zero states one.
-    fn uncertainties(&self, sensitivities: &[[f64; LINES]]) -> Option<[f64; LINES]> {
-        let mut uncertainties = [0.0; LINES];
-        for (at, (uncertainty, line)) in uncertainties.iter_mut().zip(self.budget()).enumerate() {
-            let matters = sensitivities.iter().any(|row| row.get(at).is_some_and(|c| *c != 0.0));
-            *uncertainty = match line.uncertainty {
-                Some(stated) => stated.standard,
-                None if matters => return None,
-                None => 0.0,
-            };
-        }
-        Some(uncertainties)
-    }
-
-    /// An output with its proof and its uncertainty.
-    pub fn estimate(&self, output: Output) -> Estimate {
-        let proven = (output != Output::ShockSpeed || self.fit.is_none()).then(|| self.incident.output(output));
-        self.estimated(self.incident.nearest(output), proven, self.slopes(output))
-    }
-
-    /// p1 as an estimate; its own uncertainty is the only line.
-    pub fn fill_pressure(&self) -> Estimate {
-        let fill = self.incident.fill();
-        self.estimated(fill.pressure().nominal(), Some(fill.pressure().enclosure()), [0.0, 0.0, 1.0, 0.0, 0.0])
-    }
-
-    /// T1 as an estimate.
-    pub fn fill_temperature(&self) -> Estimate {
-        let fill = self.incident.fill();
-        self.estimated(fill.temperature().nominal(), Some(fill.temperature().enclosure()), [0.0, 0.0, 0.0, 1.0, 0.0])
-    }
-
-    fn estimated(&self, value: f64, proven: Option<Enclosure>, slopes: [f64; VARIABLES]) -> Estimate {
-        let sensitivities = self.per_line(slopes);
-        let combined = || {
-            let uncertainties = self.uncertainties(&[sensitivities])?;
-            let standard = Inputs::new(&uncertainties, None).ok()?.standard_uncertainty(&sensitivities).ok()?;
-            let mut components = [(0.0, f64::INFINITY); LINES];
-            for ((component, line), (c, u)) in components.iter_mut().zip(self.budget()).zip(sensitivities.iter().zip(uncertainties)) {
-                let degrees = line.uncertainty.map_or(f64::INFINITY, |stated| stated.degrees_of_freedom);
-                *component = ((c * u).abs(), degrees);
-            }
-            let degrees = effective_degrees_of_freedom(&components).unwrap_or(f64::INFINITY);
-            // The level is that of two standard deviations of a normal distribution.
-            let factor = if degrees == f64::INFINITY { 2.0 } else { coverage_factor(LEVEL_TWO_SIGMA, degrees).ok()? };
-            Some((standard, degrees, factor))
-        };
-        let known = combined();
-        Estimate {
-            value,
-            proven,
-            standard_uncertainty: known.map(|(standard, ..)| standard),
-            degrees_of_freedom: known.map(|(_, degrees, _)| degrees),
-            coverage_factor: known.map(|(.., factor)| factor),
-            expanded: known.map(|(standard, _, factor)| standard * factor),
-        }
-    }
-
-    /// Share of each line in the variance of an output, in the order of [`Reduction::budget`]; `None` if the uncertainty is not known or zero.
-    pub fn shares(&self, output: Output) -> Option<[f64; LINES]> {
-        let sensitivities = self.sensitivities(output);
-        let uncertainties = self.uncertainties(&[sensitivities])?;
-        let mut shares = [0.0; LINES];
-        let inputs = Inputs::new(&uncertainties, None).ok()?;
-        inputs.shares(&sensitivities, &mut shares).ok()?;
-        shares.iter().all(|share| share.is_finite()).then_some(shares)
-    }
-
-    /// Correlation of two outputs from the inputs that they share (JCGM 102:2011, 6.2).
-    pub fn correlation(&self, first: Output, second: Output) -> Option<f64> {
-        let rows = [self.sensitivities(first), self.sensitivities(second)];
-        let uncertainties = self.uncertainties(&rows)?;
-        let [c, d] = rows;
-        Inputs::new(&uncertainties, None).ok()?.correlation(&c, &d).ok()?
+    /// The reflection, where the wall is not rigid; then state 5 and the reflected wave are these.
+    pub fn wall_reflection(&self) -> Option<&WallReflection> {
+        self.reflection.as_ref()
     }
 }

@@ -1,0 +1,149 @@
+//! Doubts about a result: they become flags.
+
+use alloc::format;
+use alloc::vec::Vec;
+
+use super::flag::Flag;
+use super::format::significant;
+use super::quantity::Absolute;
+use super::reduce::{left_aside, station_name};
+use super::report::{ReportQuantity, States};
+use super::shot::Shot;
+use crate::shock::Wave;
+use crate::shot::{EndWall, Fit, FitFlags, Outlier, Reduction};
+
+/// Above this a gas that is not monatomic has an appreciable heat capacity of vibration, K.
+const VIBRATION: f64 = 600.0;
+/// A heat capacity ratio above this belongs to a gas of atoms.
+const MONATOMIC: f64 = 1.6;
+/// Noble gases ionise above about this temperature, K (common practice, no source).
+const IONISATION: f64 = 8000.0;
+/// Above about this pressure the gas is no ideal gas, Pa (common practice, no source).
+const REAL_GAS: f64 = 50.0e5;
+
+pub(super) fn result(shot: &Shot, reduction: &Reduction, states: &States, step: &ReportQuantity) -> Vec<Flag> {
+    let mut flags = left_aside(shot);
+    if let Some(fit) = reduction.fit() {
+        arrival_times(shot, fit, &mut flags);
+    }
+    validity(reduction, states, &mut flags);
+    flags.extend(end_wall(reduction));
+    compare_measured(shot, states, step, &mut flags);
+    flags
+}
+
+/// What the fit doubts. Missing uncertainties and a far last station are flagged when the record is read.
+fn arrival_times(shot: &Shot, fit: &Fit, flags: &mut Vec<Flag>) {
+    let alpha = significant(fit.attenuation * 100.0, 3);
+    let doubts = [
+        (
+            FitFlags::NO_CHECK,
+            "fit-unchecked",
+            "no degree of freedom is left: the arrival times cannot be checked against each other".into(),
+        ),
+        (
+            FitFlags::SET_DISAGREES,
+            "stations-disagree",
+            "the arrival times disagree beyond three standard deviations; with one degree of freedom no station can be named".into(),
+        ),
+        (
+            FitFlags::ATTENUATION_NEGATIVE,
+            "attenuation-negative",
+            format!("the attenuation is {alpha} %/m, below zero by more than two standard uncertainties: a shock that gains speed"),
+        ),
+        (
+            FitFlags::ATTENUATION_LARGE,
+            "attenuation-large",
+            format!("the attenuation is {alpha} %/m, above 5 %/m by more than two standard uncertainties"),
+        ),
+    ];
+    flags.extend(doubts.into_iter().filter(|(flag, ..)| fit.flags.contains(*flag)).map(|(_, code, text)| Flag::new(code, text)));
+    let text = match fit.outlier {
+        None => return,
+        Some(Outlier::Allowance) => {
+            "the attenuation allowance has the largest standardised residual, beyond 3: the times contradict it".into()
+        }
+        Some(Outlier::Station(at)) => format!(
+            "station {} has the largest standardised residual, beyond 3; the fit keeps it until the record leaves it out with a reason",
+            station_name(shot, at)
+        ),
+    };
+    flags.push(Flag::new("outlier", text));
+}
+
+/// What state 5 is where the wall is not rigid.
+fn end_wall(reduction: &Reduction) -> Option<Flag> {
+    let reflection = reduction.wall_reflection()?;
+    let speed = significant(reflection.state.gas_speed.middle(), 4);
+    let kind = match reflection.wave {
+        Wave::Shock => "a shock runs back from it",
+        Wave::Expansion => "it recedes faster than the gas, so an expansion runs back from it and state 5 is the gas that follows it",
+        Wave::Vacuum => "it recedes so fast that the gas cannot follow: state 5 is a vacuum",
+        Wave::Weak => "it moves with the gas: hardly any wave runs back",
+    };
+    let elastic = match reduction.wall() {
+        EndWall::Yielding(_) => ". This holds until the wave in the wall returns from its back face (7 us for 20 mm of steel)",
+        _ => "",
+    };
+    Some(Flag::new("wall-moves", format!("the end wall moves with {speed} m/s along the incident shock: {kind}{elastic}")))
+}
+
+/// Where the model of an ideal gas of constant heat capacity ends.
+fn validity(reduction: &Reduction, states: &States, flags: &mut Vec<Flag>) {
+    let ratio = reduction.incident().fill().gas().heat_capacity_ratio().enclosure().middle();
+    let temperature = states.reflected.temperature.value;
+    let kelvin = significant(temperature, 4);
+    if ratio < MONATOMIC && temperature > VIBRATION {
+        let text = format!(
+            "the heat capacity is taken as constant, but at T5 = {kelvin} K molecules vibrate: T5 comes out too high, for nitrogen by about 2 % at Mach 2 and 7 % at Mach 3"
+        );
+        flags.push(Flag::new("constant-heat-capacity", text));
+    }
+    if ratio >= MONATOMIC && temperature > IONISATION {
+        flags.push(Flag::new(
+            "ionisation",
+            format!("T5 = {kelvin} K: above about {IONISATION} K noble gases ionise, which the model leaves out"),
+        ));
+    }
+    let pressure = states.reflected.pressure.value;
+    if pressure > REAL_GAS {
+        let text =
+            format!("p5 = {} bar: above about 50 bar the gas departs from the ideal gas of the model", significant(pressure / 1e5, 3));
+        flags.push(Flag::new("real-gas", text));
+    }
+}
+
+fn compare_measured(shot: &Shot, states: &States, step: &ReportQuantity, flags: &mut Vec<Flag>) {
+    let Some(measured) = &shot.measured else { return };
+    let rise = measured.rise.as_ref().and_then(|rise| rise.absolute(None));
+    let of = |pair: &Option<(super::Quantity, Absolute)>| pair.as_ref().map(|(_, absolute)| *absolute);
+    let pairs = [
+        ("pressure_2", of(&measured.pressure_2), &states.incident.pressure),
+        ("pressure_5", of(&measured.pressure_5), &states.reflected.pressure),
+        ("rise", rise, step),
+    ];
+    for (name, value, computed) in pairs {
+        if let Some(value) = value {
+            flags.push(comparison(name, value, computed));
+        }
+    }
+}
+
+/// Compared by the difference over its standard uncertainty; both share the fill, which makes the true one a little smaller.
+fn comparison(name: &str, measured: Absolute, computed: &ReportQuantity) -> Flag {
+    let difference = measured.value.to_f64() - computed.value;
+    let percent = format!("{:+.2} %", 100.0 * difference / computed.value);
+    let (Some(a), Some(b)) = (measured.standard_uncertainty, computed.standard_uncertainty) else {
+        let text = format!("measured.{name} is {percent} from the computed value; without both uncertainties that cannot be judged");
+        return Flag::new("measured-not-judged", text);
+    };
+    let spread = libm::hypot(a, b);
+    if difference.abs() > 2.0 * spread {
+        let text = format!("measured.{name} is {percent} from the computed value, more than two standard uncertainties of the difference");
+        return Flag::new("measured-disagrees", text);
+    }
+    let text = format!(
+        "measured.{name} is {percent} from the computed value, within two standard uncertainties of the difference; a pressure that agrees does not prove the gas or its temperature"
+    );
+    Flag::new("measured-agrees", text)
+}

@@ -1,0 +1,41 @@
+//! Floor 6: quantities with units, record files and reports.
+//!
+//! A record is JSON that a person types; a [`Shot`] is what it says, with every typed number exact and in SI units.
+//! [`Shot::read`] never guesses: whatever is unknown, missing, impossible or doubtful is a [`RecordError`] with the full
+//! path, the text as typed and the remedy.
+
+mod check;
+mod digest;
+mod error;
+mod flag;
+mod format;
+mod gas;
+mod hazard;
+mod input;
+mod monte_carlo;
+mod optional;
+mod quantity;
+mod quantity_text;
+mod read;
+mod reduce;
+mod report;
+mod shot;
+mod station;
+mod text;
+mod tree;
+mod unit;
+
+pub use digest::input_digest;
+pub use error::{ErrorKind, RecordError};
+pub use flag::Flag;
+pub use format::value_with_uncertainty;
+pub use gas::{Component, ConstantGas, GasRecord, HeatCapacity};
+pub use optional::{Driver, Measured, Survey, Tube, Wall};
+pub use quantity::{Absolute, Coverage, Mark, Quantity, QuantityError, Uncertainty};
+pub use read::Entry;
+pub use report::{
+    BudgetLine, Correlation, Fit, FitLine, Incident, LeftOut, MadeBy, Reflected, Report, ReportQuantity, ReportState, Share, States,
+};
+pub use shot::{Fill, Shot, Speed};
+pub use station::Station;
+pub use unit::{Dimension, Unit};

@@ -1,0 +1,122 @@
+//! The Monte Carlo check of a report's uncertainties.
+
+use alloc::format;
+use alloc::string::String;
+use alloc::vec;
+
+use super::error::{ErrorKind, RecordError};
+use super::flag::Flag;
+use super::format::significant;
+use super::report::Report;
+use super::shot::Shot;
+use crate::shock::Output;
+use crate::shot::{LEVEL_TWO_SIGMA, MonteCarlo, MonteCarloSettings, RECOMMENDED_BLOCK, Reduction, Stop, validate_linear};
+
+/// Whole numbers up to this are kept by every reader of JSON.
+const LARGEST_SEED: u64 = 1 << 53;
+/// Digits of the standard uncertainty that must agree; JCGM 101:2008, 7.9.2 has one or two.
+const DIGITS: u8 = 1;
+/// Of the numerical tolerance, so that the run itself does not decide the comparison (JCGM 101:2008, 8.2).
+const TOLERANCE: f64 = 0.2;
+
+const OUTPUTS: [(Output, &str, &str); 3] =
+    [(Output::Temperature5, "T5", "K"), (Output::Pressure5, "p5", "Pa"), (Output::Step, "p5 - p1", "Pa")];
+
+impl Shot {
+    /// [`reduce`](Self::reduce), with the linear uncertainties of T5, p5 and the step checked by a Monte Carlo run of at most a million
+    /// trials (JCGM 101:2008, 8.1): a flag gives the outcome, and the report the seed. The same seed gives the same run.
+    ///
+    /// # Errors
+    /// As for [`reduce`](Self::reduce); a seed above 2⁵³.
+    ///
+    /// ```
+    /// # let file = r#"{ "record": "shot/1", "gas": { "heat_capacity_ratio": "7/5", "molar_mass": "28.9652 g/mol" },
+    /// #   "fill": { "pressure": "100.0 ± 0.1 kPa", "temperature": "295.15 ± 0.5 K" }, "shock_speed": "620 ± 0.93 m/s" }"#;
+    /// let report = endwall::record::Shot::read(file.as_bytes())?.reduce_checked(412)?;
+    /// assert_eq!(report.made_by.seed, Some(412));
+    /// assert!(report.flags.iter().any(|flag| flag.code == "monte-carlo-agrees"));
+    /// # Ok::<(), endwall::record::RecordError>(())
+    /// ```
+    pub fn reduce_checked(&self, seed: u64) -> Result<Report, RecordError> {
+        if seed > LARGEST_SEED {
+            let wrong = format!("the seed {seed} is larger than 2^53");
+            return Err(RecordError::new(ErrorKind::Value, "", "", wrong, "take a smaller seed"));
+        }
+        let mut report = self.reduce()?;
+        let (reduction, _) = self.reduction()?;
+        report.flags.push(check(&reduction, seed));
+        report.made_by.seed = Some(seed);
+        Ok(report)
+    }
+}
+
+fn check(reduction: &Reduction, seed: u64) -> Flag {
+    let not_run = |why: String| Flag::new("monte-carlo-not-run", format!("the uncertainties were not checked by a Monte Carlo run: {why}"));
+    if OUTPUTS.iter().any(|(output, ..)| reduction.estimate(*output).standard_uncertainty.is_none_or(|standard| standard == 0.0)) {
+        return not_run("an input states no uncertainty".into());
+    }
+    let settings = MonteCarloSettings { level: LEVEL_TWO_SIGMA, digits: DIGITS, tolerance: TOLERANCE, ..MonteCarloSettings::default() };
+    let mut buffer = vec![0.0; RECOMMENDED_BLOCK * OUTPUTS.len()];
+    let outputs = OUTPUTS.map(|(output, ..)| output);
+    match reduction.monte_carlo(&outputs, seed, &settings, &mut buffer, &mut |_| true) {
+        Err(error) => not_run(format!("{error}")),
+        Ok(run) => outcome(reduction, &run),
+    }
+}
+
+fn outcome(reduction: &Reduction, run: &MonteCarlo) -> Flag {
+    let mut differing = String::new();
+    for ((output, name, unit), summary) in OUTPUTS.iter().zip(run.outputs()) {
+        let linear = reduction.estimate(*output);
+        let standard = linear.standard_uncertainty.unwrap_or(0.0);
+        // The run draws from normal distributions, so the interval is compared at k = 2 whatever the degrees of freedom.
+        if !validate_linear(linear.value, standard, 2.0 * standard, summary, DIGITS).validated() {
+            let part = format!("; {name} lies between {} and {} {unit}", significant(summary.low, 5), significant(summary.high, 5));
+            differing.push_str(&part);
+        }
+    }
+    let settled = if run.stop == Stop::Converged { "" } else { ", which have not settled" };
+    let refused = if run.refused == 0 { String::new() } else { format!(" ({} draws had no shock and were replaced)", run.refused) };
+    let trials = format!("{} trials{settled}{refused}", run.trials);
+    if differing.is_empty() {
+        Flag::new("monte-carlo-agrees", format!("the linear uncertainties of T5, p5 and p5 - p1 agree with a Monte Carlo run of {trials}"))
+    } else {
+        let text = format!("the linear uncertainties do not describe this shot. By a Monte Carlo run of {trials}, at 95 %{differing}");
+        Flag::new("monte-carlo-differs", text)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    const ARGON: &str = include_str!("../../../examples/records/argon-b0412.json");
+
+    fn checked(speed: &str) -> Report {
+        let file = format!(
+            r#"{{ "record": "shot/1", "gas": {{ "heat_capacity_ratio": "5/3", "molar_mass": "39.948 g/mol" }},
+            "fill": {{ "pressure": "8 ± 0.02 kPa", "temperature": "296.2 ± 0.5 K" }}, "shock_speed": "{speed}" }}"#
+        );
+        Shot::read(file.as_bytes()).unwrap().reduce_checked(7).unwrap()
+    }
+
+    fn last_code(report: &Report) -> &str {
+        &report.flags.last().unwrap().code
+    }
+
+    #[test]
+    fn a_good_shot_agrees_and_repeats() {
+        let shot = Shot::read(ARGON.as_bytes()).unwrap();
+        let report = shot.reduce_checked(1).unwrap();
+        assert_eq!(last_code(&report), "monte-carlo-agrees");
+        assert_eq!(report, shot.reduce_checked(1).unwrap());
+        assert!(report.to_text(&shot).contains("seed 1"));
+        assert!(shot.reduce_checked(u64::MAX).is_err());
+    }
+
+    #[test]
+    fn a_wide_input_differs_and_a_missing_one_is_said() {
+        assert_eq!(last_code(&checked("950 ± 150 m/s")), "monte-carlo-differs");
+        assert_eq!(last_code(&checked("950 m/s")), "monte-carlo-not-run");
+    }
+}

@@ -1,0 +1,258 @@
+//! From a record to its report.
+
+use alloc::format;
+use alloc::string::{String, ToString};
+use alloc::vec::Vec;
+
+use super::check;
+use super::error::{ErrorKind, RecordError};
+use super::flag::Flag;
+use super::gas::ConstantGas;
+use super::optional::Wall;
+use super::quantity::{Coverage, Mark, Quantity};
+use super::report::{
+    BudgetLine, Correlation, Fit, FitLine, Incident, LeftOut, MadeBy, Reflected, Report, ReportQuantity, ReportState, Share, States,
+};
+use super::shot::{Shot, Speed};
+use crate::number::{Enclosure, Known};
+use crate::shock::Output;
+use crate::shot::{
+    Distribution, EndWall, Estimate, Measured, Reduction, ReductionError, Source, SpeedSource, Uncertainty, effective_degrees_of_freedom,
+    reduce,
+};
+
+impl Shot {
+    /// Reduces the shot: fits the arrival times, if there are any, computes the states behind the incident and the reflected
+    /// shock with proof, and their uncertainties (JCGM 100:2008).
+    ///
+    /// A heat capacity ratio and a molar mass without an uncertainty are taken as exact; the report says so. Any other input
+    /// without one leaves the uncertainties that it touches unknown.
+    ///
+    /// # Errors
+    /// What the fit or the shock relations refuse, with the field that it comes from and the remedy.
+    ///
+    /// ```
+    /// # let file = r#"{ "record": "shot/1", "gas": { "heat_capacity_ratio": "7/5", "molar_mass": "28.9652 g/mol" },
+    /// #   "fill": { "pressure": "100.0 ± 0.1 kPa", "temperature": "295.15 ± 0.5 K" }, "shock_speed": "620 ± 0.93 m/s" }"#;
+    /// let report = endwall::record::Shot::read(file.as_bytes())?.reduce()?;
+    /// // p5 − p1 by the closed form at γ = 7/5, evaluated apart.
+    /// assert!((report.step.value - 949_380.083).abs() < 0.001);
+    /// assert!(report.to_json()?.contains("\"step\""));
+    /// # Ok::<(), endwall::record::RecordError>(())
+    /// ```
+    pub fn reduce(&self) -> Result<Report, RecordError> {
+        self.reduction().map(|(reduction, gas)| report(self, &reduction, &gas))
+    }
+
+    /// The reduction behind [`reduce`](Self::reduce), for a Monte Carlo run or further outputs, and the gas that it took.
+    ///
+    /// # Errors
+    /// As for [`reduce`](Self::reduce).
+    pub fn reduction(&self) -> Result<(Reduction, ConstantGas), RecordError> {
+        let gas = self.gas.constant(self.heat_capacity)?;
+        let stations = self.fit_stations();
+        let speed = match &self.speed {
+            Speed::Stations(_) => SpeedSource::Stations(&stations, self.fit_settings()),
+            Speed::Given(speed) => SpeedSource::Given(measured(speed)),
+        };
+        let exact_unless = |value: crate::number::Rational, uncertainty: Option<f64>| Measured::new(value, uncertainty.unwrap_or(0.0));
+        let shot = crate::shot::Shot {
+            heat_capacity_ratio: exact_unless(gas.heat_capacity_ratio, gas.heat_capacity_ratio_uncertainty),
+            molar_mass: exact_unless(gas.molar_mass, gas.molar_mass_uncertainty),
+            pressure: self.absolute_fill_pressure(),
+            temperature: measured(&self.fill.temperature),
+            speed,
+            wall: match &self.wall {
+                None => EndWall::Rigid,
+                Some(Wall::Speed(velocity)) => EndWall::Moving(measured(velocity)),
+                Some(Wall::Impedance(impedance)) => EndWall::Yielding(measured(impedance)),
+            },
+        };
+        let reduction = reduce(&shot).map_err(|error| match error {
+            ReductionError::Fit(error) => self.refused_fit(error),
+            ReductionError::Input(error) => self.refused(error),
+            other @ ReductionError::Uncertainty { .. } => RecordError::new(ErrorKind::Value, "", "", format!("{other}"), ""),
+        })?;
+        Ok((reduction, gas))
+    }
+
+    /// The fill pressure with the degrees of freedom of gauge and barometer combined (JCGM 100:2008, G.4).
+    fn absolute_fill_pressure(&self) -> Measured {
+        let mut pressure = measured(&self.fill.pressure);
+        pressure.value = Known::from(self.fill.absolute.value);
+        if let (Mark::Gauge, Some(ambient)) = (self.fill.pressure.mark(), &self.ambient) {
+            let parts = [pressure.uncertainty, measured(ambient).uncertainty].map(|part| part.unwrap_or(Uncertainty::standard(0.0)));
+            let freedom = effective_degrees_of_freedom(&parts.map(|part| (part.standard, part.degrees_of_freedom)));
+            pressure.uncertainty = self.fill.absolute.standard_uncertainty.map(|standard| Uncertainty {
+                standard,
+                degrees_of_freedom: freedom.unwrap_or(f64::INFINITY),
+                distribution: Distribution::Normal,
+            });
+        }
+        pressure
+    }
+}
+
+/// A typed quantity as an input of the reduction.
+fn measured(quantity: &Quantity) -> Measured {
+    let uncertainty = quantity.uncertainty().map(|typed| Uncertainty {
+        standard: typed.standard,
+        degrees_of_freedom: typed.degrees_of_freedom.unwrap_or(f64::INFINITY),
+        distribution: if typed.coverage == Coverage::Limits { Distribution::Rectangular } else { Distribution::Normal },
+    });
+    Measured { value: Known::from(quantity.value()), uncertainty }
+}
+
+fn report(shot: &Shot, reduction: &Reduction, gas: &ConstantGas) -> Report {
+    let estimate = |output, unit| figure(&reduction.estimate(output), unit);
+    let state = |pressure, temperature, outputs: [Output; 2], gas_speed| ReportState {
+        pressure,
+        temperature,
+        density: estimate(outputs[0], "kg/m3"),
+        sound_speed: estimate(outputs[1], "m/s"),
+        gas_speed,
+    };
+    let states = States {
+        fill: state(
+            figure(&reduction.fill_pressure(), "Pa"),
+            figure(&reduction.fill_temperature(), "K"),
+            [Output::Density1, Output::SoundSpeed1],
+            at_rest(),
+        ),
+        incident: state(
+            estimate(Output::Pressure2, "Pa"),
+            estimate(Output::Temperature2, "K"),
+            [Output::Density2, Output::SoundSpeed2],
+            estimate(Output::GasSpeed2, "m/s"),
+        ),
+        reflected: state(
+            estimate(Output::Pressure5, "Pa"),
+            estimate(Output::Temperature5, "K"),
+            [Output::Density5, Output::SoundSpeed5],
+            reduction.wall_reflection().map_or_else(at_rest, |_| figure(&reduction.wall_velocity(), "m/s")),
+        ),
+    };
+    let step = estimate(Output::Step, "Pa");
+    let mut flags = shot.flags.clone();
+    flags.extend(check::result(shot, reduction, &states, &step));
+    let exact = if gas.heat_capacity_ratio_uncertainty.is_none() && gas.molar_mass_uncertainty.is_none() { ", taken as exact" } else { "" };
+    Report {
+        incident: Incident {
+            speed: estimate(Output::ShockSpeed, "m/s"),
+            mach: estimate(Output::Mach, "1"),
+            attenuation: reduction.fit().map(attenuation),
+        },
+        states,
+        reflected: Reflected { speed: estimate(Output::ReflectedSpeed, "m/s"), mach: estimate(Output::ReflectedMach, "1") },
+        step,
+        fit: reduction.fit().map(|fit| fit_lines(shot, fit)),
+        budget: budget(reduction),
+        correlation: Correlation { temperature_pressure: reduction.correlation(Output::Temperature5, Output::Pressure5) },
+        flags,
+        made_by: MadeBy::this_version(shot, &format!("{}{exact}", gas.source)),
+    }
+}
+
+fn figure(estimate: &Estimate, unit: &'static str) -> ReportQuantity {
+    let finite = |value: Option<f64>| value.filter(|value| value.is_finite());
+    ReportQuantity {
+        value: estimate.value,
+        unit,
+        // What could not be proven claims nothing.
+        proven: estimate.proven.filter(|bounds: &Enclosure| bounds.is_proven()).map(|bounds| [bounds.low(), bounds.high()]),
+        standard_uncertainty: finite(estimate.standard_uncertainty),
+        expanded: finite(estimate.expanded),
+        coverage_factor: finite(estimate.coverage_factor),
+    }
+}
+
+/// Gas at rest: zero by the statement of the problem, so that no uncertainty belongs to it.
+fn at_rest() -> ReportQuantity {
+    ReportQuantity { value: 0.0, unit: "m/s", proven: Some([0.0, 0.0]), standard_uncertainty: None, expanded: None, coverage_factor: None }
+}
+
+/// The fitted attenuation. The times' uncertainties are stated, not estimated from their scatter: infinite degrees of freedom, k = 2.
+fn attenuation(fit: &crate::shot::Fit) -> ReportQuantity {
+    let standard_uncertainty = fit.attenuation_uncertainty();
+    let factor = standard_uncertainty.map(|_| 2.0);
+    ReportQuantity {
+        value: fit.attenuation,
+        unit: "1/m",
+        proven: None,
+        standard_uncertainty,
+        expanded: standard_uncertainty.zip(factor).map(|(standard, factor)| standard * factor),
+        coverage_factor: factor,
+    }
+}
+
+fn fit_lines(shot: &Shot, fit: &crate::shot::Fit) -> Fit {
+    let name = |at: usize| station_name(shot, at);
+    let line = |station: &crate::shot::StationFit| FitLine {
+        name: name(station.station),
+        residual: station.residual,
+        standardised: station.standardised,
+    };
+    let left_out = |station: &crate::shot::StationFit| {
+        let refit = station.without?;
+        Some(LeftOut { name: name(station.station), speed: refit.shock_speed, chi_squared: refit.chi_squared })
+    };
+    Fit {
+        stations: fit.stations().iter().map(line).collect(),
+        chi_squared: fit.chi_squared,
+        degrees_of_freedom: u32::try_from(fit.degrees_of_freedom).unwrap_or(u32::MAX),
+        speed_attenuation_correlation: fit.correlation(),
+        without: fit.stations().iter().filter_map(left_out).collect(),
+    }
+}
+
+/// The name of a station by its place in the record.
+pub(super) fn station_name(shot: &Shot, at: usize) -> String {
+    match &shot.speed {
+        Speed::Stations(stations) => stations.get(at).map_or(String::new(), |station| station.name.clone()),
+        Speed::Given(_) => String::new(),
+    }
+}
+
+/// One line for each input with an uncertainty; inputs taken as exact have none.
+fn budget(reduction: &Reduction) -> Vec<BudgetLine> {
+    let shares = [Output::Temperature5, Output::Pressure5, Output::Step].map(|output| reduction.shares(output));
+    let stated = reduction.budget().iter().enumerate().filter_map(|(at, line)| Some((at, line.source, line.uncertainty?.standard)));
+    stated
+        .filter(|(.., standard)| *standard > 0.0)
+        .map(|(at, source, standard_uncertainty)| {
+            let [temperature, pressure, step] = shares.map(|shares| shares.and_then(|shares| shares.get(at).copied()));
+            BudgetLine {
+                input: source.name().to_string(),
+                standard_uncertainty,
+                share: Share { temperature, pressure, step },
+                unit: match source {
+                    Source::Fit(_) | Source::ShockSpeed => "m/s",
+                    Source::HeatCapacityRatio => "1",
+                    Source::FillPressure => "Pa",
+                    Source::FillTemperature => "K",
+                    Source::MolarMass => "kg/mol",
+                    Source::EndWall if matches!(reduction.wall(), EndWall::Yielding(_)) => "Pa s/m",
+                    Source::EndWall => "m/s",
+                },
+            }
+        })
+        .collect()
+}
+
+/// A flag for what the record states and the reduction leaves aside.
+pub(super) fn left_aside(shot: &Shot) -> Vec<Flag> {
+    let mut flags = Vec::new();
+    let in_fit = ["stations", "attenuation", "clock", "survey"];
+    let of_fit = |path: &str| in_fit.iter().any(|field| path.starts_with(field));
+    let states_freedom = |entry: &super::Entry| entry.quantity.as_ref().is_some_and(|quantity| quantity.degrees_of_freedom().is_some());
+    if let Some(entry) = shot.entries.iter().find(|entry| of_fit(&entry.path) && states_freedom(entry)) {
+        let text =
+            format!("{} states degrees of freedom, which the fit does not use in this version: it takes them as infinite", entry.path);
+        flags.push(Flag::new("not-used", text));
+    }
+    flags
+}
+
+#[cfg(test)]
+#[path = "reduce_tests.rs"]
+mod tests;

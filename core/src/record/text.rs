@@ -1,0 +1,297 @@
+//! The text form of a report.
+
+use alloc::format;
+use alloc::string::{String, ToString};
+use alloc::vec::Vec;
+
+use super::error::plain_character;
+use super::format::{shortest, significant, value_with_uncertainty};
+use super::hazard::CAUTIONS;
+use super::report::{Fit, Report, ReportQuantity, ReportState};
+use super::shot::{Shot, Speed};
+use super::unit::Unit;
+
+/// Lines of running text are broken here.
+const WIDTH: usize = 96;
+
+pub(super) fn render(report: &Report, shot: &Shot) -> String {
+    let mut page = Page::default();
+    let units = DisplayUnits::of(shot);
+    let name = if shot.name.is_empty() { "without a name" } else { shot.name.as_str() };
+    page.line(&format!("Shot {name}: the gas behind the reflected shock at the end wall"));
+    result(&mut page, report, units);
+    flags(&mut page, report);
+    input(&mut page, shot);
+    if let Some(fit) = &report.fit {
+        fit_section(&mut page, fit, report, shot);
+    }
+    states(&mut page, report, units);
+    budget(&mut page, report);
+    digits(&mut page, report);
+    page.heading("Before anybody acts on these numbers");
+    for caution in CAUTIONS {
+        page.paragraph("- ", caution);
+    }
+    page.heading("Made by");
+    let made_by = &report.made_by;
+    page.line(&format!("endwall {}; gas data: {}", made_by.version, made_by.gas_data));
+    let seed = made_by.seed.map_or("no random numbers were used".to_string(), |seed| format!("seed {seed}"));
+    page.line(&format!("record file {}; {seed}", made_by.input_digest));
+    page.text
+}
+
+/// Pressures in the writer's unit, so that the numbers can be compared with the gauges; kPa for the units of the pascal.
+#[derive(Clone, Copy)]
+struct DisplayUnits {
+    pressure: Option<Unit>,
+}
+
+impl DisplayUnits {
+    fn of(shot: &Shot) -> Self {
+        let typed = shot.fill.pressure.unit();
+        let metric = matches!(typed.symbol(), "Pa" | "hPa" | "kPa" | "MPa");
+        Self { pressure: if metric { Unit::find("kPa") } else { Some(typed) } }
+    }
+
+    /// value ± U in display units.
+    fn show(self, quantity: &ReportQuantity) -> String {
+        let unit = match quantity.unit {
+            "Pa" => self.pressure,
+            "1/m" => Unit::find("%/m"),
+            other => Unit::find(other),
+        };
+        let shown = value_with_uncertainty(quantity.value, quantity.expanded, unit);
+        // Units that no record uses are written as they are.
+        if unit.is_none() && quantity.unit != "1" { format!("{shown} {}", quantity.unit) } else { shown }
+    }
+
+    /// With the coverage factor behind it.
+    fn show_with_factor(self, quantity: &ReportQuantity) -> String {
+        let factor = quantity.coverage_factor.map_or(String::new(), |k| format!(" (k={})", coverage_factor(k)));
+        self.show(quantity) + &factor
+    }
+}
+
+/// Two decimals at most.
+fn coverage_factor(k: f64) -> String {
+    let text = format!("{k:.2}");
+    text.trim_end_matches('0').trim_end_matches('.').to_string()
+}
+
+fn result(page: &mut Page, report: &Report, units: DisplayUnits) {
+    page.heading("Result");
+    let state = &report.states.reflected;
+    page.table(&[
+        row(["Pressure p5", &units.show_with_factor(&state.pressure)]),
+        row(["Temperature T5", &units.show_with_factor(&state.temperature)]),
+        row(["Step p5 - p1", &units.show_with_factor(&report.step)]),
+        row(["Incident shock speed", &units.show_with_factor(&report.incident.speed)]),
+    ]);
+    page.paragraph("", "Behind ± stands the expanded uncertainty U = k times the combined standard uncertainty (JCGM 100). It covers the inputs stated in the record; it does not cover the choice of the model.");
+}
+
+fn flags(page: &mut Page, report: &Report) {
+    page.heading("Flags");
+    if report.flags.is_empty() {
+        page.line("none");
+    }
+    for flag in &report.flags {
+        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
+    }
+}
+
+fn input(page: &mut Page, shot: &Shot) {
+    page.heading("Input, in the order of the record");
+    let mut rows = alloc::vec![row(["field", "as typed", "SI value", "standard uncertainty"])];
+    for entry in &shot.entries {
+        let (value, spread) = match &entry.quantity {
+            None => (String::new(), String::new()),
+            Some(quantity) => {
+                let unit = match quantity.dimension().si_unit() {
+                    "1" => String::new(),
+                    unit => format!(" {unit}"),
+                };
+                let spread = quantity.uncertainty().map_or("not stated".to_string(), |uncertainty| {
+                    let freedom = uncertainty.degrees_of_freedom.map_or(String::new(), |dof| format!(" (dof {dof})"));
+                    format!("{}{unit}{freedom}", significant(uncertainty.standard, 3))
+                });
+                (format!("{}{unit}", shortest(quantity.value().to_f64())), spread)
+            }
+        };
+        rows.push(row([&entry.path, &entry.typed, &value, &spread]));
+    }
+    page.table(&rows);
+    page.paragraph("", "A number behind ± in the record is read as a standard uncertainty, unless (k=...) or (limits) follows it: then it is divided by k or by the square root of 3.");
+}
+
+fn fit_section(page: &mut Page, fit: &Fit, report: &Report, shot: &Shot) {
+    page.heading("Fit of the arrival times");
+    let stations: &[super::Station] = if let Speed::Stations(stations) = &shot.speed { stations } else { &[] };
+    let mut rows = alloc::vec![row(["station", "from end wall", "residual", "standardised", "speed without it", "chi-squared without it"])];
+    for line in &fit.stations {
+        let distance = stations.iter().find(|station| station.name == line.name).map_or("", |station| station.from_end_wall.typed());
+        let without = fit.without.iter().find(|left_out| left_out.name == line.name);
+        rows.push(row([
+            &line.name,
+            distance,
+            &format!("{:+.3} us", line.residual * 1e6),
+            &line.standardised.map_or("no check".to_string(), |value| format!("{value:+.2}")),
+            &without.map_or("-".to_string(), |left_out| format!("{} m/s", significant(left_out.speed, 6))),
+            &without.map_or("-".to_string(), |left_out| chi_squared(left_out.chi_squared)),
+        ]));
+    }
+    page.table(&rows);
+    let freedom = fit.degrees_of_freedom;
+    let plural = if freedom == 1 { "" } else { "s" };
+    page.line(&format!("chi-squared {} with {freedom} degree{plural} of freedom", chi_squared(fit.chi_squared)));
+    if freedom == 0 {
+        page.line("No check of the times is possible: every observation is used up by the fit.");
+    } else if freedom == 1 {
+        page.line("With one degree of freedom all standardised residuals are equal in size; they single out no station.");
+    }
+    if let Some(attenuation) = &report.incident.attenuation {
+        let correlation = fit.speed_attenuation_correlation.map_or(String::new(), |r| format!("; correlation with the speed {r:.2}"));
+        let shown = DisplayUnits { pressure: None }.show_with_factor(attenuation);
+        page.line(&format!("attenuation {shown}{correlation}"));
+    }
+}
+
+fn chi_squared(value: Option<f64>) -> String {
+    value.map_or("not known".to_string(), |value| significant(value, 3))
+}
+
+/// One quantity of a state.
+type Of = fn(&ReportState) -> &ReportQuantity;
+
+fn states(page: &mut Page, report: &Report, units: DisplayUnits) {
+    page.heading("States");
+    let columns: [&ReportState; 3] = [&report.states.fill, &report.states.incident, &report.states.reflected];
+    let quantities: [(&str, Of); 5] = [
+        ("pressure", |state| &state.pressure),
+        ("temperature", |state| &state.temperature),
+        ("density", |state| &state.density),
+        ("sound speed", |state| &state.sound_speed),
+        ("gas speed", |state| &state.gas_speed),
+    ];
+    let mut rows = alloc::vec![row(["value ± U (k)", "1 fill", "2 incident", "5 reflected"])];
+    for (name, of) in quantities {
+        let [one, two, five] = columns.map(|state| units.show_with_factor(of(state)));
+        rows.push(row([name, &one, &two, &five]));
+    }
+    page.table(&rows);
+    page.line("");
+    page.table(&[
+        row(["Mach number of the incident shock", &units.show_with_factor(&report.incident.mach)]),
+        row(["Reflected shock, speed in the laboratory", &units.show_with_factor(&report.reflected.speed)]),
+        row(["Reflected shock, Mach number relative to gas 2", &units.show_with_factor(&report.reflected.mach)]),
+    ]);
+}
+
+fn budget(page: &mut Page, report: &Report) {
+    page.heading("Uncertainty budget");
+    if report.budget.is_empty() {
+        page.line("The record states no uncertainty, so none is given.");
+        return;
+    }
+    let percent = |share: Option<f64>| share.map_or("-".to_string(), |share| format!("{:.1} %", share * 100.0));
+    let mut rows = alloc::vec![row(["input", "standard uncertainty", "share of T5", "share of p5", "share of step"])];
+    for line in &report.budget {
+        let unit = if line.unit == "1" { String::new() } else { format!(" {}", line.unit) };
+        rows.push(row([
+            &line.input,
+            &(significant(line.standard_uncertainty, 3) + &unit),
+            &percent(line.share.temperature),
+            &percent(line.share.pressure),
+            &percent(line.share.step),
+        ]));
+    }
+    page.table(&rows);
+    page.line("Shares are of variance; sensitivities are taken at a given shock speed, not at a given Mach number.");
+    if let Some(correlation) = report.correlation.temperature_pressure {
+        page.line(&format!("Correlation of T5 and p5: {correlation:.3}. They share inputs; combine them with it."));
+    }
+}
+
+/// The enclosures, apart from everything measured.
+fn digits(page: &mut Page, report: &Report) {
+    page.heading("Digits of the arithmetic");
+    page.paragraph("", "The exact answer of the equations, for the nominal inputs exactly as typed (a fitted speed: exactly as printed below), is proven to lie between the two numbers of each line, in SI units. This concerns the arithmetic alone: it says nothing about the gas in the tube.");
+    let mut rows = Vec::new();
+    let states = &report.states;
+    for (state, number) in [(&states.fill, 1), (&states.incident, 2), (&states.reflected, 5)] {
+        for (letter, quantity) in
+            [("p", &state.pressure), ("T", &state.temperature), ("rho", &state.density), ("a", &state.sound_speed), ("u", &state.gas_speed)]
+        {
+            enclosure(&mut rows, &format!("{letter}{number}"), quantity);
+        }
+    }
+    enclosure(&mut rows, "p5 - p1", &report.step);
+    enclosure(&mut rows, "incident Mach number", &report.incident.mach);
+    enclosure(&mut rows, "reflected shock speed", &report.reflected.speed);
+    enclosure(&mut rows, "reflected Mach number", &report.reflected.mach);
+    page.table(&rows);
+    page.line(&format!("at the shock speed {} m/s", shortest(report.incident.speed.value)));
+}
+
+fn enclosure(rows: &mut Vec<Vec<String>>, name: &str, quantity: &ReportQuantity) {
+    let Some([low, high]) = quantity.proven else { return };
+    let unit = if quantity.unit == "1" { "" } else { quantity.unit };
+    let between = if low == high { "exactly".to_string() } else { shortest(low) };
+    rows.push(row([name, &between, &shortest(high), unit]));
+}
+
+fn row<const N: usize>(cells: [&str; N]) -> Vec<String> {
+    cells.iter().map(|cell| cell.chars().map(plain_character).collect()).collect()
+}
+
+#[derive(Default)]
+struct Page {
+    text: String,
+}
+
+impl Page {
+    fn line(&mut self, line: &str) {
+        self.text.extend(line.chars().map(plain_character));
+        self.text.push('\n');
+    }
+
+    fn heading(&mut self, title: &str) {
+        self.text.push('\n');
+        self.line(title);
+        self.line(&"-".repeat(title.chars().count()));
+    }
+
+    /// Broken into lines; further lines are indented below the text of the first.
+    fn paragraph(&mut self, mark: &str, text: &str) {
+        let mut line = mark.to_string();
+        let indent = " ".repeat(mark.chars().count());
+        for word in text.split_whitespace() {
+            let occupied = line.chars().count();
+            if occupied > mark.chars().count() && occupied + 1 + word.chars().count() > WIDTH {
+                self.line(&line);
+                line.clone_from(&indent);
+            }
+            if line.chars().count() > mark.chars().count() {
+                line.push(' ');
+            }
+            line.push_str(word);
+        }
+        self.line(&line);
+    }
+
+    /// Columns as wide as their widest cell.
+    fn table(&mut self, rows: &[Vec<String>]) {
+        let columns = rows.iter().map(Vec::len).max().unwrap_or(0);
+        let width = |column: usize| rows.iter().filter_map(|row| row.get(column)).map(|cell| cell.chars().count()).max().unwrap_or(0);
+        let widths: Vec<usize> = (0..columns).map(width).collect();
+        for row in rows {
+            let mut line = String::new();
+            for (cell, width) in row.iter().zip(&widths) {
+                line.push_str(cell);
+                let missing = width - cell.chars().count().min(*width);
+                line.extend(core::iter::repeat_n(' ', missing + 2));
+            }
+            self.line(line.trim_end());
+        }
+    }
+}
