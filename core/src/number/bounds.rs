@@ -5,11 +5,13 @@ use super::enclosure::Enclosure;
 use super::known::Known;
 
 /// Halvings of one input, at most.
-const HALVINGS: u32 = 6;
+const HALVINGS: u32 = 12;
+/// What a part may add to either end beyond values that are taken, relative to their range.
+const SURPLUS: f64 = 1.0 / 512.0;
 /// Boxes that are looked at, at most.
 const BOXES: u32 = 4096;
 /// Boxes that wait: one for each halving on the way to the smallest.
-const WAITING: usize = 48;
+const WAITING: usize = 80;
 
 /// A part of the box of all inputs.
 #[derive(Clone, Copy)]
@@ -22,8 +24,8 @@ struct Part<const N: usize> {
 ///
 /// `slopes` gives value and slopes over a box, `point` the enclosure at one corner. On a part of the box where every slope keeps its sign
 /// (proven by interval arithmetic) the function is monotone in each input, so two corners bound it as tightly as `point` does. Elsewhere the
-/// part is halved along the input that matters most, at most 2⁶ times each; what then still has no sign is bounded by the mean-value
-/// form value(middle) + slope·(box − middle), whose over-width falls with the square of the part's width.
+/// mean-value form value(middle) + slope·(box − middle) bounds it; if that exceeds the values known to be taken by more than 1/512 of their
+/// range, the part is halved along the input that matters most (at most 2¹² times each, 4096 parts in all).
 pub(crate) fn bounds<const N: usize>(
     inputs: [Known; N],
     slopes: impl Fn([Dual<Enclosure, N>; N]) -> Dual<Enclosure, N>,
@@ -32,44 +34,53 @@ pub(crate) fn bounds<const N: usize>(
     let whole = Part { inputs, halvings: [0; N] };
     let mut waiting = [whole; WAITING];
     let mut count = 1usize;
-    let mut range = point(inputs.map(middle));
+    let over = |part: &Part<N>| {
+        let mut index = 0;
+        slopes(part.inputs.map(|input| {
+            index += 1;
+            Dual::variable(input.enclosure(), index - 1)
+        }))
+    };
+    let corner = |part: &Part<N>, result: &Dual<Enclosure, N>, upper: bool| {
+        let mut inputs = part.inputs;
+        for (input, slope) in inputs.iter_mut().zip(result.slopes()) {
+            *input = input.end((slope.middle() >= 0.0) == upper);
+        }
+        point(inputs)
+    };
+    let both_corners = |part: &Part<N>, result: &Dual<Enclosure, N>| corner(part, result, false).hull(corner(part, result, true));
+    // Values that are taken, and with them what cannot be excluded.
+    let mut taken = point(inputs.map(Known::middle)).hull(both_corners(&whole, &over(&whole)));
+    let mut range = taken;
     let mut looked_at = 0;
     while count > 0 {
         count -= 1;
         let part = waiting.get(count).copied().unwrap_or(whole);
         looked_at += 1;
-        let mut index = 0;
-        let variables = part.inputs.map(|input| {
-            index += 1;
-            Dual::variable(input.enclosure(), index - 1)
-        });
-        let result = slopes(variables);
-        if result.value().is_bounded() && range.encloses(result.value()) {
+        let result = over(&part);
+        if result.value().is_bounded() && taken.encloses(result.value()) {
             continue;
         }
-        let worst = worst_input(&part, &result);
+        let Some(worst) = worst_input(&part, &result) else {
+            taken = taken.hull(both_corners(&part, &result));
+            continue;
+        };
+        let centre = point(part.inputs.map(Known::middle));
+        taken = taken.hull(centre);
+        let bound = mean_value(&part, &result, centre);
+        let surplus = Enclosure::from(taken.width() * SURPLUS);
+        let accepted = taken.is_bounded() && (taken + surplus.hull(-surplus)).encloses(bound);
         let room = count + 2 <= WAITING && looked_at < BOXES;
-        match worst {
-            None => {
-                let corner = |upper: bool| {
-                    let mut inputs = part.inputs;
-                    for (input, slope) in inputs.iter_mut().zip(result.slopes()) {
-                        *input = end(*input, (slope.low() >= 0.0) == upper);
-                    }
-                    point(inputs)
-                };
-                range = range.hull(corner(false)).hull(corner(true));
+        if !accepted && room && part.halvings.get(worst).is_some_and(|done| *done < HALVINGS) {
+            for (half, slot) in halves(&part, worst).into_iter().zip(waiting.iter_mut().skip(count)) {
+                *slot = half;
             }
-            Some(at) if room && part.halvings.get(at).is_some_and(|done| *done < HALVINGS) => {
-                for (half, slot) in halves(&part, at).into_iter().zip(waiting.iter_mut().skip(count)) {
-                    *slot = half;
-                }
-                count += 2;
-            }
-            Some(_) => range = range.hull(mean_value(&part, &result, &point)),
+            count += 2;
+        } else {
+            range = range.hull(bound);
         }
     }
-    range
+    range.hull(taken)
 }
 
 /// The input whose slope has no proven sign and contributes most to the width; `None` if the function is monotone in all.
@@ -104,8 +115,8 @@ fn halves<const N: usize>(part: &Part<N>, at: usize) -> [Part<N>; 2] {
 }
 
 /// value(middle) + Σ slope·(box − middle), and no more than the plain value over the box.
-fn mean_value<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, point: impl Fn([Known; N]) -> Enclosure) -> Enclosure {
-    let mut value = point(part.inputs.map(middle));
+fn mean_value<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, centre: Enclosure) -> Enclosure {
+    let mut value = centre;
     for (input, slope) in part.inputs.iter().zip(result.slopes()) {
         if input.exact().is_none() {
             let whole = input.enclosure();
@@ -113,23 +124,6 @@ fn mean_value<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, point
         }
     }
     value.intersection(result.value()).unwrap_or(value)
-}
-
-/// The middle of a tolerance, or the exact number.
-fn middle(input: Known) -> Known {
-    end_of(input, Enclosure::middle)
-}
-
-/// One end of a tolerance, or the exact number.
-fn end(input: Known, upper: bool) -> Known {
-    end_of(input, if upper { Enclosure::high } else { Enclosure::low })
-}
-
-fn end_of(input: Known, choice: fn(Enclosure) -> f64) -> Known {
-    match input {
-        Known::Exactly(_) => input,
-        Known::Within(x) => Known::from(choice(x)),
-    }
 }
 
 #[cfg(test)]

@@ -206,7 +206,7 @@ mod tests {
 
     #[test]
     fn bounds_are_rounded_outward_in_every_notation() {
-        let x = Enclosure::new(-1234.567_8, 0.000_123_456).unwrap();
+        let x = Enclosure::new(-1_234.567_8, 0.000_123_456).unwrap();
         assert_eq!(format!("{x:.3}"), "[-1240, 0.000124]");
         let wide = Enclosure::new(1.75e-30, 9.999e25).unwrap();
         assert_eq!(format!("{wide:.2}"), "[1.7e-30, 1.0e26]");

@@ -323,7 +323,7 @@ mod tests {
                 for c in samples {
                     for d in samples.into_iter().filter(|d| *d >= c) {
                         let (x, y) = (enclosure(a, b), enclosure(c, d));
-                        for (p, q) in [(a, c), (a, d), (b, c), (b, d), ((a + b) / 2.0, (c + d) / 2.0)] {
+                        for (p, q) in [(a, c), (a, d), (b, c), (b, d), (f64::midpoint(a, b), f64::midpoint(c, d))] {
                             assert!((x * y).contains(p * q) && (x + y).contains(p + q) && (x - y).contains(p - q));
                             assert!(q == 0.0 || (x / y).contains(p / q), "{x:?} {y:?}");
                             assert!(x.squared().contains(p * p));

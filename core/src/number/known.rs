@@ -40,6 +40,23 @@ impl Known {
         }
     }
 
+    /// The exact number, or the middle of the tolerance as an exact number.
+    pub(crate) fn middle(self) -> Self {
+        self.exactly(Enclosure::middle)
+    }
+
+    /// The exact number, or one end of the tolerance as an exact number.
+    pub(crate) fn end(self, upper: bool) -> Self {
+        self.exactly(if upper { Enclosure::high } else { Enclosure::low })
+    }
+
+    fn exactly(self, choice: fn(Enclosure) -> f64) -> Self {
+        match self {
+            Self::Exactly(_) => self,
+            Self::Within(x) => Self::from(choice(x)),
+        }
+    }
+
     /// The exact number, if it is one.
     pub fn exact(self) -> Option<Rational> {
         match self {

@@ -1,4 +1,5 @@
-//! `f64` and `f32`: fast, no proof. f32 computes in f32.
+//! `f64` and `f32`: fast, no proof. f32 computes in f32: the nine ratios of a shock are within 8 units of 2⁻²⁴ (a test says so), for M − 1 from
+//! 1e-6 to 29.
 //!
 //! Elementary functions come from `libm`, the same software on every target, so that results have the same bits there.
 

@@ -226,13 +226,12 @@ fn budget(reduction: &Reduction) -> Vec<BudgetLine> {
                 standard_uncertainty,
                 share: Share { temperature, pressure, step },
                 unit: match source {
-                    Source::Fit(_) | Source::ShockSpeed => "m/s",
                     Source::HeatCapacityRatio => "1",
                     Source::FillPressure => "Pa",
                     Source::FillTemperature => "K",
                     Source::MolarMass => "kg/mol",
                     Source::EndWall if matches!(reduction.wall(), EndWall::Yielding(_)) => "Pa s/m",
-                    Source::EndWall => "m/s",
+                    Source::Fit(_) | Source::ShockSpeed | Source::EndWall => "m/s",
                 },
             }
         })

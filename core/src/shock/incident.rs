@@ -1,5 +1,6 @@
 //! The incident shock into a fill, and its reflection from a rigid wall, as enclosures.
 
+use super::direction::{Direction, FillInput, with_entry, with_fill};
 use super::entry::{Branch, Entry, Problem};
 use super::output::{Flow, Form, Output};
 use super::relations::{Jump, mach_excess};
@@ -21,8 +22,8 @@ const Z_RANGE: (i32, i32) = (-Counted::ENTRY + 1, 2 * MACH_EXPONENT + 1);
 /// else the two doubles that bracket it. From T2/T1, the gas speed or a quantity of state 5 the Mach number is optimal and
 /// the others are, unless the answer lies within about 2⁻⁹⁵ of a double: then the enclosure has 2 ulp.
 ///
-/// **Tolerances.** An enclosure of the range of each output over the box of all inputs, by proven monotonicity or subdivision
-/// (over-width at most 1 %, measured).
+/// **Tolerances.** An enclosure of the range of each output over the box of all inputs, by proven monotonicity or subdivision (over-width at most
+/// 1 %, measured).
 ///
 /// Model: ideal gas of constant heat capacity, normal shock, Rankine–Hugoniot relations (NACA Report 1135, equations 93 to 99), gas at rest at
 /// the wall. Domain: M up to 2⁶⁴, M − 1 from 2⁻²⁰⁰, pressures and temperatures within 2^±200.
@@ -333,7 +334,33 @@ impl Incident {
             let jump = Jump::new(problem.gamma, z);
             Flow::new(jump, problem.gamma, problem.pressure, problem.temperature, problem.molar_mass).evaluate(output)
         };
-        bounds(self.inputs(), slopes, |inputs| self.at(inputs).map_or(Enclosure::UNKNOWN, |shock| shock.output(output)))
+        self.range_of(output, slopes, |shock| shock.output(output))
+    }
+
+    /// The range of a function of the inputs that has the directions of `output`: at the ends of every input whose direction is proven by hand, by
+    /// slopes and subdivision in the others, among them always γ.
+    pub(super) fn range_of(
+        &self,
+        output: Output,
+        slopes: impl Fn([Dual<Enclosure, 5>; 5]) -> Dual<Enclosure, 5>,
+        point: impl Fn(&Self) -> Enclosure,
+    ) -> Enclosure {
+        let [value, gamma, pressure, temperature, molar_mass] = self.inputs();
+        let gamma_high = self.fill.gas().heat_capacity_ratio().enclosure().high();
+        let fill = |input| with_fill(self.entry, output, input, gamma_high);
+        let ends = |upper: bool| {
+            let at = |input: Known, direction: Option<Direction>| direction.map_or(input, |up| input.end((up == Direction::Up) == upper));
+            let inputs = [
+                at(value, with_entry(output)),
+                gamma,
+                at(pressure, fill(FillInput::Pressure)),
+                at(temperature, fill(FillInput::Temperature)),
+                at(molar_mass, fill(FillInput::MolarMass)),
+            ];
+            bounds(inputs, &slopes, |inputs| self.at(inputs).as_ref().map_or(Enclosure::UNKNOWN, &point))
+        };
+        let (lower, upper) = (ends(false), ends(true));
+        Enclosure::ordered(lower.low(), upper.high()).marked(lower.quality().max(upper.quality()))
     }
 
     /// The problem and z over a box of inputs.

@@ -1,4 +1,5 @@
 //! Floor 3: the stationary jump, the incident and the reflected shock.
+mod direction;
 mod entry;
 mod incident;
 mod moving;

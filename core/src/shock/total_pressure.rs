@@ -1,8 +1,9 @@
 //! Total pressure across the stationary shock.
 
 use super::incident::Incident;
+use super::output::Output;
 use crate::gas::Gamma;
-use crate::number::{Ball, Dual, Elementary, Enclosure, Known, Semifield, bounds};
+use crate::number::{Ball, Dual, Elementary, Enclosure, Semifield};
 
 /// M² − 1 below which the loss is taken by its series.
 const WEAK: f64 = 0.1;
@@ -53,15 +54,20 @@ impl Incident {
     /// # Ok::<(), endwall::gas::InputError>(())
     /// ```
     pub fn total_pressure_ratio(&self) -> Enclosure {
-        self.of_logarithm(Elementary::exp, Dual::exp).at_least_zero()
+        self.of_logarithm(Output::MachBehind, Elementary::exp, Dual::exp).at_least_zero()
     }
 
     /// Total-pressure loss 1 − pt2/pt1, accurate for the weakest shock: it vanishes as (16γ/(3(γ+1)²))·(M − 1)³.
     pub fn total_pressure_loss(&self) -> Enclosure {
-        self.of_logarithm(|l| -(l * l.expm1_ratio()), |l| -(l * l.expm1_ratio()))
+        self.of_logarithm(Output::PressureRatio, |l| -(l * l.expm1_ratio()), |l| -(l * l.expm1_ratio()))
     }
 
-    fn of_logarithm(&self, point: impl Fn(Ball) -> Ball, slopes: impl Fn(Dual<Enclosure, 5>) -> Dual<Enclosure, 5>) -> Enclosure {
+    fn of_logarithm(
+        &self,
+        direction: Output,
+        point: impl Fn(Ball) -> Ball,
+        slopes: impl Fn(Dual<Enclosure, 5>) -> Dual<Enclosure, 5>,
+    ) -> Enclosure {
         let at = |shock: &Self| {
             let (gamma, z) = (shock.ball_problem().gamma, shock.z());
             point(if z.nearest() < WEAK { weak_logarithm(gamma, z) } else { logarithm(gamma, z) }).enclosure()
@@ -73,6 +79,7 @@ impl Incident {
             let (problem, z) = self.over_box(variables);
             slopes(logarithm(problem.gamma, z))
         };
-        bounds(self.inputs(), over_box, |inputs: [Known; 5]| self.at(inputs).as_ref().map_or(Enclosure::UNKNOWN, at))
+        // Both directions are those of an output that falls or grows with the strength alone.
+        self.range_of(direction, over_box, at)
     }
 }

@@ -55,15 +55,11 @@ impl Incident {
 
     /// Z·V − (p5(V) − p1).
     fn imbalance(&self, impedance: Known, wall_speed: f64) -> Enclosure {
-        match (self.is_exact(), impedance.exact()) {
-            (true, Some(exact)) => {
-                let speed = Ball::from(wall_speed);
-                (Ball::from(exact) * speed - self.wall_ball(speed, Output::Step, true)).enclosure()
-            }
-            _ => {
-                let step = self.at_wall(Known::from(wall_speed)).state.pressure - self.fill().pressure().enclosure();
-                impedance.enclosure() * Enclosure::from(wall_speed) - step
-            }
+        if let (true, Some(exact)) = (self.is_exact(), impedance.exact()) {
+            let speed = Ball::from(wall_speed);
+            return (Ball::from(exact) * speed - self.wall_ball(speed, Output::Step, true)).enclosure();
         }
+        let step = self.at_wall(Known::from(wall_speed)).state.pressure - self.fill().pressure().enclosure();
+        impedance.enclosure() * Enclosure::from(wall_speed) - step
     }
 }

@@ -2,16 +2,13 @@
 //!
 //! Whole numbers, `+ - * /`, square root and one software logarithm: the same seed gives the same bits on every machine.
 
+use crate::number::{Elementary, Positive};
+
 /// 2^-53, the spacing of the uniform variates.
 const SPACING: f64 = 1.0 / 9_007_199_254_740_992.0;
 
 /// Tries of the polar method for one pair of normal variates. Each fails with probability `1 - pi/4`: all of them with 1e-43.
 const TRIES: usize = 64;
-
-/// The only place of this file where an elementary function is taken, so that another logarithm with the same bits everywhere can be put in.
-fn ln(x: f64) -> f64 {
-    libm::log(x)
-}
 
 /// `SplitMix64`: spreads a seed over the state.
 fn split_mix(state: &mut u64) -> u64 {
@@ -82,7 +79,7 @@ impl Generator {
                 break;
             }
         }
-        let factor = libm::sqrt(-2.0 * ln(square) / square);
+        let factor = Positive::sqrt(-2.0 * Elementary::ln(square) / square);
         self.spare = Some(y * factor);
         x * factor
     }

@@ -107,6 +107,7 @@ impl Reduction {
 #[cfg(test)]
 mod tests {
     use super::*;
+    extern crate std;
     use crate::shot::{Measured, Shot, SpeedSource, reduce};
 
     /// Linear and Monte Carlo uncertainties agree for every kind of wall, so the slopes are right, the implicit ones among them.
@@ -132,7 +133,7 @@ mod tests {
             let outputs =
                 [Output::Temperature5, Output::Pressure5, Output::Density5, Output::SoundSpeed5, Output::ReflectedSpeed, Output::Step];
             let settings = MonteCarloSettings { max_trials: 60_000, ..Default::default() };
-            let mut buffer = [0.0; 6 * 5000];
+            let mut buffer = std::vec![0.0; 6 * 5000];
             let run = reduction.monte_carlo(&outputs, 5, &settings, &mut buffer, &mut |_| true).unwrap();
             for (output, summary) in outputs.iter().zip(run.outputs()) {
                 let estimate = reduction.estimate(*output);

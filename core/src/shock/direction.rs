@@ -1,0 +1,151 @@
+//! In which direction each output moves with each input, at a fixed heat-capacity ratio: proven by hand, so that a box of tolerances is bounded at
+//! its corners and only the rest has to be subdivided.
+//!
+//! **In the strength.** With G = γ+1 and z = M² − 1, at fixed γ: p2/p1 = 1 + 2γz/G; ρ2/ρ1 = 1 + 2/(G/z + γ−1); T2/T1 − 1 = 2(γ−1)·z/(1+z)·(G+γz)/G²;
+//! u2/a1 = 2(M − 1/M)/G; p5/p2 = 1 + 2γ/(G/z + γ−1); the coefficient (p5−p1)/(p2−p1) = (2G + (3γ−1)z)/(G + (γ−1)z), whose slope has the sign of
+//! (3γ−1) − 2(γ−1) > 0; ρ5/ρ2 = γP/((γ−1)P + 1) increases with P = p2/p1; T5/T1 − 1 = 2(γ−1)·z/(1+z)·(2G + (3γ−1)z)/G²; `M_R`² = 1 + G/(G/z + γ−1): all
+//! increase with z, M2² = B/A = 1/`M_R`² and the total-pressure ratio (entropy rises) decrease. Only the two speeds
+//! U − u2 = a1·(2/M + (γ−1)M)/G and `U_R` = a1·((3−γ)/M + 2(γ−1)M)/G have a minimum in M.
+//!
+//! **In the fill, at fixed strength**: pressures ∝ p1; densities ∝ p1·W/T1; temperatures ∝ T1; speeds ∝ √(T1/W).
+//!
+//! **The strength in the fill, at fixed entry**: z increases with every entry. A pressure or a step needs a stronger shock in a thinner gas; a speed
+//! or a temperature in a colder one; a speed in a heavier one.
+//!
+//! Where the last two oppose each other the sign follows from the relation at fixed entry, see [`opposed`], or the input is subdivided.
+
+use super::entry::Entry;
+use super::output::Output;
+use Direction::{Down, Up};
+
+/// The inputs beside the entry and γ.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum FillInput {
+    Pressure,
+    Temperature,
+    MolarMass,
+}
+
+/// An output grows or falls with an input.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Direction {
+    Up,
+    Down,
+}
+
+impl Direction {
+    const fn times(self, other: Self) -> Self {
+        if matches!((self, other), (Up, Up) | (Down, Down)) { Up } else { Down }
+    }
+}
+
+/// How an output depends on one thing.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+enum Dependence {
+    No,
+    In(Direction),
+    Unknown,
+}
+
+/// The direction with the entry; `None` where the output has a minimum.
+pub(super) fn with_entry(output: Output) -> Option<Direction> {
+    match in_strength(output) {
+        Dependence::In(direction) => Some(direction),
+        // Any end will do.
+        Dependence::No => Some(Up),
+        Dependence::Unknown => None,
+    }
+}
+
+/// The direction with an input of the fill at a fixed entry, for all γ up to `gamma_high`; `None` where it is not known.
+pub(super) fn with_fill(entry: Entry, output: Output, input: FillInput, gamma_high: f64) -> Option<Direction> {
+    let direct = in_fill(output, input);
+    let through_strength = match (in_strength(output), strength_in_fill(entry, input)) {
+        (Dependence::No, _) | (_, None) => Dependence::No,
+        (Dependence::In(f), Some(z)) => Dependence::In(f.times(z)),
+        (Dependence::Unknown, Some(_)) => Dependence::Unknown,
+    };
+    match (direct, through_strength) {
+        (None, Dependence::No) => Some(Up),
+        (Some(direction), Dependence::No) => Some(direction),
+        (None, Dependence::In(direction)) => Some(direction),
+        (Some(a), Dependence::In(b)) if a == b => Some(a),
+        _ => opposed(entry, output, gamma_high).then(|| if input == FillInput::MolarMass { Down } else { Up }).map(|own| match output {
+            // u2 = 2(U² − a1²)/(GU) falls with the sound speed of the fill.
+            Output::GasSpeed2 => own.times(Down),
+            _ => own,
+        }),
+    }
+}
+
+/// True where an output follows the fill's own direction although the strength opposes it (or has no direction), at a fixed entry.
+///
+/// *Shock speed given*, w = a1²/U² ∝ T1/W: T2 ∝ (2γ − (γ−1)w)(γ−1 + 2w), whose slope in w is least at w = 1, where it is 4 − (γ−1)² ≥ 0 for γ ≤ 3;
+/// T5 ∝ (3γ−1 − 2(γ−1)w)(2(γ−1) + (3−γ)w), whose slope at w = 1 is (5−3γ)(1+γ) ≥ 0 for γ ≤ 5/3 (beyond, T5 has a maximum); sound speeds
+/// follow the temperatures; u2 = 2(U² − a1²)/(GU); U − u2 = ((γ−1)U² + 2a1²)/(GU); `U_R` = (2(γ−1)U² + (3−γ)a1²)/(GU), γ ≤ 3.
+///
+/// *Gas speed given*: U = Gu/4 + √((Gu/4)² + a1²); a2² = a1² + (γ−1)(Uu − u²/2); `U_R` = (G/4 − 1)u + √((Gu/4)² + a2²);
+/// a5² = a2² + (γ−1)(u²/2 + u·`U_R`): each increases with a1², and temperatures with the sound speeds at fixed W.
+///
+/// *p2 − p1 given*: p2 = p1 + Δ; *p5 − p1 given*: p5 likewise.
+fn opposed(entry: Entry, output: Output, gamma_high: f64) -> bool {
+    match (entry, output) {
+        (Entry::ShockSpeed, Output::Temperature2 | Output::SoundSpeed2 | Output::ReflectedSpeed) => gamma_high <= 3.0,
+        // The double nearest 5/3 is below it.
+        (Entry::ShockSpeed, Output::Temperature5 | Output::SoundSpeed5) => gamma_high <= 5.0 / 3.0,
+        (Entry::ShockSpeed, Output::GasSpeed2 | Output::ShockFrameSpeed2) => true,
+        (
+            Entry::GasSpeed,
+            Output::ShockSpeed
+            | Output::Temperature2
+            | Output::SoundSpeed2
+            | Output::ShockFrameSpeed2
+            | Output::Temperature5
+            | Output::SoundSpeed5
+            | Output::ReflectedSpeed,
+        ) => true,
+        (Entry::PressureRise, Output::Pressure2) | (Entry::Step, Output::Pressure5) => true,
+        _ => false,
+    }
+}
+
+/// z with an input of the fill, at a fixed entry.
+fn strength_in_fill(entry: Entry, input: FillInput) -> Option<Direction> {
+    match (entry, input) {
+        (Entry::PressureRise | Entry::Step | Entry::ReflectedPressure, FillInput::Pressure)
+        | (Entry::ShockSpeed | Entry::GasSpeed | Entry::ReflectedTemperature, FillInput::Temperature) => Some(Down),
+        (Entry::ShockSpeed | Entry::GasSpeed, FillInput::MolarMass) => Some(Up),
+        _ => None,
+    }
+}
+
+/// An output with an input of the fill, at a fixed strength.
+fn in_fill(output: Output, input: FillInput) -> Option<Direction> {
+    match output {
+        Output::Pressure2 | Output::PressureRise | Output::Pressure5 | Output::Step => (input == FillInput::Pressure).then_some(Up),
+        Output::Temperature2 | Output::Temperature5 => (input == FillInput::Temperature).then_some(Up),
+        Output::Density1 | Output::Density2 | Output::Density5 => Some(if input == FillInput::Temperature { Down } else { Up }),
+        Output::ShockSpeed
+        | Output::SoundSpeed1
+        | Output::SoundSpeed2
+        | Output::SoundSpeed5
+        | Output::GasSpeed2
+        | Output::ShockFrameSpeed2
+        | Output::ReflectedSpeed => match input {
+            FillInput::Pressure => None,
+            FillInput::Temperature => Some(Up),
+            FillInput::MolarMass => Some(Down),
+        },
+        _ => None,
+    }
+}
+
+/// An output with z, at fixed γ and fill.
+fn in_strength(output: Output) -> Dependence {
+    match output {
+        Output::Density1 | Output::SoundSpeed1 => Dependence::No,
+        Output::ShockFrameSpeed2 | Output::ReflectedSpeed | Output::ReflectedSpeedRatio => Dependence::Unknown,
+        Output::MachBehind => Dependence::In(Down),
+        _ => Dependence::In(Up),
+    }
+}
