@@ -1,8 +1,6 @@
 //! Exact decimals and ratios: a number as it was typed.
 
 use core::cmp::Ordering;
-use core::fmt;
-use core::str::FromStr;
 
 /// An exact rational number ± numerator/denominator · 2ᵉ.
 ///
@@ -26,32 +24,6 @@ pub struct Rational {
     exponent: i32,
 }
 
-/// Why a text is not an exact number.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum RationalError {
-    /// The text is empty.
-    Empty,
-    /// A character that does not belong into a number, and its position in bytes.
-    Character(usize),
-    /// More digits, or a larger or smaller power of ten, than 128-bit integers hold (38 digits).
-    TooLong,
-    /// The denominator of a ratio is zero.
-    DividedByZero,
-}
-
-impl fmt::Display for RationalError {
-    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        match self {
-            Self::Empty => f.write_str("no number was given"),
-            Self::Character(at) => write!(f, "not a number: character {} does not belong there", at + 1),
-            Self::TooLong => f.write_str("a number may have at most 38 digits and a power of ten within 1e-38 to 1e38"),
-            Self::DividedByZero => f.write_str("the denominator of a ratio must not be zero"),
-        }
-    }
-}
-
-impl core::error::Error for RationalError {}
-
 impl Rational {
     /// Zero.
     pub const ZERO: Self = Self::integer(0);
@@ -71,6 +43,11 @@ impl Rational {
         Some(Self { negative: false, numerator, denominator, exponent: 0 }.reduced())
     }
 
+    /// ± mantissa·2ᵉ.
+    pub(super) const fn scaled(negative: bool, mantissa: u128, exponent: i32) -> Self {
+        Self { negative, numerator: mantissa, denominator: 1, exponent }.reduced()
+    }
+
     /// The exact number that the double is.
     fn from_double(x: f64) -> Self {
         if !x.is_finite() {
@@ -80,7 +57,7 @@ impl Rational {
         let biased = ((bits >> 52) & 0x7ff) as i32;
         let fraction = bits & ((1 << 52) - 1);
         let mantissa = if biased == 0 { fraction } else { fraction | (1 << 52) };
-        Self { negative: x < 0.0, numerator: u128::from(mantissa), denominator: 1, exponent: biased.max(1) - 1075 }.reduced()
+        Self::scaled(x < 0.0, u128::from(mantissa), biased.max(1) - 1075)
     }
 
     /// Lowest terms: odd numerator and denominator (the powers of two in the exponent), no common factor; one form for each number.
@@ -265,7 +242,7 @@ fn nearest(numerator: u128, denominator: u128, exponent: i32) -> f64 {
     let lowest = (exponent + length - 53).max(-1074);
     let drop = lowest - exponent;
     if drop <= 0 {
-        return scaled(quotient, exponent);
+        return times_power_of_two(quotient, exponent);
     }
     let mantissa = if drop > 127 {
         0
@@ -275,11 +252,11 @@ fn nearest(numerator: u128, denominator: u128, exponent: i32) -> f64 {
         let half = 1 << (drop - 1);
         kept + u128::from(lost > half || (lost == half && (rest != 0 || kept & 1 == 1)))
     };
-    scaled(mantissa, lowest)
+    times_power_of_two(mantissa, lowest)
 }
 
 /// m·2ⁿ where that is a double or overflows.
-fn scaled(mantissa: u128, exponent: i64) -> f64 {
+fn times_power_of_two(mantissa: u128, exponent: i64) -> f64 {
     libm::scalbn(mantissa as f64, exponent.clamp(-4000, 4000) as i32)
 }
 
@@ -310,122 +287,9 @@ impl From<i32> for Rational {
     }
 }
 
-impl FromStr for Rational {
-    type Err = RationalError;
-
-    /// A decimal (`-12.5`, `1.2e-3`) or a ratio of two of them (`5/3`).
-    fn from_str(text: &str) -> Result<Self, RationalError> {
-        match text.split_once('/') {
-            None => decimal(text, 0),
-            Some((above, below)) => {
-                let divisor = decimal(below, above.len() + 1)?;
-                if divisor.numerator == 0 {
-                    return Err(RationalError::DividedByZero);
-                }
-                decimal(above, 0)?.checked_div(divisor).ok_or(RationalError::TooLong)
-            }
-        }
-    }
-}
-
-/// One decimal; `offset` is its place in the whole text, for the error.
-fn decimal(text: &str, offset: usize) -> Result<Rational, RationalError> {
-    let trimmed = text.trim_start();
-    let offset = offset + text.len() - trimmed.len();
-    let trimmed = trimmed.trim_end();
-    let (negative, digits, offset) = match trimmed.strip_prefix('-') {
-        Some(rest) => (true, rest, offset + 1),
-        None => match trimmed.strip_prefix('+') {
-            Some(rest) => (false, rest, offset + 1),
-            None => (false, trimmed, offset),
-        },
-    };
-    if digits.is_empty() {
-        return Err(RationalError::Empty);
-    }
-    let mut mantissa: u128 = 0;
-    let mut pending_zeros: i32 = 0;
-    let mut ten: i32 = 0;
-    let (mut seen_point, mut seen_digit) = (false, false);
-    let mut bytes = digits.bytes().enumerate();
-    for (at, byte) in bytes.by_ref() {
-        match byte {
-            b'0' if mantissa == 0 => seen_digit = true,
-            // Zeros are kept back until a digit follows, so that 1000000 does not use up the digits.
-            b'0' => {
-                seen_digit = true;
-                pending_zeros = pending_zeros.checked_add(1).ok_or(RationalError::TooLong)?;
-            }
-            b'1'..=b'9' => {
-                seen_digit = true;
-                for _ in 0..=pending_zeros {
-                    mantissa = mantissa.checked_mul(10).ok_or(RationalError::TooLong)?;
-                }
-                pending_zeros = 0;
-                mantissa = mantissa.checked_add(u128::from(byte - b'0')).ok_or(RationalError::TooLong)?;
-            }
-            b'.' if !seen_point => {
-                seen_point = true;
-                continue;
-            }
-            b'e' | b'E' if seen_digit => {
-                let power = digits.get(at + 1..).unwrap_or("");
-                let value: i32 = power.parse().map_err(|_| RationalError::Character(offset + at))?;
-                ten = ten.checked_add(value).ok_or(RationalError::TooLong)?;
-                break;
-            }
-            _ => return Err(RationalError::Character(offset + at)),
-        }
-        if seen_point {
-            ten = ten.checked_sub(1).ok_or(RationalError::TooLong)?;
-        }
-    }
-    if !seen_digit {
-        return Err(RationalError::Character(offset));
-    }
-    if mantissa == 0 {
-        return Ok(Rational::ZERO);
-    }
-    let ten = ten.checked_add(pending_zeros).ok_or(RationalError::TooLong)?;
-    let power = 5u128.checked_pow(ten.unsigned_abs()).ok_or(RationalError::TooLong)?;
-    let base = Rational { negative, numerator: mantissa, denominator: 1, exponent: ten }.reduced();
-    let five = Rational::ratio(power, 1).ok_or(RationalError::TooLong)?;
-    if ten < 0 { base.checked_div(five) } else { base.checked_mul(five) }.ok_or(RationalError::TooLong)
-}
-
 #[cfg(test)]
 mod tests {
-    extern crate std;
     use super::*;
-    use std::string::ToString;
-
-    #[test]
-    fn decimals_are_read_exactly_and_rounded_once() {
-        let cases = [
-            "0",
-            "1",
-            "0.1",
-            "296.2",
-            "39.948e-3",
-            "1e22",
-            "1e23",
-            "9007199254740993",
-            "0.3",
-            "123456789012345678901234567890",
-            "1.7976931348623157e30",
-            "8.31446261815324",
-            "-2.5e-7",
-            "1e-38",
-            "2.2250738585072011e-20",
-            "4.35",
-            "0.000001",
-        ];
-        for text in cases {
-            let exact: Rational = text.parse().unwrap();
-            let double: f64 = text.parse().unwrap();
-            assert_eq!(exact.to_f64(), double, "{text}");
-        }
-    }
 
     #[test]
     fn doubles_go_in_and_come_back() {
@@ -445,19 +309,5 @@ mod tests {
         assert_eq!(r("1").checked_div(r("7")), Some(r("1/7")));
         assert_eq!(r("1/3").compare(r("0.3333333333333333")), Some(Ordering::Greater));
         assert_eq!(r("-1").compare(r("0")), Some(Ordering::Less));
-    }
-
-    #[test]
-    fn what_is_no_number_is_refused_with_its_place() {
-        let error = |text: &str| text.parse::<Rational>().unwrap_err();
-        assert_eq!(error(""), RationalError::Empty);
-        assert_eq!(error("1,5"), RationalError::Character(1));
-        assert_eq!(error("12x"), RationalError::Character(2));
-        assert_eq!(error("1/0"), RationalError::DividedByZero);
-        assert_eq!(error("1e99"), RationalError::TooLong);
-        assert_eq!(error("."), RationalError::Character(0));
-        assert_eq!(error("e5"), RationalError::Character(0));
-        assert_eq!(error("3/4/5"), RationalError::Character(3));
-        assert!(error("1e99").to_string().contains("38 digits"));
     }
 }

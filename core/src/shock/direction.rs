@@ -66,15 +66,14 @@ pub(super) fn with_fill(entry: Entry, output: Output, input: FillInput, gamma_hi
         (Dependence::Unknown, Some(_)) => Dependence::Unknown,
     };
     match (direct, through_strength) {
+        // Any end will do.
         (None, Dependence::No) => Some(Up),
-        (Some(direction), Dependence::No) => Some(direction),
-        (None, Dependence::In(direction)) => Some(direction),
+        (Some(direction), Dependence::No) | (None, Dependence::In(direction)) => Some(direction),
         (Some(a), Dependence::In(b)) if a == b => Some(a),
-        _ => opposed(entry, output, gamma_high).then(|| if input == FillInput::MolarMass { Down } else { Up }).map(|own| match output {
-            // u2 = 2(U² − a1²)/(GU) falls with the sound speed of the fill.
-            Output::GasSpeed2 => own.times(Down),
-            _ => own,
-        }),
+        // u2 = 2(U² − a1²)/(GU) falls with the sound speed of the fill, against its own direction.
+        _ if (entry, output) == (Entry::ShockSpeed, Output::GasSpeed2) => direct.map(|own| own.times(Down)),
+        _ if opposed(entry, output, gamma_high) => direct,
+        _ => None,
     }
 }
 
@@ -82,7 +81,7 @@ pub(super) fn with_fill(entry: Entry, output: Output, input: FillInput, gamma_hi
 ///
 /// *Shock speed given*, w = a1²/U² ∝ T1/W: T2 ∝ (2γ − (γ−1)w)(γ−1 + 2w), whose slope in w is least at w = 1, where it is 4 − (γ−1)² ≥ 0 for γ ≤ 3;
 /// T5 ∝ (3γ−1 − 2(γ−1)w)(2(γ−1) + (3−γ)w), whose slope at w = 1 is (5−3γ)(1+γ) ≥ 0 for γ ≤ 5/3 (beyond, T5 has a maximum); sound speeds
-/// follow the temperatures; u2 = 2(U² − a1²)/(GU); U − u2 = ((γ−1)U² + 2a1²)/(GU); `U_R` = (2(γ−1)U² + (3−γ)a1²)/(GU), γ ≤ 3.
+/// follow the temperatures; U − u2 = ((γ−1)U² + 2a1²)/(GU); `U_R` = (2(γ−1)U² + (3−γ)a1²)/(GU), γ ≤ 3.
 ///
 /// *Gas speed given*: U = Gu/4 + √((Gu/4)² + a1²); a2² = a1² + (γ−1)(Uu − u²/2); `U_R` = (G/4 − 1)u + √((Gu/4)² + a2²);
 /// a5² = a2² + (γ−1)(u²/2 + u·`U_R`): each increases with a1², and temperatures with the sound speeds at fixed W.
@@ -93,8 +92,8 @@ fn opposed(entry: Entry, output: Output, gamma_high: f64) -> bool {
         (Entry::ShockSpeed, Output::Temperature2 | Output::SoundSpeed2 | Output::ReflectedSpeed) => gamma_high <= 3.0,
         // The double nearest 5/3 is below it.
         (Entry::ShockSpeed, Output::Temperature5 | Output::SoundSpeed5) => gamma_high <= 5.0 / 3.0,
-        (Entry::ShockSpeed, Output::GasSpeed2 | Output::ShockFrameSpeed2) => true,
-        (
+        (Entry::ShockSpeed, Output::ShockFrameSpeed2)
+        | (
             Entry::GasSpeed,
             Output::ShockSpeed
             | Output::Temperature2
@@ -103,8 +102,9 @@ fn opposed(entry: Entry, output: Output, gamma_high: f64) -> bool {
             | Output::Temperature5
             | Output::SoundSpeed5
             | Output::ReflectedSpeed,
-        ) => true,
-        (Entry::PressureRise, Output::Pressure2) | (Entry::Step, Output::Pressure5) => true,
+        )
+        | (Entry::PressureRise, Output::Pressure2)
+        | (Entry::Step, Output::Pressure5) => true,
         _ => false,
     }
 }

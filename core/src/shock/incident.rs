@@ -1,12 +1,11 @@
 //! The incident shock into a fill, and its reflection from a rigid wall, as enclosures.
 
-use super::direction::{Direction, FillInput, with_entry, with_fill};
 use super::entry::{Branch, Entry, Problem};
 use super::output::{Flow, Form, Output};
 use super::relations::{Jump, mach_excess};
 use super::state::State;
 use crate::gas::{Fill, Gamma, InputError, Parameter, Rule, positive};
-use crate::number::{Ball, Counted, Dual, Enclosure, Exact, Known, Positive, Rational, Semifield, Signed, bounds};
+use crate::number::{Ball, Counted, Enclosure, Exact, Known, Positive, Rational, Semifield};
 
 /// M is at most 2⁶⁴, M − 1 at least 2⁻²⁰⁰: within these the counted proof excludes overflow and underflow.
 const MACH_EXPONENT: i32 = 64;
@@ -270,6 +269,11 @@ impl Incident {
         Flow::new(Jump::new(problem.gamma, z), problem.gamma, problem.pressure, problem.temperature, problem.molar_mass)
     }
 
+    /// The shock that the same quantity fixes in another exact fill.
+    pub(super) fn with_inputs(&self, fill: Fill, value: Known) -> Self {
+        Self { fill, value, basis: (self.entry, value), ..*self }.solved()
+    }
+
     /// The same shock with its strength computed, for exact inputs.
     fn solved(self) -> Self {
         if self.exact_jump().is_some() {
@@ -327,48 +331,6 @@ impl Incident {
         Some(settle(flow.form(output), exact))
     }
 
-    /// The range of an output over the box of all inputs.
-    fn range(&self, output: Output) -> Enclosure {
-        let slopes = |variables: [Dual<Enclosure, 5>; 5]| {
-            let (problem, z) = self.over_box(variables);
-            let jump = Jump::new(problem.gamma, z);
-            Flow::new(jump, problem.gamma, problem.pressure, problem.temperature, problem.molar_mass).evaluate(output)
-        };
-        self.range_of(output, slopes, |shock| shock.output(output))
-    }
-
-    /// The range of a function of the inputs that has the directions of `output`: at the ends of every input whose direction is proven by hand, by
-    /// slopes and subdivision in the others, among them always γ.
-    pub(super) fn range_of(
-        &self,
-        output: Output,
-        slopes: impl Fn([Dual<Enclosure, 5>; 5]) -> Dual<Enclosure, 5>,
-        point: impl Fn(&Self) -> Enclosure,
-    ) -> Enclosure {
-        let [value, gamma, pressure, temperature, molar_mass] = self.inputs();
-        let gamma_high = self.fill.gas().heat_capacity_ratio().enclosure().high();
-        let fill = |input| with_fill(self.entry, output, input, gamma_high);
-        let ends = |upper: bool| {
-            let at = |input: Known, direction: Option<Direction>| direction.map_or(input, |up| input.end((up == Direction::Up) == upper));
-            let inputs = [
-                at(value, with_entry(output)),
-                gamma,
-                at(pressure, fill(FillInput::Pressure)),
-                at(temperature, fill(FillInput::Temperature)),
-                at(molar_mass, fill(FillInput::MolarMass)),
-            ];
-            bounds(inputs, &slopes, |inputs| self.at(inputs).as_ref().map_or(Enclosure::UNKNOWN, &point))
-        };
-        let (lower, upper) = (ends(false), ends(true));
-        Enclosure::ordered(lower.low(), upper.high()).marked(lower.quality().max(upper.quality()))
-    }
-
-    /// The problem and z over a box of inputs.
-    pub(super) fn over_box<S: Signed>(&self, [entry, excess, pressure, temperature, molar_mass]: [S; 5]) -> (Problem<S>, S) {
-        let problem = Problem { gamma: Gamma::from_excess(excess), pressure, temperature, molar_mass, entry };
-        (problem, problem.mach_squared_excess(self.basis.0, self.branch))
-    }
-
     /// z = M² − 1 at a point.
     pub(super) fn z(&self) -> Ball {
         let rational = || self.exact_jump()?.mach_squared_excess().counted(Z_RANGE.0, Z_RANGE.1);
@@ -376,12 +338,6 @@ impl Incident {
             Strength::Algebraic { z, .. } => z,
             _ => rational().map_or_else(|| self.ball_z(), Ball::from),
         }
-    }
-
-    /// The same shock at one point of the box.
-    pub(super) fn at(&self, [value, excess, pressure, temperature, molar_mass]: [Known; 5]) -> Option<Self> {
-        let fill = Fill::at(excess, molar_mass, pressure, temperature)?;
-        Some(Self { fill, value, basis: (self.entry, value), ..*self }.solved())
     }
 }
 

@@ -7,6 +7,7 @@ mod output;
 mod ratios;
 mod relations;
 mod state;
+mod tolerance;
 mod total_pressure;
 mod wall;
 mod yielding;
