@@ -4,6 +4,7 @@ use core::fmt;
 
 /// The inputs of gases, shocks and shots, by their trade names.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Parameter {
     /// Heat-capacity ratio γ.
     HeatCapacityRatio,
@@ -92,6 +93,7 @@ impl Parameter {
 
 /// The rule that an input broke.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Rule {
     /// It must be a finite number.
     Finite,
@@ -111,6 +113,7 @@ pub enum Rule {
 
 /// A refused input.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct InputError {
     /// Which input.
     pub parameter: Parameter,

@@ -8,6 +8,7 @@ use core::cmp::Ordering;
 
 /// The quantity that fixes the strength of an incident shock.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Entry {
     /// M − 1.
     MachExcess,
@@ -111,6 +112,7 @@ pub struct Problem<S> {
 
 /// Which of the two exact forms of a quadratic's root does not cancel; decided from the nominal inputs, before the formulas.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Branch {
     /// The linear coefficient is positive.
     PositiveLinear,

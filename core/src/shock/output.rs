@@ -6,6 +6,7 @@ use crate::number::{Positive, Semifield};
 
 /// The outputs of an incident shock and of its reflection from a rigid wall. SI units; ratios are dimensionless.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Output {
     /// Incident shock speed, m/s.
     ShockSpeed,

@@ -20,6 +20,7 @@ const NO_RESIDUAL_LEFT: f64 = 1e-9;
 
 /// A stated attenuation.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Allowance {
     /// Attenuation, 1/m (0.012 for 1.2 %/m).
     pub value: f64,
@@ -29,6 +30,7 @@ pub struct Allowance {
 
 /// What a fit needs to know beside the stations. The default: no allowance, no common errors, curvature line wanted.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct FitSettings {
     /// Attenuation allowance: one more observation of the attenuation. Needed with fewer than four used stations.
     pub attenuation: Option<Allowance>,

@@ -13,6 +13,7 @@ pub type FitMatrix = [[f64; 3]; 3];
 /// assert!(flags.contains(FitFlags::NO_CHECK) && !flags.contains(FitFlags::OUTLIER));
 /// ```
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct FitFlags(u8);
 
 impl FitFlags {
@@ -57,6 +58,7 @@ impl FitFlags {
 
 /// One line of the uncertainty of a fit.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 #[non_exhaustive]
 pub enum FitSource {
     /// Independent errors of the arrival times.
@@ -78,6 +80,7 @@ pub enum FitSource {
 
 /// Contribution of one source to the covariance of the results. The sources are independent: contributions add.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct FitLine {
     /// Where the uncertainty comes from.
     pub source: FitSource,
@@ -95,6 +98,7 @@ impl FitLine {
 
 /// The fit repeated without one station.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Refit {
     /// Shock speed at the end wall, m/s.
     pub shock_speed: f64,
@@ -106,6 +110,7 @@ pub struct Refit {
 
 /// How one station fits.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct StationFit {
     /// Index of the station in the slice that was fitted.
     pub station: usize,
@@ -125,6 +130,7 @@ impl StationFit {
 
 /// How the attenuation allowance fits, where one was given.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct AllowanceFit {
     /// Allowance minus fitted attenuation, 1/m.
     pub residual: f64,
@@ -136,6 +142,7 @@ pub struct AllowanceFit {
 
 /// The observation with the largest standardised residual, when that is beyond 3.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Outlier {
     /// The station with this index in the slice that was fitted.
     Station(usize),

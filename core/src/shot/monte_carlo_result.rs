@@ -34,6 +34,7 @@ impl Default for MonteCarloSettings {
 
 /// Why a run ended.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Stop {
     /// Mean, standard uncertainty and both ends of the interval have settled for every output (JCGM 101, 7.9.4 k).
     Converged,
@@ -45,6 +46,7 @@ pub enum Stop {
 
 /// Result of one output.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct OutputSummary {
     /// Mean of all trials.
     pub mean: f64,
@@ -98,6 +100,7 @@ impl MonteCarlo {
 
 /// How far a run has got, after each block.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Progress {
     /// Trials so far.
     pub trials: u64,

@@ -16,6 +16,7 @@ pub(super) const VARIABLES: usize = 6;
 
 /// The shape of what is known about an input, for the Monte Carlo check.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Distribution {
     /// Normal.
     #[default]
@@ -26,6 +27,7 @@ pub enum Distribution {
 
 /// The standard uncertainty of an input (JCGM 100:2008, 2.3.1), in the unit of the input.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Uncertainty {
     /// Standard uncertainty, zero or more.
     pub standard: f64,
@@ -145,6 +147,7 @@ impl From<InputError> for ReductionError {
 
 /// What a line of the budget is about.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub enum Source {
     /// A part of the fitted shock speed.
     Fit(FitSource),
@@ -197,6 +200,7 @@ impl Source {
 
 /// One line of the uncertainty budget.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct BudgetLine {
     /// What it is about.
     pub source: Source,
@@ -206,6 +210,7 @@ pub struct BudgetLine {
 
 /// One result: the nominal value, what is proven of it, and how well it is known. Three different things.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Estimate {
     /// The double nearest to the model's exact answer at the nominal inputs.
     pub value: f64,

@@ -23,6 +23,7 @@ const LARGEST: f64 = f64::from_bits(((1023 + 200) as u64) << 52);
 /// assert_eq!(station.corrected_arrival(), 1247.461e-6);
 /// ```
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Station {
     /// Distance from the end wall, m; zero or positive (zero: a sensor in the end wall itself).
     pub from_end_wall: f64,

@@ -45,6 +45,7 @@ fn scale_by_ten(x: f64, n: i32) -> f64 {
 
 /// Outcome of the comparison of JCGM 101:2008, 8.1.
 #[derive(Clone, Copy, Debug, PartialEq)]
+#[cfg_attr(feature = "serde", derive(serde::Serialize))]
 pub struct Validation {
     /// `|y - U - y_low|`, in the unit of the output.
     pub low_difference: f64,
