@@ -45,7 +45,9 @@ pub struct RecordError {
 
 impl RecordError {
     pub(crate) fn new(kind: ErrorKind, path: &str, typed: &str, wrong: impl Into<String>, remedy: impl Into<String>) -> Self {
-        Self { kind, path: path.into(), typed: printable(typed), wrong: wrong.into(), remedy: remedy.into() }
+        // Pieces of the file are repeated in all of them.
+        let plain = |text: String| text.chars().map(plain_character).collect();
+        Self { kind, path: plain(path.into()), typed: printable(typed), wrong: plain(wrong.into()), remedy: plain(remedy.into()) }
     }
 }
 

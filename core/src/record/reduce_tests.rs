@@ -121,6 +121,14 @@ fn a_swapped_or_bad_station_is_named() {
 }
 
 #[test]
+fn a_time_without_an_uncertainty_is_said_and_a_control_character_is_not_echoed() {
+    let bare = reduced(&ARGON.replacen("515.02 ± 0.3 us", "515.02 us", 1));
+    assert!(bare.flags.iter().any(|flag| flag.code == "missing-uncertainty" && flag.text.contains("stations[1].arrival")));
+    let escape = Shot::read(ARGON.replacen("0.3 us", "0.3 u\\u001b[1ms", 1).as_bytes()).unwrap_err();
+    assert!(escape.to_string().chars().all(|c| c == '\n' || !c.is_control()), "{escape:?}");
+}
+
+#[test]
 fn measured_pressures_are_compared_and_never_called_a_proof() {
     let with = |measured: &str| reduced(&ARGON.replacen("\"clock\"", &format!("\"measured\": {measured},\n  \"clock\""), 1));
     let truth = reduced(ARGON).states.reflected.pressure.value / 1000.0;

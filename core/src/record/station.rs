@@ -169,5 +169,15 @@ fn uncertainties(stations: &[Station], flags: &mut Vec<Flag>) -> Result<(), Reco
         let wrong = format!("station {} has no uncertainty while {} has one, so they cannot be weighed", none.name, some.name);
         return Err(RecordError::new(ErrorKind::Value, &path, none.arrival.typed(), wrong, "state an uncertainty for every station"));
     }
+    for (at, station) in used() {
+        for (field, stated) in
+            [("arrival", station.time_uncertainty.is_some()), ("from_end_wall", station.from_end_wall.uncertainty().is_some())]
+        {
+            if !stated {
+                let text = format!("stations[{at}].{field} has no uncertainty: it counts as exact");
+                flags.push(Flag::new("missing-uncertainty", text));
+            }
+        }
+    }
     Ok(())
 }
