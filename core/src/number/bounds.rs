@@ -4,12 +4,12 @@ use super::dual::Dual;
 use super::enclosure::Enclosure;
 use super::known::Known;
 
-/// Halvings of one input, at most.
-const HALVINGS: u32 = 12;
+/// Halvings of all inputs together, at most; each gets the same share, so that no corner of the box uses up the work.
+const HALVINGS: u32 = 16;
 /// What a part may add to either end beyond values that are taken, relative to their range.
 const SURPLUS: f64 = 1.0 / 512.0;
-/// Boxes that are looked at, at most.
-const BOXES: u32 = 4096;
+/// Boxes that are looked at, at most: the smallest parts and all that they were halved from.
+const BOXES: u32 = 1 << (HALVINGS + 1);
 /// Boxes that wait: one for each halving on the way to the smallest.
 const WAITING: usize = 80;
 
@@ -25,13 +25,15 @@ struct Part<const N: usize> {
 /// `slopes` gives value and slopes over a box, `point` the enclosure at one corner. On a part of the box where every slope keeps its sign
 /// (proven by interval arithmetic) the function is monotone in each input, so two corners bound it as tightly as `point` does. Elsewhere the
 /// mean-value form value(middle) + slope·(box − middle) bounds it; if that exceeds the values known to be taken by more than 1/512 of their
-/// range, the part is halved along the input that matters most (at most 2¹² times each, 4096 parts in all).
+/// range, the part is halved along the input that matters most (at most 2¹⁶ parts in all).
 pub(crate) fn bounds<const N: usize>(
     inputs: [Known; N],
     slopes: impl Fn([Dual<Enclosure, N>; N]) -> Dual<Enclosure, N>,
     point: impl Fn([Known; N]) -> Enclosure,
 ) -> Enclosure {
     let whole = Part { inputs, halvings: [0; N] };
+    let free = inputs.iter().filter(|input| input.exact().is_none()).count().max(1);
+    let deepest = (HALVINGS / free as u32).max(2);
     let mut waiting = [whole; WAITING];
     let mut count = 1usize;
     let over = |part: &Part<N>| {
@@ -61,18 +63,18 @@ pub(crate) fn bounds<const N: usize>(
         if result.value().is_bounded() && taken.encloses(result.value()) {
             continue;
         }
-        let Some(worst) = worst_input(&part, &result) else {
+        if is_monotone(&part, &result) {
             taken = taken.hull(both_corners(&part, &result));
             continue;
-        };
+        }
         let centre = point(part.inputs.map(Known::middle));
         taken = taken.hull(centre);
         let bound = mean_value(&part, &result, centre);
         let surplus = Enclosure::from(taken.width() * SURPLUS);
         let accepted = taken.is_bounded() && (taken + surplus.hull(-surplus)).encloses(bound);
-        let room = count + 2 <= WAITING && looked_at < BOXES;
-        if !accepted && room && part.halvings.get(worst).is_some_and(|done| *done < HALVINGS) {
-            for (half, slot) in halves(&part, worst).into_iter().zip(waiting.iter_mut().skip(count)) {
+        let widest = if accepted || count + 2 > WAITING || looked_at >= BOXES { None } else { widest_input(&part, &result, deepest) };
+        if let Some(at) = widest {
+            for (half, slot) in halves(&part, at).into_iter().zip(waiting.iter_mut().skip(count)) {
                 *slot = half;
             }
             count += 2;
@@ -83,20 +85,27 @@ pub(crate) fn bounds<const N: usize>(
     range.hull(taken)
 }
 
-/// The input whose slope has no proven sign and contributes most to the width; `None` if the function is monotone in all.
-fn worst_input<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>) -> Option<usize> {
-    let mut worst = None;
+/// True if the slope in every input that is not exact keeps its sign.
+fn is_monotone<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>) -> bool {
+    let signed = |slope: Enclosure| slope.is_bounded() && (slope.low() >= 0.0 || slope.high() <= 0.0);
+    part.inputs.iter().zip(result.slopes()).all(|(input, slope)| input.exact().is_some() || signed(slope))
+}
+
+/// The input that contributes most to the width, of those that may still be halved. It need not be one whose slope has no sign: the slopes are wide
+/// because the part is.
+fn widest_input<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, deepest: u32) -> Option<usize> {
+    let mut widest = None;
     let mut most = -1.0;
-    for (at, (input, slope)) in part.inputs.iter().zip(result.slopes()).enumerate() {
-        let signed = slope.is_bounded() && (slope.low() >= 0.0 || slope.high() <= 0.0);
-        if input.exact().is_none() && !signed {
-            let weight = slope.low().abs().max(slope.high().abs()) * input.enclosure().width();
-            if weight > most || weight.is_nan() {
-                (worst, most) = (Some(at), weight);
-            }
+    let inputs = part.inputs.iter().zip(part.halvings).zip(result.slopes()).enumerate();
+    for (at, ((input, halvings), slope)) in inputs.filter(|(_, ((input, halvings), _))| input.exact().is_none() && *halvings < deepest) {
+        let own = slope.low().abs().max(slope.high().abs()) * input.enclosure().width();
+        // A slope that is not bounded says nothing: then the input that was halved least.
+        let contribution = if own.is_finite() { own } else { f64::MAX / f64::from(1 + halvings) };
+        if contribution > most {
+            (widest, most) = (Some(at), contribution);
         }
     }
-    worst
+    widest
 }
 
 /// Both halves of a part along one input.
@@ -123,7 +132,8 @@ fn mean_value<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, centr
             value = value + slope * (whole - Enclosure::from(whole.middle()));
         }
     }
-    value.intersection(result.value()).unwrap_or(value)
+    let plain = result.value();
+    if value.is_bounded() { value.intersection(plain).filter(|both| both.is_proven()).unwrap_or(value) } else { plain }
 }
 
 #[cfg(test)]

@@ -10,7 +10,7 @@ use super::format::significant;
 use super::report::Report;
 use super::shot::Shot;
 use crate::shock::Output;
-use crate::shot::{LEVEL_TWO_SIGMA, MonteCarlo, MonteCarloSettings, RECOMMENDED_BLOCK, Reduction, Stop, validate_linear};
+use crate::shot::{LEVEL_TWO_SIGMA, MonteCarlo, MonteCarloSettings, Progress, RECOMMENDED_BLOCK, Reduction, Stop, validate_linear};
 
 /// Whole numbers up to this are kept by every reader of JSON.
 const LARGEST_SEED: u64 = 1 << 53;
@@ -38,19 +38,42 @@ impl Shot {
     /// # Ok::<(), endwall::record::RecordError>(())
     /// ```
     pub fn reduce_checked(&self, seed: u64) -> Result<Report, RecordError> {
+        self.reduce_checked_with(seed, &mut |_| true)
+    }
+
+    /// [`reduce_checked`](Self::reduce_checked), telling after each block of trials how far it has got. A callback that returns `false` ends
+    /// the run there: the flag then says that the result has not settled.
+    ///
+    /// # Errors
+    /// As for [`reduce_checked`](Self::reduce_checked).
+    ///
+    /// ```
+    /// # let file = r#"{ "record": "shot/1", "gas": { "heat_capacity_ratio": "7/5", "molar_mass": "28.9652 g/mol" },
+    /// #   "fill": { "pressure": "100.0 ± 0.1 kPa", "temperature": "295.15 ± 0.5 K" }, "shock_speed": "620 ± 0.93 m/s" }"#;
+    /// let shot = endwall::record::Shot::read(file.as_bytes())?;
+    /// let mut trials = 0;
+    /// let watched = shot.reduce_checked_with(412, &mut |progress| {
+    ///     trials = progress.trials;
+    ///     true
+    /// })?;
+    /// assert!(trials > 0);
+    /// assert_eq!(watched, shot.reduce_checked(412)?);
+    /// # Ok::<(), endwall::record::RecordError>(())
+    /// ```
+    pub fn reduce_checked_with(&self, seed: u64, progress: &mut dyn FnMut(Progress) -> bool) -> Result<Report, RecordError> {
         if seed > LARGEST_SEED {
             let wrong = format!("the seed {seed} is larger than 2^53");
             return Err(RecordError::new(ErrorKind::Value, "", "", wrong, "take a smaller seed"));
         }
         let mut report = self.reduce()?;
         let (reduction, _) = self.reduction()?;
-        report.flags.push(check(&reduction, seed));
+        report.flags.push(check(&reduction, seed, progress));
         report.made_by.seed = Some(seed);
         Ok(report)
     }
 }
 
-fn check(reduction: &Reduction, seed: u64) -> Flag {
+fn check(reduction: &Reduction, seed: u64, progress: &mut dyn FnMut(Progress) -> bool) -> Flag {
     let not_run = |why: String| Flag::new("monte-carlo-not-run", format!("the uncertainties were not checked by a Monte Carlo run: {why}"));
     if OUTPUTS.iter().any(|(output, ..)| reduction.estimate(*output).standard_uncertainty.is_none_or(|standard| standard == 0.0)) {
         return not_run("an input states no uncertainty".into());
@@ -58,7 +81,7 @@ fn check(reduction: &Reduction, seed: u64) -> Flag {
     let settings = MonteCarloSettings { level: LEVEL_TWO_SIGMA, digits: DIGITS, tolerance: TOLERANCE, ..MonteCarloSettings::default() };
     let mut buffer = vec![0.0; RECOMMENDED_BLOCK * OUTPUTS.len()];
     let outputs = OUTPUTS.map(|(output, ..)| output);
-    match reduction.monte_carlo(&outputs, seed, &settings, &mut buffer, &mut |_| true) {
+    match reduction.monte_carlo(&outputs, seed, &settings, &mut buffer, progress) {
         Err(error) => not_run(format!("{error}")),
         Ok(run) => outcome(reduction, &run),
     }

@@ -47,7 +47,7 @@ enum Dependence {
     Unknown,
 }
 
-/// The direction with the entry; `None` where the output has a minimum.
+/// An output with the entry; `None` where the output has a minimum.
 pub(super) fn with_entry(output: Output) -> Option<Direction> {
     match in_strength(output) {
         Dependence::In(direction) => Some(direction),
@@ -70,9 +70,54 @@ pub(super) fn with_fill(entry: Entry, output: Output, input: FillInput, gamma_hi
         (None, Dependence::No) => Some(Up),
         (Some(direction), Dependence::No) | (None, Dependence::In(direction)) => Some(direction),
         (Some(a), Dependence::In(b)) if a == b => Some(a),
-        // u2 = 2(U² − a1²)/(GU) falls with the sound speed of the fill, against its own direction.
-        _ if (entry, output) == (Entry::ShockSpeed, Output::GasSpeed2) => direct.map(|own| own.times(Down)),
+        _ if with_strength(entry, output) => direct.map(|own| own.times(Down)),
         _ if opposed(entry, output, gamma_high) => direct,
+        _ => None,
+    }
+}
+
+/// True where an output follows the strength although the fill's own direction opposes it, at a fixed entry.
+///
+/// u2 = 2(U² − a1²)/(GU) falls with a1 at a given shock speed; p5 − p1 is p2 − p1 times the coefficient.
+fn with_strength(entry: Entry, output: Output) -> bool {
+    matches!((entry, output), (Entry::ShockSpeed, Output::GasSpeed2) | (Entry::PressureRise, Output::Step))
+}
+
+/// The direction with γ where the Mach number is given; `None` where it is not known or there is none.
+///
+/// At fixed M: γ/(γ+1) and (γ−1)/(γ+1) increase, so p2/p1, C/G and D/G do, and with (γ−1 + 2/M²)/(γ+1) also T2/T1 and T5/T1, which are
+/// products of these; 1/ρ2/ρ1 is the last of them; ∂(B/A)/∂γ has the sign of 2z²; √γ/(γ+1) decreases, thus u2; ((3−γ)/M + 2(γ−1)M)/(γ+1) has the
+/// slope 4(M − 1/M)/(γ+1)², ((γ−1)M + 2/M)/(γ+1) half of it; and a1 increases.
+pub(super) fn with_gamma(entry: Entry, output: Output) -> Option<Direction> {
+    if !matches!(entry, Entry::Mach | Entry::MachExcess) {
+        return None;
+    }
+    match output {
+        Output::ShockSpeed
+        | Output::SoundSpeed1
+        | Output::PressureRatio
+        | Output::PressureExcess
+        | Output::Pressure2
+        | Output::PressureRise
+        | Output::TemperatureRatio
+        | Output::TemperatureExcess
+        | Output::Temperature2
+        | Output::SoundSpeed2
+        | Output::MachBehind
+        | Output::ShockFrameSpeed2
+        | Output::ReflectedTemperatureRatio
+        | Output::ReflectedTemperatureExcess
+        | Output::Temperature5
+        | Output::SoundSpeed5
+        | Output::ReflectedSpeed
+        | Output::ReflectedSpeedRatio => Some(Up),
+        Output::DensityRatio
+        | Output::DensityExcess
+        | Output::Density2
+        | Output::GasSpeed2
+        | Output::GasSpeedRatio
+        | Output::ReflectedMach
+        | Output::ReflectedMachExcess => Some(Down),
         _ => None,
     }
 }
@@ -86,7 +131,8 @@ pub(super) fn with_fill(entry: Entry, output: Output, input: FillInput, gamma_hi
 /// *Gas speed given*: U = Gu/4 + √((Gu/4)² + a1²); a2² = a1² + (γ−1)(Uu − u²/2); `U_R` = (G/4 − 1)u + √((Gu/4)² + a2²);
 /// a5² = a2² + (γ−1)(u²/2 + u·`U_R`): each increases with a1², and temperatures with the sound speeds at fixed W.
 ///
-/// *p2 − p1 given*: p2 = p1 + Δ; *p5 − p1 given*: p5 likewise.
+/// *p2 − p1 given*: p2 = p1 + Δ; ρ2 ∝ (1+z)/(z(G + (γ−1)z)) at fixed Δ, which decreases with z. *p5 or p5 − p1 given*: p2 = p5/(C/B), where C/B
+/// increases with z; p2 − p1 is the step over the coefficient. *T5 given*: T2 = T5/(T5/T2), likewise.
 fn opposed(entry: Entry, output: Output, gamma_high: f64) -> bool {
     match (entry, output) {
         (Entry::ShockSpeed, Output::Temperature2 | Output::SoundSpeed2 | Output::ReflectedSpeed) => gamma_high <= 3.0,
@@ -103,8 +149,10 @@ fn opposed(entry: Entry, output: Output, gamma_high: f64) -> bool {
             | Output::SoundSpeed5
             | Output::ReflectedSpeed,
         )
-        | (Entry::PressureRise, Output::Pressure2)
-        | (Entry::Step, Output::Pressure5) => true,
+        | (Entry::PressureRise, Output::Density2)
+        | (Entry::Step | Entry::ReflectedPressure, Output::Pressure2)
+        | (Entry::Step, Output::PressureRise)
+        | (Entry::ReflectedTemperature, Output::Temperature2 | Output::SoundSpeed2) => true,
         _ => false,
     }
 }

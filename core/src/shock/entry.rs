@@ -121,7 +121,8 @@ pub enum Branch {
 }
 
 impl<S: Semifield> Problem<S> {
-    fn sound_speed_squared(&self) -> S {
+    /// a1².
+    pub(crate) fn sound_speed_squared(&self) -> S {
         sound_speed_squared(self.gamma, self.temperature, self.molar_mass)
     }
 }
@@ -145,6 +146,44 @@ impl<S: Signed> Problem<S> {
         }
     }
 
+    /// An output that the entry gives without a shock relation (p2 from p2/p1, p5 − p1 from p5 …), with each input used once: over a box the
+    /// enclosure arithmetic of it is the range. The fill's density is ρ1 = p1·W/(R·T1).
+    pub(crate) fn direct(&self, entry: Entry, output: Output) -> Option<S> {
+        let (value, one) = (self.entry, S::whole(1));
+        let (pressure, temperature) = (self.pressure, self.temperature);
+        Some(match (entry, output) {
+            (Entry::Mach, Output::MachExcess)
+            | (Entry::PressureRatio, Output::PressureExcess)
+            | (Entry::DensityRatio, Output::DensityExcess)
+            | (Entry::TemperatureRatio, Output::TemperatureExcess)
+            | (Entry::ReflectedPressureRatio, Output::ReflectedPressureExcess)
+            | (Entry::ReflectedTemperatureRatio, Output::ReflectedTemperatureExcess) => value - one,
+            (Entry::MachExcess, Output::Mach) => value + one,
+            (Entry::PressureRatio, Output::Pressure2) | (Entry::ReflectedPressureRatio, Output::Pressure5) => pressure * value,
+            (Entry::PressureRatio, Output::PressureRise) | (Entry::ReflectedPressureRatio, Output::Step) => pressure * (value - one),
+            (Entry::PressureRise, Output::Pressure2) | (Entry::Step, Output::Pressure5) => pressure + value,
+            (Entry::PressureRise, Output::PressureExcess)
+            | (Entry::Step, Output::ReflectedPressureExcess)
+            | (Entry::ReflectedPressure, Output::ReflectedPressureRatio) => value / pressure,
+            (Entry::PressureRise, Output::PressureRatio) | (Entry::Step, Output::ReflectedPressureRatio) => value / pressure + one,
+            (Entry::ReflectedPressure, Output::Step) => value - pressure,
+            (Entry::ReflectedPressure, Output::ReflectedPressureExcess) => value / pressure - one,
+            (Entry::DensityRatio, Output::Density2) => {
+                pressure * self.molar_mass / (crate::gas::molar_gas_constant::<S>() * temperature) * value
+            }
+            (Entry::TemperatureRatio, Output::Temperature2) | (Entry::ReflectedTemperatureRatio, Output::Temperature5) => {
+                temperature * value
+            }
+            (Entry::ReflectedTemperature, Output::ReflectedTemperatureRatio) => value / temperature,
+            (Entry::ReflectedTemperature, Output::SoundSpeed5) => sound_speed_squared(self.gamma, value, self.molar_mass).sqrt(),
+            (Entry::TemperatureRatio, Output::SoundSpeed2) | (Entry::ReflectedTemperatureRatio, Output::SoundSpeed5) => {
+                (self.sound_speed_squared() * value).sqrt()
+            }
+            (Entry::ReflectedTemperature, Output::ReflectedTemperatureExcess) => value / temperature - one,
+            _ => return None,
+        })
+    }
+
     /// The quadratic for z where the entry leads to one.
     fn quadratic(&self, entry: Entry, excess: S) -> Option<Quadratic<S>> {
         match entry {
@@ -155,6 +194,18 @@ impl<S: Signed> Problem<S> {
             Entry::ReflectedTemperatureRatio | Entry::ReflectedTemperature => {
                 Some(Quadratic::from_reflected_temperature_excess(self.gamma, excess))
             }
+            _ => None,
+        }
+    }
+
+    /// The direct relation for the excess that leads to a quadratic, in the form that stays narrow over a box.
+    pub(crate) fn forward_excess(entry: Entry, jump: &Jump<S>) -> Option<S> {
+        match entry {
+            Entry::TemperatureRatio => Some(jump.narrow_temperature_excess()),
+            Entry::ReflectedPressureRatio | Entry::ReflectedPressure | Entry::Step => {
+                Some(jump.pressure_excess() * jump.narrow_reflection_coefficient())
+            }
+            Entry::ReflectedTemperatureRatio | Entry::ReflectedTemperature => Some(jump.narrow_reflected_temperature_excess()),
             _ => None,
         }
     }
