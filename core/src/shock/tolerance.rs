@@ -6,7 +6,7 @@ use super::incident::Incident;
 use super::output::{Flow, Output};
 use super::relations::Jump;
 use crate::gas::{Fill, Gamma};
-use crate::number::{Dual, Enclosure, Known, Semifield, bounds};
+use crate::number::{Dual, Enclosure, Known, Positive, Semifield, bounds};
 
 impl Incident {
     /// The range of an output over the box of all inputs.
@@ -45,7 +45,7 @@ impl Incident {
         slopes: impl Fn([Dual<Enclosure, 5>; 5]) -> Dual<Enclosure, 5>,
         point: impl Fn(&Self) -> Enclosure,
     ) -> Enclosure {
-        let [value, gamma, pressure, temperature, molar_mass] = self.inputs();
+        let [value, gamma, pressure, temperature, molar_mass] = self.gathered(output);
         let gamma_high = self.fill().gas().heat_capacity_ratio().enclosure().high();
         let fill = |input| with_fill(self.entry().0, output, input, gamma_high);
         let ends = |upper: bool| {
@@ -61,6 +61,18 @@ impl Incident {
         };
         let (lower, upper) = (ends(false), ends(true));
         Enclosure::ordered(lower.low(), upper.high()).marked(lower.quality().max(upper.quality()))
+    }
+
+    /// The inputs; where an output with a minimum knows a given speed and the fill only by v²·W/T1, all three tolerances as one, of the speed.
+    fn gathered(&self, output: Output) -> [Known; 5] {
+        let [value, gamma, pressure, temperature, molar_mass] = self.inputs();
+        if output != Output::ReflectedSpeedRatio || !matches!(self.entry().0, Entry::ShockSpeed | Entry::GasSpeed) {
+            return [value, gamma, pressure, temperature, molar_mass];
+        }
+        let (middle_t, middle_w) = (temperature.middle(), molar_mass.middle());
+        let mass = molar_mass.enclosure() / middle_w.enclosure();
+        let heat = middle_t.enclosure() / temperature.enclosure();
+        [Known::Within(value.enclosure() * (mass * heat).sqrt()), gamma, pressure, middle_t, middle_w]
     }
 
     /// The problem and z over a box of inputs.
