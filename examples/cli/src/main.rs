@@ -1,1 +1,57 @@
-fn main() {}
+//! The `endwall` command: reduces record files, looks at single shocks, prints tables.
+//!
+//! Exit codes: 0 for a result, with or without flags; 2 where something is refused, with the reason on standard error.
+
+mod failure;
+mod output;
+mod progress;
+mod reduce;
+mod states;
+mod table;
+
+use std::io::{Write, stderr};
+use std::process::ExitCode;
+
+use clap::{Parser, Subcommand};
+
+use failure::Failure;
+
+/// The gas behind the reflected shock at the end wall of a shock tube.
+#[derive(Parser)]
+#[command(
+    name = "endwall",
+    version,
+    arg_required_else_help = true,
+    after_help = "Pressures are absolute unless marked (g). Write quantities with their unit and in quotes: \"8.000 kPa\", \"23.0 degC\".\n\
+        A refused input ends with exit code 2 and says what would be right. Doubts about a result are flags; they stand in the output.\n\
+        For screening only: no number printed here authorises a shot."
+)]
+struct Arguments {
+    #[command(subcommand)]
+    task: Task,
+}
+
+// Each task describes itself where its arguments are.
+#[derive(Subcommand)]
+#[expect(clippy::large_enum_variant, reason = "there is one of them")]
+enum Task {
+    Reduce(reduce::Arguments),
+    States(states::Arguments),
+    Table(table::Arguments),
+}
+
+fn main() -> ExitCode {
+    let done = match Arguments::parse().task {
+        Task::Reduce(arguments) => reduce::run(&arguments),
+        Task::States(arguments) => states::run(&arguments),
+        Task::Table(arguments) => table::run(&arguments),
+    };
+    match done {
+        Ok(()) => ExitCode::SUCCESS,
+        Err(failure) => {
+            // Where nobody listens, the exit code has to do.
+            let _ = writeln!(stderr(), "endwall: {failure}");
+            ExitCode::from(Failure::EXIT_CODE)
+        }
+    }
+}

@@ -1,0 +1,117 @@
+//! What is computed: the object that `--json` prints.
+
+use endwall::number::{Enclosure, Semifield};
+use endwall::record::{Flag, Incident, Reflected, ReportQuantity, ReportState, States};
+use endwall::shock::{Output, WallReflection};
+use serde::Serialize;
+
+use super::input::Input;
+use crate::failure::Failure;
+
+/// The answer, laid out like the report of a shot as far as it goes. Without measurements there are no uncertainties: they are null.
+#[derive(Serialize)]
+pub struct Answer {
+    /// The incident shock.
+    pub incident: Incident,
+    /// States 1, 2 and 5.
+    pub states: States,
+    /// The reflected shock.
+    pub reflected: Reflected,
+    /// p5 − p1, Pa.
+    pub step: ReportQuantity,
+    /// (p5 − p1)/(p2 − p1).
+    pub reflected_pressure_coefficient: ReportQuantity,
+    /// What the reader must know.
+    pub flags: Vec<Flag>,
+    /// How it came about.
+    pub made_by: MadeBy,
+}
+
+/// How the answer came about.
+#[derive(Serialize)]
+pub struct MadeBy {
+    version: &'static str,
+    gas_data: &'static str,
+}
+
+impl Answer {
+    /// Computes it.
+    pub fn new(input: &Input) -> Result<Self, Failure> {
+        let shock = &input.incident;
+        let wall = input.reflection()?;
+        let output = |output, unit| quantity(shock.nearest(output), shock.output(output), unit);
+        let state = |values: [Output; 5]| {
+            let [pressure, temperature, density, sound_speed, gas_speed] = values;
+            ReportState {
+                pressure: output(pressure, "Pa"),
+                temperature: output(temperature, "K"),
+                density: output(density, "kg/m3"),
+                sound_speed: output(sound_speed, "m/s"),
+                gas_speed: output(gas_speed, "m/s"),
+            }
+        };
+        let fill = shock.state_1();
+        let at_rest = || quantity(0.0, Enclosure::whole(0), "m/s");
+        let speed = shock.nearest(Output::ShockSpeed);
+        Ok(Self {
+            incident: Incident { speed: output(Output::ShockSpeed, "m/s"), mach: output(Output::Mach, "1"), attenuation: None },
+            states: States {
+                fill: ReportState {
+                    pressure: quantity(shock.fill().pressure().nominal(), fill.pressure, "Pa"),
+                    temperature: quantity(shock.fill().temperature().nominal(), fill.temperature, "K"),
+                    density: output(Output::Density1, "kg/m3"),
+                    sound_speed: output(Output::SoundSpeed1, "m/s"),
+                    gas_speed: at_rest(),
+                },
+                incident: state([Output::Pressure2, Output::Temperature2, Output::Density2, Output::SoundSpeed2, Output::GasSpeed2]),
+                reflected: match &wall {
+                    Some(wall) => behind(wall),
+                    None => ReportState {
+                        gas_speed: at_rest(),
+                        ..state([Output::Pressure5, Output::Temperature5, Output::Density5, Output::SoundSpeed5, Output::GasSpeed2])
+                    },
+                },
+            },
+            reflected: match &wall {
+                Some(wall) => Reflected { speed: middle(wall.front_speed, "m/s"), mach: middle(wall.mach, "1") },
+                None => Reflected { speed: output(Output::ReflectedSpeed, "m/s"), mach: output(Output::ReflectedMach, "1") },
+            },
+            step: match &wall {
+                Some(wall) => middle(wall.state.pressure - fill.pressure, "Pa"),
+                None => output(Output::Step, "Pa"),
+            },
+            reflected_pressure_coefficient: match &wall {
+                Some(wall) => middle((wall.state.pressure - fill.pressure) / shock.output(Output::PressureRise), "1"),
+                None => output(Output::ReflectionCoefficient, "1"),
+            },
+            flags: input.flags(speed),
+            made_by: MadeBy { version: env!("CARGO_PKG_VERSION"), gas_data: input.gas_data },
+        })
+    }
+
+    /// The object as text.
+    pub fn to_json(&self) -> Result<String, Failure> {
+        serde_json::to_string_pretty(self).map_err(|error| Failure::option("json", "the answer cannot be written", "", error))
+    }
+}
+
+/// The state at a wall that moves.
+fn behind(wall: &WallReflection) -> ReportState {
+    let state = &wall.state;
+    ReportState {
+        pressure: middle(state.pressure, "Pa"),
+        temperature: middle(state.temperature, "K"),
+        density: middle(state.density, "kg/m3"),
+        sound_speed: middle(state.sound_speed, "m/s"),
+        gas_speed: middle(state.gas_speed, "m/s"),
+    }
+}
+
+fn middle(bounds: Enclosure, unit: &'static str) -> ReportQuantity {
+    quantity(bounds.middle(), bounds, unit)
+}
+
+fn quantity(value: f64, bounds: Enclosure, unit: &'static str) -> ReportQuantity {
+    let proven = bounds.is_proven().then(|| [bounds.low(), bounds.high()]);
+    ReportQuantity { value, unit, proven, standard_uncertainty: None, expanded: None, coverage_factor: None }
+}
