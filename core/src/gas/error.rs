@@ -48,6 +48,10 @@ pub enum Parameter {
     WallImpedance,
     /// Speed of the gas ahead of a shock.
     UpstreamSpeed,
+    /// Temperature T2 behind the incident shock.
+    Temperature2,
+    /// Lowest temperature for which the heat capacities of all species are known.
+    DataRange,
 }
 
 impl Parameter {
@@ -75,6 +79,8 @@ impl Parameter {
             Self::WallSpeed => "wall velocity",
             Self::WallImpedance => "acoustic impedance of the wall",
             Self::UpstreamSpeed => "gas speed ahead of the shock",
+            Self::Temperature2 => "temperature T2",
+            Self::DataRange => "lowest temperature with data for every species",
         }
     }
 
@@ -83,7 +89,7 @@ impl Parameter {
         match self {
             Self::MolarMass => " kg/mol",
             Self::FillPressure | Self::PressureRise | Self::ReflectedPressure | Self::Step => " Pa",
-            Self::FillTemperature | Self::ReflectedTemperature => " K",
+            Self::FillTemperature | Self::Temperature2 | Self::ReflectedTemperature | Self::DataRange => " K",
             Self::ShockSpeed | Self::GasSpeed | Self::WallSpeed | Self::UpstreamSpeed => " m/s",
             Self::WallImpedance => " Pa s/m",
             _ => "",
@@ -109,6 +115,12 @@ pub enum Rule {
     SumToOne(f64),
     /// It has more digits than exact arithmetic holds (38).
     Digits,
+    /// The heat capacity is known between these two temperatures only, K; nothing is extrapolated.
+    DataRange(f64, f64),
+    /// It heats the gas beyond the temperatures between which its heat capacity is known, K.
+    HeatsBeyondData(f64, f64),
+    /// The heat capacities of the species change their polynomials at too many temperatures.
+    Ranges,
 }
 
 /// A refused input.
@@ -137,6 +149,18 @@ impl fmt::Display for InputError {
                 write!(f, "must be greater than the sound speed of the fill, {sound}{unit}: a slower wave is no shock")
             }
             Rule::SumToOne(sum) => write!(f, "does not fit: the mole fractions must sum to 1, but sum to {sum}"),
+            Rule::DataRange(low, high) => {
+                write!(
+                    f,
+                    "lies outside the data of this gas, {low} K to {high} K: its heat capacity is not known there and is not extrapolated"
+                )
+            }
+            Rule::HeatsBeyondData(low, high) => {
+                write!(f, "takes the gas outside its data, {low} K to {high} K: its heat capacity is not known there and is not extrapolated")
+            }
+            Rule::Ranges => {
+                write!(f, "begins more ranges than a mixture can hold: the species change their polynomials at too many temperatures")
+            }
             Rule::Digits => write!(f, "has too many digits: at most 38 are kept exactly"),
         }
     }

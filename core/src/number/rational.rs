@@ -211,6 +211,16 @@ impl Rational {
         }
     }
 
+    /// The integer, if it is one that fits.
+    pub fn to_i64(self) -> Option<i64> {
+        let shift = u32::try_from(self.exponent).ok()?;
+        if self.denominator != 1 || shift > self.numerator.leading_zeros() {
+            return None;
+        }
+        let magnitude = i128::try_from(self.numerator.checked_shl(shift).unwrap_or(0)).ok()?;
+        i64::try_from(if self.negative { -magnitude } else { magnitude }).ok()
+    }
+
     /// The nearest double, ties to even; infinite beyond the range of a double.
     pub fn to_f64(self) -> f64 {
         let magnitude = if self.denominator == 0 {

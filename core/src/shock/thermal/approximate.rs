@@ -1,0 +1,68 @@
+//! The plain solution, for f64 and f32.
+
+use super::stage::{Stage, residual, residual_slope};
+use crate::gas::HeatCapacity;
+use crate::number::Elementary;
+
+/// Steps, at most: a bracketed Newton iteration takes 4 to 8.
+pub(super) const STEPS: u32 = 80;
+
+/// A compression that solves the equation of the stage to the accuracy of the kind of number, the range of the temperature behind, and the number of
+/// steps taken; `None` where the temperature behind leaves the data.
+///
+/// Newton's iteration inside a bracket, which is halved where a step would leave it or the temperature leaves the data. `start` is the answer for
+/// constant heat capacity.
+pub(super) fn approximate<S: Elementary + Into<f64>>(
+    stage: &impl Stage<S>,
+    heat_capacity: &HeatCapacity<S>,
+    from: usize,
+    temperature: S,
+    start: S,
+) -> Option<(S, usize, u32)> {
+    let (coldest, hottest) = heat_capacity.range();
+    let (one, two) = (S::whole(1), S::whole(2));
+    let (mut low, mut high) = (S::whole(0), one);
+    let mut e = start;
+    // Below this a step no longer matters: Newton's next one would be its square.
+    let small = {
+        let unit: f64 = ((one + S::whole(1) / S::whole(1 << 30)) - one).into();
+        if unit > 0.0 { 1e-8 } else { 1e-4 }
+    };
+    for step in 1..=STEPS {
+        let (below, at, above): (f64, f64, f64) = (low.into(), e.into(), high.into());
+        if !(at > below && at < above) {
+            e = (low + high) / two;
+        }
+        let excess = stage.temperature_excess(e);
+        let behind = temperature + temperature * excess;
+        let kelvin: f64 = behind.into();
+        if kelvin > hottest || kelvin < coldest {
+            // Too hot for the data is too little compression, too cold too much.
+            (low, high) = if kelvin > hottest { (e, high) } else { (low, e) };
+            e = (low + high) / two;
+            continue;
+        }
+        let to = heat_capacity.index_at(kelvin);
+        let mean = heat_capacity.mean(from, temperature, excess, to);
+        let value = residual(stage, e, mean);
+        let own: f64 = excess.into();
+        let mean_slope = if own.abs() > 1e-3 {
+            (heat_capacity.value(to, behind) - mean) / excess
+        } else {
+            heat_capacity.scaled_slope(from, temperature) / two
+        };
+        let slope = residual_slope(stage, e, mean, mean_slope);
+        let sign: f64 = value.into();
+        if sign == 0.0 {
+            return Some((e, to, step));
+        }
+        (low, high) = if sign > 0.0 { (e, high) } else { (low, e) };
+        let next = e - value / slope;
+        let (moved, size): (f64, f64) = ((next - e).into(), next.into());
+        if moved.abs() <= small * size {
+            return Some((next, to, step));
+        }
+        e = next;
+    }
+    None
+}

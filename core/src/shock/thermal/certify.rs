@@ -1,0 +1,130 @@
+//! The proof of a compression: existence and uniqueness, and an enclosure far narrower than a double.
+
+use super::ThermalError;
+use super::stage::{Stage, residual, residual_slope};
+use crate::gas::HeatCapacity;
+use crate::number::{Ball, Enclosure, Semifield};
+
+/// Newton steps with proof, at most.
+const STEPS: u32 = 3;
+/// A compression that is known this well, relative, gives outputs of one or two units in the last place.
+const NARROW: f64 = 1e-21;
+
+/// A proven compression.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Root {
+    pub compression: Ball,
+    /// The range whose polynomial gave it.
+    pub to: usize,
+}
+
+/// A shock into gas of a temperature, by its stage and the heat capacity, in balls.
+pub(super) struct Problem<'c, T: Stage<Ball>> {
+    pub stage: T,
+    pub heat_capacity: &'c HeatCapacity<Ball>,
+    pub from: usize,
+    pub temperature: Ball,
+}
+
+impl<T: Stage<Ball>> Problem<'_, T> {
+    /// Interval Newton from an approximate root, with the polynomial of range `to`, extended beyond its ends where need be: ε − F(ε)/F′(E), where E
+    /// is an interval about ε. If the result lies inside E, it holds the only root in E.
+    pub(super) fn newton(&self, approximate: f64, to: usize) -> Option<Ball> {
+        let mut e = approximate;
+        let mut wanted = 0.0;
+        for step in 0..STEPS {
+            let at = Ball::from(e);
+            let excess = self.stage.temperature_excess(at);
+            let mean = self.heat_capacity.mean(self.from, self.temperature, excess, to);
+            let value = residual(&self.stage, at, mean);
+            // First 2⁻⁴⁶, later wide enough for what the step before found.
+            let reach = (e.abs() * f64::from_bits((1023 - 46) << 52)).max(wanted);
+            let around = at.widened(reach);
+            let over = self.stage.temperature_excess(around);
+            let behind = self.temperature + self.temperature * over;
+            let c = self.heat_capacity.value(to, behind);
+            // c̄ over E from c̄ at ε: the integral grows by c times the step. For weak shocks that loses too much.
+            let mean_over = if excess.nearest().abs() > 1e-3 {
+                (mean * excess + c * (over - excess)) / over
+            } else {
+                self.heat_capacity.mean(self.from, self.temperature, over, to)
+            };
+            let slope = residual_slope(&self.stage, around, mean_over, (c - mean_over) / over);
+            let found = at - value / slope;
+            if around.contains(found) && (found.radius() <= NARROW * e.abs() || step + 1 == STEPS) {
+                return Some(found);
+            }
+            wanted = 4.0 * (found.nearest() - e).abs() + 4.0 * found.radius();
+            if !(wanted < 0.1 * e.abs()) {
+                return None;
+            }
+            e = found.nearest();
+        }
+        None
+    }
+
+    /// The temperature behind.
+    pub(super) fn behind(&self, compression: Ball) -> Ball {
+        self.temperature + self.temperature * self.stage.temperature_excess(compression)
+    }
+
+    /// The roots: one, or where the temperature behind is so near a joint of two polynomials that the jump of the enthalpy decides, the root of
+    /// either polynomial: the model's answer lies in the hull of both.
+    ///
+    /// Existence is by interval Newton. Uniqueness: between joints the energy that the gas behind lacks is monotone in ε where it can vanish
+    /// (derived in [`how_it_is_proven`](crate::how_it_is_proven)), so it suffices that its sign on both sides of every joint is the one of the side of the root.
+    pub(super) fn roots(&self, approximate: f64, to: usize) -> Result<[Option<Root>; 2], ThermalError> {
+        let missing = || ThermalError::Existence { temperature: self.behind(Ball::from(approximate)).nearest() };
+        let compression = self.newton(approximate, to).ok_or_else(missing)?;
+        let first = Root { compression, to };
+        let mut second = None;
+        for (index, joint) in self.heat_capacity.joints().enumerate() {
+            if !self.is_clear_of(index, joint, compression)? {
+                let other = if to == index { index + 1 } else { index };
+                let near = (self.behind(compression).nearest() - joint).abs() < 1.0 && (to == index || to == index + 1) && second.is_none();
+                let compression = if near { self.newton(compression.nearest(), other) } else { None };
+                let compression = compression.ok_or(ThermalError::Uniqueness { temperature: joint })?;
+                second = Some(Root { compression, to: other });
+            }
+        }
+        Ok([Some(first), second])
+    }
+
+    /// Whether the residual, with the polynomial below the joint and with the one above, has the sign that belongs to its side of the root, wherever
+    /// the temperature behind passes the joint.
+    fn is_clear_of(&self, below: usize, joint: f64, root: Ball) -> Result<bool, ThermalError> {
+        let excess = (Ball::from(joint) - self.temperature) / self.temperature;
+        let discriminant = self.stage.discriminant(excess);
+        if discriminant.is_certainly_negative() {
+            return Ok(true);
+        }
+        if !discriminant.is_certainly_positive() {
+            return Err(ThermalError::Uniqueness { temperature: joint });
+        }
+        let rises = [below, below + 1].map(|to| self.heat_capacity.rise(self.from, self.temperature, excess, to));
+        let one = Ball::whole(1);
+        for crossing in self.stage.compressions_at(excess).into_iter().flatten() {
+            if (-crossing).is_certainly_positive() || (crossing - one).is_certainly_positive() {
+                continue;
+            }
+            let before = (root - crossing).is_certainly_positive();
+            let after = (crossing - root).is_certainly_positive();
+            for rise in rises {
+                let value = self.stage.lacking(crossing, rise);
+                let at_start = crossing.magnitude() == 0.0 && value.magnitude() == 0.0;
+                if !(before && (value.is_certainly_positive() || at_start) || after && value.is_certainly_negative()) {
+                    return Ok(false);
+                }
+            }
+        }
+        Ok(true)
+    }
+}
+
+impl Ball {
+    /// True if the other ball lies inside this one.
+    fn contains(self, other: Self) -> bool {
+        let (own, theirs): (Enclosure, Enclosure) = (self.enclosure(), other.enclosure());
+        theirs.is_proven() && own.low() < theirs.low() && theirs.high() < own.high()
+    }
+}

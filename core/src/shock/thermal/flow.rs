@@ -1,0 +1,164 @@
+//! The outputs, from both compressions.
+
+use super::setting::Setting;
+use super::stage::{GivenSpeed, GivenSpeedChange, Stage};
+use crate::gas::molar_gas_constant;
+use crate::number::{Elementary, Signed};
+use crate::shock::{Output, mach_excess};
+
+/// A shock into a thermally perfect gas and its reflection, in one kind of number.
+///
+/// With m = U²/(R T1), ε and x compression 1 − ρ1/ρ2 and temperature excess T2/T1 − 1 of the incident shock, k = (u2 − V)²/(R T2), ε′ and x′ those of
+/// the reflected one, R for the gas:
+///
+/// > p2/p1 = 1 + mε, u2 = Uε, p5/p2 = 1 + k/ε′, `U_R` = (u2 − V)(1 − ε′)/ε′ − V, `M_R`² = k/(γ2 ε′²).
+///
+/// Source: conservation of mass, momentum and energy.
+#[derive(Clone, Copy, Debug)]
+pub struct ThermalFlow<S> {
+    pressure: S,
+    temperature: S,
+    density: S,
+    /// R T1, m²/s².
+    scale: S,
+    m: S,
+    m_excess: S,
+    compression: S,
+    excess: S,
+    /// u2 − V.
+    closing_speed: S,
+    wall_speed: S,
+    k: S,
+    reflected_compression: S,
+    reflected_excess: S,
+    /// `c_p`/R in the states 1, 2 and 5, as the states were computed.
+    heat_capacity: [S; 3],
+}
+
+/// Where the temperature behind each shock lies: ranges of the incident and of the reflected heat capacity.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Ranges {
+    /// Of T1, in the incident heat capacity.
+    pub first: usize,
+    /// Of T2, in the incident heat capacity.
+    pub second: usize,
+    /// Of T2, in the reflected heat capacity.
+    pub ahead: usize,
+    /// Of T5, in the reflected heat capacity.
+    pub fifth: usize,
+}
+
+/// γ = c/(c − 1).
+#[inline(always)]
+fn ratio<S: Signed>(heat_capacity: S) -> S {
+    heat_capacity / (heat_capacity - S::whole(1))
+}
+
+/// The stage of the reflected shock, and T2, for an incident shock of given compression.
+pub(super) fn reflected_stage<S: Elementary>(
+    setting: &Setting<S>,
+    incident: &GivenSpeed<S>,
+    ranges: Ranges,
+    compression: S,
+) -> (GivenSpeedChange<S>, S, S) {
+    let excess = incident.temperature_excess(compression);
+    let behind = setting.temperature + setting.temperature * excess;
+    let change = setting.closing_speed(incident.m, compression);
+    let k = change.squared() / (setting.scale() * (S::whole(1) + excess));
+    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, behind, change)
+}
+
+impl<S: Elementary> ThermalFlow<S> {
+    /// From both compressions.
+    pub(super) fn new(setting: &Setting<S>, incident: &GivenSpeed<S>, ranges: Ranges, compression: S, reflected_compression: S) -> Self {
+        let (reflected, behind, closing_speed) = reflected_stage(setting, incident, ranges, compression);
+        let reflected_excess = reflected.temperature_excess(reflected_compression);
+        let scale = setting.scale();
+        Self {
+            pressure: setting.pressure,
+            temperature: setting.temperature,
+            density: setting.pressure / scale,
+            scale,
+            m: incident.m,
+            m_excess: incident.m_excess,
+            compression,
+            excess: incident.temperature_excess(compression),
+            closing_speed,
+            wall_speed: setting.wall_speed,
+            k: reflected.k,
+            reflected_compression,
+            reflected_excess,
+            heat_capacity: [
+                setting.incident.value(ranges.first, setting.temperature),
+                setting.incident.value(ranges.second, behind),
+                setting.reflected.value(ranges.fifth, behind + behind * reflected_excess),
+            ],
+        }
+    }
+
+    /// R T1/W, m²/s².
+    pub(super) fn scale_of(temperature: S, molar_mass: S) -> S {
+        molar_gas_constant::<S>() * temperature / molar_mass
+    }
+}
+
+impl<S: Signed> ThermalFlow<S> {
+    /// The output. State 5 is the gas at the end wall, `ReflectedSpeed` in the laboratory, away from the wall.
+    pub fn evaluate(&self, output: Output) -> S {
+        let one = S::whole(1);
+        let [c1, c2, c5] = self.heat_capacity;
+        let (e, r) = (self.compression, self.reflected_compression);
+        let speed = || (self.m * self.scale).sqrt();
+        let sound_speed = || (ratio(c1) * self.scale).sqrt();
+        let pressure_excess = || self.m * e;
+        let rise = || self.k / r;
+        let reflected_excess = || pressure_excess() + (one + pressure_excess()) * rise();
+        let temperature_ratio = || (one + self.excess) * (one + self.reflected_excess);
+        let reflected_temperature_excess = || self.excess + self.reflected_excess * (one + self.excess);
+        let remaining = || (one - e) * (one - r);
+        let mach_squared_excess = || (self.m_excess * (c1 - one) - one) / c1;
+        let reflected_speed = || self.closing_speed * (one - r) / r - self.wall_speed;
+        match output {
+            Output::ShockSpeed => speed(),
+            Output::Mach => (self.m / ratio(c1)).sqrt(),
+            Output::MachExcess => mach_excess(mach_squared_excess()),
+            Output::Density1 => self.density,
+            Output::SoundSpeed1 => sound_speed(),
+            Output::PressureRatio => one + pressure_excess(),
+            Output::PressureExcess => pressure_excess(),
+            Output::Pressure2 => self.pressure * (one + pressure_excess()),
+            Output::PressureRise => self.pressure * pressure_excess(),
+            Output::DensityRatio => one / (one - e),
+            Output::DensityExcess => e / (one - e),
+            Output::Density2 => self.density / (one - e),
+            Output::TemperatureRatio => one + self.excess,
+            Output::TemperatureExcess => self.excess,
+            Output::Temperature2 => self.temperature * (one + self.excess),
+            Output::SoundSpeed2 => (ratio(c2) * self.scale * (one + self.excess)).sqrt(),
+            Output::GasSpeed2 => speed() * e,
+            Output::GasSpeedRatio => (self.m / ratio(c1)).sqrt() * e,
+            Output::MachBehind => (self.m / (ratio(c2) * (one + self.excess))).sqrt() * (one - e),
+            Output::ShockFrameSpeed2 => speed() * (one - e),
+            Output::ReflectedOverIncidentPressure => one + rise(),
+            Output::ReflectedPressureRatio => one + reflected_excess(),
+            Output::ReflectedPressureExcess => reflected_excess(),
+            Output::Pressure5 => self.pressure * (one + reflected_excess()),
+            Output::Step => self.pressure * reflected_excess(),
+            Output::ReflectionCoefficient => reflected_excess() / pressure_excess(),
+            Output::ReflectedDensityRatio => one / remaining(),
+            Output::ReflectedDensityExcess => (e + r * (one - e)) / remaining(),
+            Output::Density5 => self.density / remaining(),
+            Output::ReflectedTemperatureRatio => temperature_ratio(),
+            Output::ReflectedTemperatureExcess => reflected_temperature_excess(),
+            Output::Temperature5 => self.temperature * temperature_ratio(),
+            Output::SoundSpeed5 => (ratio(c5) * self.scale * temperature_ratio()).sqrt(),
+            Output::ReflectedSpeed => reflected_speed(),
+            Output::ReflectedSpeedRatio => reflected_speed() / sound_speed(),
+            Output::ReflectedMach => (self.k / ratio(c2)).sqrt() / r,
+            Output::ReflectedMachExcess => {
+                let square = r.squared() * ratio(c2);
+                mach_excess((self.k - square) / square)
+            }
+        }
+    }
+}

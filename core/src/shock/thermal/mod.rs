@@ -1,0 +1,13 @@
+//! Shocks into gas whose heat capacity depends on temperature.
+mod approximate;
+mod certify;
+mod error;
+mod flow;
+mod plain;
+mod setting;
+mod shock;
+mod stage;
+pub use error::ThermalError;
+pub use flow::ThermalFlow;
+pub use plain::PlainShock;
+pub use shock::{ThermalFill, ThermalShock};

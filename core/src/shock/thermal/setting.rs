@@ -1,0 +1,77 @@
+//! The fill with the heat capacities that hold across each shock, in one kind of number.
+
+use super::flow::{Ranges, ThermalFlow};
+use super::stage::GivenSpeed;
+use crate::gas::HeatCapacity;
+use crate::number::{Elementary, Semifield};
+
+/// What a shock runs into, and the wall that it meets.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Setting<S> {
+    /// p1, Pa.
+    pub pressure: S,
+    /// T1, K.
+    pub temperature: S,
+    /// W, kg/mol.
+    pub molar_mass: S,
+    /// V, m/s, along the incident direction.
+    pub wall_speed: S,
+    /// Across the incident shock.
+    pub incident: HeatCapacity<S>,
+    /// Across the reflected shock.
+    pub reflected: HeatCapacity<S>,
+    /// The range of T1 in the reflected heat capacity, where vibration is frozen behind the incident shock only: then state 2 carries less enthalpy than
+    /// the reflected heat capacity has at T2.
+    pub lagging: Option<usize>,
+}
+
+impl<S: Semifield> Setting<S> {
+    /// The same in another kind of number.
+    pub(super) fn map<T: Semifield>(&self, convert: impl Fn(S) -> T + Copy) -> Setting<T> {
+        Setting {
+            pressure: convert(self.pressure),
+            temperature: convert(self.temperature),
+            molar_mass: convert(self.molar_mass),
+            wall_speed: convert(self.wall_speed),
+            incident: self.incident.map(convert),
+            reflected: self.reflected.map(convert),
+            lagging: self.lagging,
+        }
+    }
+}
+
+impl<S: Elementary> Setting<S> {
+    /// R T1, m²/s², R for the gas.
+    pub(super) fn scale(&self) -> S {
+        ThermalFlow::scale_of(self.temperature, self.molar_mass)
+    }
+
+    /// The stage of an incident shock of this speed.
+    pub(super) fn at_speed(&self, speed: S) -> GivenSpeed<S> {
+        let scale = self.scale();
+        let square = speed.squared();
+        GivenSpeed { m: square / scale, m_excess: (square - scale) / scale }
+    }
+
+    /// The stage of an incident shock of this Mach number, given M − 1: m = γ1 M², γ1 = c1/(c1 − 1).
+    pub(super) fn at_mach_excess(&self, first: usize, mach_excess: S) -> GivenSpeed<S> {
+        let one = S::whole(1);
+        let c = self.incident.value(first, self.temperature);
+        let square_excess = mach_excess * (S::whole(2) + mach_excess);
+        GivenSpeed { m: c * (one + square_excess) / (c - one), m_excess: (c * square_excess + one) / (c - one) }
+    }
+
+    /// u2 − V.
+    pub(super) fn closing_speed(&self, m: S, compression: S) -> S {
+        (m * self.scale()).sqrt() * compression - self.wall_speed
+    }
+
+    /// Δ = (h(T2) − h2)/(R T2), h2 the enthalpy that state 2 carries.
+    pub(super) fn lag(&self, ranges: Ranges, excess: S) -> S {
+        self.lagging.map_or(S::whole(0), |first| {
+            let full = self.reflected.rise(first, self.temperature, excess, ranges.ahead);
+            let carried = self.incident.rise(ranges.first, self.temperature, excess, ranges.second);
+            (full - carried) / (S::whole(1) + excess)
+        })
+    }
+}
