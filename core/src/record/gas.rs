@@ -202,7 +202,8 @@ fn check_ratio(ratio: &Quantity, path: &str, reading: &mut Reading) -> Result<()
     if value == one_and_two_thirds {
         return Ok(());
     }
-    if (value.to_f64() - 5.0 / 3.0).abs() < 0.005 {
+    // From 1.66, cut off instead of rounded, to 1.67.
+    if (value.to_f64() - 5.0 / 3.0).abs() < 0.007 {
         return reading.ask(path, ratio.typed(), "was 5/3 meant? A rounded ratio moves every state");
     }
     if compare(value, one_and_two_thirds) == Ordering::Greater {
@@ -248,7 +249,12 @@ fn mixture(fields: Fields, path: &str, reading: &mut Reading, flags: &mut Vec<Fl
             return Err(fail("a fraction is zero or more", "correct the sign"));
         }
         if compare(fraction, Rational::ONE) == Ordering::Greater {
-            return Err(fail("a fraction is one at most", "was % meant? Write \"1.00 %\""));
+            let remedy = if quantity.unit().symbol().is_empty() {
+                "was % meant? Write it like \"1.00 %\""
+            } else {
+                "correct the number or the unit"
+            };
+            return Err(fail("a fraction is one at most", remedy));
         }
         if quantity.standard_uncertainty().is_some_and(|u| u > fraction.to_f64() && !fraction.is_zero()) {
             reading.ask(

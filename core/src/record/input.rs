@@ -81,7 +81,12 @@ impl Shot {
             _ => "stations",
         };
         let typed = self.entries.iter().find(|entry| entry.path == path).map_or("", |entry| entry.typed.as_str());
-        RecordError::new(ErrorKind::Value, path, typed, format!("{error}"), "")
+        let remedy = match path {
+            "shock_speed" => "check the digits of the speed, and the gas and the temperature of the fill",
+            "stations" => "check the units of distances and times, and the gas and the temperature of the fill",
+            _ => "correct it, or the inputs that it is compared with",
+        };
+        RecordError::new(ErrorKind::Value, path, typed, format!("{error}"), remedy)
     }
 
     /// The error of the fit with the names of the stations and the remedy.
@@ -111,7 +116,7 @@ impl Shot {
                 format!("{} has no uncertainty while others have one", name(station)),
                 "state an uncertainty for every station, or for none",
             ),
-            other => ("stations", format!("{other}"), ""),
+            other => ("stations", format!("{other}"), "correct the stations, or leave some out with \"use\": false and a reason"),
         };
         RecordError::new(ErrorKind::Value, path, "", wrong, remedy)
     }

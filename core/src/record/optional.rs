@@ -106,7 +106,11 @@ pub(super) fn doubt_temperature(temperature: &Quantity, path: &str, reading: &mu
             path,
             temperature.typed(),
             "a temperature is above 0 K",
-            format!("was degC meant instead of {symbol}?"),
+            if temperature.unit().has_offset() {
+                "check the sign and the unit".into()
+            } else {
+                format!("was degC meant instead of {symbol}?")
+            },
         ));
     }
     if kelvin < 100.0 {
@@ -118,10 +122,25 @@ pub(super) fn doubt_temperature(temperature: &Quantity, path: &str, reading: &mu
         return reading.ask(path, temperature.typed(), question);
     }
     if kelvin > 2000.0 {
-        return reading.ask(path, temperature.typed(), format!("{kelvin} K is no usual fill; was another unit meant?"));
+        return reading.ask(path, temperature.typed(), format!("{kelvin} K is no usual fill; was degC or another unit meant?"));
     }
     if temperature.unit().has_offset() && (273.0..=330.0).contains(&reading_typed) && matches!(symbol, "degC" | "°C") {
         return reading.ask(path, temperature.typed(), format!("{reading_typed} degC is {kelvin} K; was {reading_typed} K meant?"));
+    }
+    Ok(())
+}
+
+/// Asks about an uncertainty that leaves nothing of the value: mostly another unit was meant, and no linear propagation holds there.
+pub(super) fn doubt_uncertainty(
+    value: f64,
+    standard: Option<f64>,
+    typed: &str,
+    path: &str,
+    reading: &mut Reading,
+) -> Result<(), RecordError> {
+    if standard.is_some_and(|standard| standard > value / 2.0) {
+        let question = "the standard uncertainty is more than half of the value; are its digits and its unit right?";
+        return reading.ask(path, typed, question);
     }
     Ok(())
 }

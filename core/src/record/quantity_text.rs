@@ -254,8 +254,15 @@ fn read_unit(text: &str, typed: &str, wanted: Dimension) -> Result<Unit, Quantit
 /// Says what is strange behind the number: a common slip is named, otherwise the unit is unknown.
 fn unknown_unit(text: &str, typed: &str, wanted: Dimension) -> QuantityError {
     if let Some((before, _)) = typed.split_once('±').or_else(|| typed.split_once("+/-")) {
-        let wrong = format!("the unit {} stands before ±", before.trim());
-        return QuantityError::new(text, wrong, format!("write the unit once, at the end: \"{}\"", example(wanted)));
+        let wrong = match before.trim() {
+            "" => "± stands twice".to_string(),
+            unit => format!("the unit {unit} stands before ±"),
+        };
+        return QuantityError::new(
+            text,
+            wrong,
+            format!("write the uncertainty once and the unit once, at the end: \"{}\"", example(wanted)),
+        );
     }
     if typed.starts_with(|c: char| c.is_ascii_digit()) {
         return QuantityError::new(text, "a second number follows the first", "write digits without spaces, and ± before the uncertainty");

@@ -168,11 +168,9 @@ fn nearest<'k>(typed: &str, known: &[&'k str]) -> Option<&'k str> {
     let folded = fold(typed);
     let close = |candidate: &&&str| {
         let candidate = fold(candidate);
-        candidate == folded
-            || within_one_edit(&candidate, &folded)
-            || (folded.len() >= 3 && (candidate.starts_with(&folded) || folded.starts_with(&candidate)))
+        within_one_edit(&candidate, &folded) || (folded.len() >= 3 && (candidate.starts_with(&folded) || folded.starts_with(&candidate)))
     };
-    known.iter().find(close).copied()
+    known.iter().find(|candidate| fold(candidate) == folded).or_else(|| known.iter().find(close)).copied()
 }
 
 fn within_one_edit(a: &str, b: &str) -> bool {

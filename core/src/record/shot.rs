@@ -273,8 +273,11 @@ fn fill(fields: Fields, ambient: Option<&Quantity>, reading: &mut Reading, flags
             format!("a driven section is rarely filled to {pascals} Pa; was another unit meant?"),
         )?;
     }
+    optional::doubt_uncertainty(pascals, absolute.standard_uncertainty, pressure.typed(), "fill.pressure", reading)?;
     let temperature = inner.required_quantity(reading, "temperature", Dimension::Temperature, "296.2 ± 0.5 K")?;
     optional::doubt_temperature(&temperature, "fill.temperature", reading)?;
+    let kelvin = temperature.value().to_f64();
+    optional::doubt_uncertainty(kelvin, temperature.standard_uncertainty(), temperature.typed(), "fill.temperature", reading)?;
     if pressure.mark() == Mark::Gauge {
         let text = format!("fill.pressure was typed as gauge; with the ambient pressure it is {pascals} Pa absolute");
         flags.push(Flag::new("gauge-pressure", text));
@@ -328,6 +331,7 @@ fn speed(fields: Fields, reading: &mut Reading, flags: &mut Vec<Flag>) -> Result
             if !(100.0..=20_000.0).contains(&value) {
                 reading.ask("shock_speed", given.typed(), "no shock in a tube has this speed; is the unit right?")?;
             }
+            optional::doubt_uncertainty(value, given.standard_uncertainty(), given.typed(), "shock_speed", reading)?;
             if given.uncertainty().is_none() {
                 flags.push(missing_uncertainty("shock_speed"));
             }

@@ -171,7 +171,10 @@ fn mistakes_of_the_trade_are_refused() {
             ("296.2 ± 0.5 K", "80 K", "fill.temperature", "\"confirm\": [\"fill.temperature\"]"),
             ("296.2 ± 0.5 K", "296.2 °C", "fill.temperature", "was 296.2 K meant?"),
             ("296.2 ± 0.5 K", "-5 K", "fill.temperature", "above 0 K"),
-            ("296.2 ± 0.5 K", "2100 K", "fill.temperature", "no usual fill"),
+            ("296.2 ± 0.5 K", "2100 K", "fill.temperature", "no usual fill; was degC"),
+            // An uncertainty in another unit than the value.
+            ("8.000 ± 0.020 kPa", "8.000 ± 20 kPa", "fill.pressure", "more than half of the value"),
+            ("296.2 ± 0.5 K", "296.2 ± 200 K", "fill.temperature", "more than half of the value"),
             // A typed ratio.
             ("5/3", "1.67", "gas.heat_capacity_ratio", "was 5/3 meant?"),
             ("5/3", "1.667", "gas.heat_capacity_ratio", "was 5/3 meant?"),

@@ -7,6 +7,7 @@ use alloc::vec::Vec;
 use super::error::plain_character;
 use super::format::{shortest, significant, value_with_uncertainty};
 use super::hazard::CAUTIONS;
+use super::quantity::Mark;
 use super::report::{Fit, Report, ReportQuantity, ReportState};
 use super::shot::{Shot, Speed};
 use super::unit::Unit;
@@ -46,11 +47,16 @@ struct DisplayUnits {
     pressure: Option<Unit>,
 }
 
+/// The unit of the pressures of a shot.
+pub(super) fn pressure_unit(shot: &Shot) -> Option<Unit> {
+    let typed = shot.fill.pressure.unit();
+    let metric = matches!(typed.symbol(), "Pa" | "hPa" | "kPa" | "MPa");
+    if metric { Unit::find("kPa") } else { Some(typed) }
+}
+
 impl DisplayUnits {
     fn of(shot: &Shot) -> Self {
-        let typed = shot.fill.pressure.unit();
-        let metric = matches!(typed.symbol(), "Pa" | "hPa" | "kPa" | "MPa");
-        Self { pressure: if metric { Unit::find("kPa") } else { Some(typed) } }
+        Self { pressure: pressure_unit(shot) }
     }
 
     /// value ± U in display units.
@@ -87,7 +93,7 @@ fn result(page: &mut Page, report: &Report, units: DisplayUnits) {
         row(["Step p5 - p1", &units.show_with_factor(&report.step)]),
         row(["Incident shock speed", &units.show_with_factor(&report.incident.speed)]),
     ]);
-    page.paragraph("", "Behind ± stands the expanded uncertainty U = k times the combined standard uncertainty (JCGM 100). It covers the inputs stated in the record; it does not cover the choice of the model.");
+    page.paragraph("", "Pressures are absolute. Behind ± stands the expanded uncertainty U = k times the combined standard uncertainty (JCGM 100). It covers the inputs stated in the record; it does not cover the choice of the model.");
 }
 
 fn flags(page: &mut Page, report: &Report) {
@@ -115,7 +121,8 @@ fn input(page: &mut Page, shot: &Shot) {
                     let freedom = uncertainty.degrees_of_freedom.map_or(String::new(), |dof| format!(" (dof {dof})"));
                     format!("{}{unit}{freedom}", significant(uncertainty.standard, 3))
                 });
-                (format!("{}{unit}", shortest(quantity.value().to_f64())), spread)
+                let gauge = if quantity.mark() == Mark::Gauge { " (gauge)" } else { "" };
+                (format!("{}{unit}{gauge}", shortest(quantity.value().to_f64())), spread)
             }
         };
         rows.push(row([&entry.path, &entry.typed, &value, &spread]));
@@ -137,7 +144,8 @@ fn fit_section(page: &mut Page, fit: &Fit, report: &Report, shot: &Shot) {
             &format!("{:+.3} us", line.residual * 1e6),
             &line.standardised.map_or("no check".to_string(), |value| format!("{value:+.2}")),
             &without.map_or("-".to_string(), |left_out| format!("{} m/s", significant(left_out.speed, 6))),
-            &without.map_or("-".to_string(), |left_out| chi_squared(left_out.chi_squared)),
+            // With no degree of freedom left it is zero but for rounding.
+            &without.filter(|_| fit.degrees_of_freedom > 1).map_or("-".to_string(), |left_out| chi_squared(left_out.chi_squared)),
         ]));
     }
     page.table(&rows);
@@ -279,10 +287,12 @@ impl Page {
         self.line(&line);
     }
 
-    /// Columns as wide as their widest cell.
+    /// Columns as wide as their widest cell. The last cell of a row may be longer, so that notes do not push the numbers off the screen.
     fn table(&mut self, rows: &[Vec<String>]) {
         let columns = rows.iter().map(Vec::len).max().unwrap_or(0);
-        let width = |column: usize| rows.iter().filter_map(|row| row.get(column)).map(|cell| cell.chars().count()).max().unwrap_or(0);
+        let followed = |row: &[String], column: usize| row.iter().skip(column + 1).any(|cell| !cell.is_empty());
+        let in_column = |column: usize| rows.iter().filter(move |row| followed(row, column)).filter_map(move |row| row.get(column));
+        let width = |column: usize| in_column(column).map(|cell| cell.chars().count()).max().unwrap_or(0);
         let widths: Vec<usize> = (0..columns).map(width).collect();
         for row in rows {
             let mut line = String::new();

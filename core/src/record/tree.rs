@@ -129,7 +129,8 @@ pub(super) fn parse(bytes: &[u8]) -> Result<Node, RecordError> {
     let mut json = serde_json::Deserializer::from_str(text);
     let node: Node = serde_path_to_error::deserialize(&mut json).map_err(|error| {
         let path = error.path().to_string();
-        let path = if path == "." { "" } else { path.as_str() };
+        // Where the place has no name, it ends with a question mark.
+        let path = path.trim_end_matches(['.', '?']);
         fail(path, format!("the file is not valid JSON: {}", error.inner()), "check quotes, commas and braces at that place")
     })?;
     json.end().map_err(|error| fail("", format!("text follows the record: {error}"), "one file holds one record"))?;
@@ -193,6 +194,8 @@ mod tests {
         assert!(refused(b"").contains("empty"));
         assert!(refused(b"\xff{}").contains("byte 1"));
         assert!(refused(br#"{"a": {"b": [1, }"#).starts_with("a.b[1]: "));
+        assert!(refused(br#"{"a": 1,, "b": 2}"#).starts_with("the file is not valid JSON"));
+        assert!(refused(br#"{"a": {"b": 1,}}"#).starts_with("a: the file is not valid JSON"));
         assert!(refused(b"{}\n{}").contains("line 2"));
         assert!(refused(br#"{"a": {"b": 1, "b": 2}}"#).starts_with("a.b: the field is given twice"));
         assert!(refused(br#"{"a": [{"b": 1, "b": 2}]}"#).starts_with("a[0].b: "));

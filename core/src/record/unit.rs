@@ -286,6 +286,9 @@ pub(crate) fn guess(typed: &str, wanted: Dimension) -> Option<String> {
 
 /// The sentence that offers a guess, or the list of what is accepted.
 pub(crate) fn remedy(typed: &str, wanted: Dimension) -> String {
+    if wanted == Dimension::Ratio {
+        return "write the ratio without a unit, like 5/3 or 1.29".to_string();
+    }
     match guess(typed, wanted) {
         Some(meant) => format!("was {meant} meant? Accepted for {}: {}", wanted.name(), wanted.accepted()),
         None => format!("accepted for {}: {}", wanted.name(), wanted.accepted()),

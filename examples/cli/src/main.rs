@@ -1,6 +1,7 @@
 //! The `endwall` command: reduces record files, looks at single shocks, prints tables.
 //!
-//! Exit codes: 0 for a result, with or without flags; 2 where something is refused, with the reason on standard error.
+//! Exit codes: 0 for a result, with or without flags; 2 where the input is refused, 1 for any other failure such as a full disk, both with
+//! the reason on standard error.
 
 mod failure;
 mod output;
@@ -14,8 +15,6 @@ use std::process::ExitCode;
 
 use clap::{Parser, Subcommand};
 
-use failure::Failure;
-
 /// The gas behind the reflected shock at the end wall of a shock tube.
 #[derive(Parser)]
 #[command(
@@ -23,7 +22,8 @@ use failure::Failure;
     version,
     arg_required_else_help = true,
     after_help = "Pressures are absolute unless marked (g). Write quantities with their unit and in quotes: \"8.000 kPa\", \"23.0 degC\".\n\
-        A refused input ends with exit code 2 and says what would be right. Doubts about a result are flags; they stand in the output.\n\
+        A refused input ends with exit code 2 and says what would be right; any other failure ends with 1. Doubts about a result are flags:\n\
+        they stand in the output, and the exit code is 0.\n\
         For screening only: no number printed here authorises a shot."
 )]
 struct Arguments {
@@ -51,7 +51,7 @@ fn main() -> ExitCode {
         Err(failure) => {
             // Where nobody listens, the exit code has to do.
             let _ = writeln!(stderr(), "endwall: {failure}");
-            ExitCode::from(Failure::EXIT_CODE)
+            ExitCode::from(failure.exit_code())
         }
     }
 }

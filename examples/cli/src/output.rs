@@ -9,7 +9,7 @@ pub fn print(text: &str) -> Result<(), Failure> {
     let mut out = stdout().lock();
     let written = out.write_all(text.trim_end_matches('\n').as_bytes()).and_then(|()| out.write_all(b"\n")).and_then(|()| out.flush());
     match written {
-        Err(error) if error.kind() != ErrorKind::BrokenPipe => Err(Failure::file("standard output", "written", &error)),
+        Err(error) if error.kind() != ErrorKind::BrokenPipe => Err(Failure::unwritten("standard output", &error)),
         _ => Ok(()),
     }
 }

@@ -26,14 +26,23 @@ impl Bar {
 
     /// Draws how far the work has got, if it is time to. What cannot be drawn is not worth a failure.
     pub fn show(&mut self, done: u64, of: u64) {
-        if !self.terminal || self.started.elapsed() < PATIENCE || self.drawn.is_some_and(|drawn| drawn.elapsed() < INTERVAL) {
-            return;
+        if self.terminal && is_due(self.started.elapsed(), self.drawn.map(|drawn| drawn.elapsed())) {
+            self.drawn = Some(Instant::now());
+            let _ = write!(stderr(), "{}", drawing(self.label, done, of));
         }
-        self.drawn = Some(Instant::now());
-        let filled = (done.saturating_mul(LENGTH) / of.max(1)).min(LENGTH);
-        let bar: String = (0..LENGTH).map(|at| if at < filled { '=' } else { ' ' }).collect();
-        let _ = write!(stderr(), "\r{} [{bar}] {done} of at most {of}", self.label);
     }
+}
+
+/// Not in the first moment, and not too often.
+fn is_due(since_start: Duration, since_drawing: Option<Duration>) -> bool {
+    since_start >= PATIENCE && since_drawing.is_none_or(|since| since >= INTERVAL)
+}
+
+/// The line, over the one before.
+fn drawing(label: &str, done: u64, of: u64) -> String {
+    let filled = (done.saturating_mul(LENGTH) / of.max(1)).min(LENGTH);
+    let bar: String = (0..LENGTH).map(|at| if at < filled { '=' } else { ' ' }).collect();
+    format!("\r{label} [{bar}] {done} of at most {of}")
 }
 
 impl Drop for Bar {
@@ -42,5 +51,26 @@ impl Drop for Bar {
             // Back to the start of the line, and clear it.
             let _ = write!(stderr(), "\r\x1b[K");
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn short_work_shows_nothing() {
+        let millis = Duration::from_millis;
+        assert!(!is_due(millis(999), None));
+        assert!(is_due(millis(1000), None));
+        assert!(!is_due(millis(5000), Some(millis(99))));
+        assert!(is_due(millis(5000), Some(millis(100))));
+    }
+
+    #[test]
+    fn the_bar_fills() {
+        let filled = |done, of| drawing("rows", done, of).matches('=').count();
+        assert_eq!([filled(0, 10), filled(5, 10), filled(10, 10), filled(11, 10), filled(0, 0)], [0, 20, 40, 40, 0]);
+        assert!(drawing("rows", 5, 10).starts_with("\rrows [") && drawing("rows", 5, 10).ends_with("] 5 of at most 10"));
     }
 }

@@ -6,7 +6,9 @@ use std::fs;
 use clap::Args;
 use endwall::gas::{Fill, Gas, HeatCapacityRatio, InputError};
 use endwall::number::{Enclosure, Rational};
+use endwall::record::{ErrorKind, Shot};
 use endwall::shock::{Entry, Incident, Output};
+use serde_json::json;
 
 use crate::failure::Failure;
 use crate::output;
@@ -25,7 +27,7 @@ const LARGEST_MACH: i64 = 999;
 #[derive(Args)]
 pub struct Arguments {
     /// Heat capacity ratio: 5/3 for atoms, 7/5 for diatomic molecules at room temperature
-    #[arg(long, value_name = "RATIO")]
+    #[arg(long, value_name = "RATIO", allow_hyphen_values = true)]
     heat_capacity_ratio: String,
     /// First Mach number, above 1
     #[arg(long, value_name = "MACH", allow_hyphen_values = true)]
@@ -42,6 +44,9 @@ pub struct Arguments {
     /// Digits of each number
     #[arg(long, value_name = "N", default_value_t = 6, value_parser = clap::value_parser!(u8).range(1..=15))]
     digits: u8,
+    /// Answers "yes, I mean it" to the question about a doubtful value
+    #[arg(long, value_name = "OPTION", value_parser = ["heat-capacity-ratio"])]
+    confirm: Vec<String>,
 }
 
 const HEADER: [&str; 12] = ["M", "p2/p1", "T2/T1", "rho2/rho1", "u2/a1", "M2", "pt2/pt1", "M_R", "p5/p1", "T5/T1", "rho5/rho1", "U_R/a1"];
@@ -63,7 +68,7 @@ pub fn run(arguments: &Arguments) -> Result<(), Failure> {
     match arguments.csv.as_deref() {
         None => output::print(&text(arguments, rows)),
         Some("-") => output::print(&csv(&rows)),
-        Some(file) => fs::write(file, csv(&rows)).map_err(|error| Failure::file(file, "written", &error)),
+        Some(file) => fs::write(file, csv(&rows)).map_err(|error| Failure::unwritten(file, &error)),
     }
 }
 
@@ -76,6 +81,7 @@ fn rows(arguments: &Arguments) -> Result<Vec<Vec<String>>, Failure> {
         |error: InputError| Failure::option("heat-capacity-ratio", error, heat_capacity_ratio, "write a ratio like 5/3, 7/5 or 1.29");
     // No column depends on molar mass, pressure or temperature.
     let fill = HeatCapacityRatio::new(gamma).and_then(|gamma| Fill::new(Gas::new(gamma, 1.0)?, 1.0, 1.0)).map_err(refused)?;
+    doubt(arguments)?;
     let (first, last, difference) = (mach("from", from)?, mach("to", to)?, mach("step", step)?);
     if !exceeds(first, Rational::ONE) {
         return Err(Failure::option("from", "a Mach number of 1 or less has no shock", from, "begin above 1, for example at 1.1"));
@@ -91,6 +97,9 @@ fn rows(arguments: &Arguments) -> Result<Vec<Vec<String>>, Failure> {
         return Err(Failure::option("step", format!("the table has more than {MOST_ROWS} rows"), step, "take a larger step"));
     }
     let decimals = decimals(from).max(decimals(step));
+    let steps = last.checked_sub(first).and_then(|span| span.checked_div(difference));
+    // For the bar alone, so that a rounding error of the quotient does no harm.
+    let number = steps.map_or(MOST_ROWS, |steps| steps.to_f64() as u64 + 1);
     let mut rows = Vec::new();
     let mut bar = Bar::new("rows");
     let mut next = Some(first);
@@ -103,10 +112,27 @@ fn rows(arguments: &Arguments) -> Result<Vec<Vec<String>>, Failure> {
         row.push(printed(shock.total_pressure_ratio(), arguments.digits));
         row.extend(columns(REFLECTED));
         rows.push(row);
-        bar.show(rows.len() as u64, MOST_ROWS);
+        bar.show(rows.len() as u64, number);
         next = mach.checked_add(difference);
     }
     Ok(rows)
+}
+
+/// Asks about a ratio like 1.667 as the reader of records does, through a record that holds nothing else of interest.
+fn doubt(arguments: &Arguments) -> Result<(), Failure> {
+    let record = json!({
+        "record": "shot/1",
+        "gas": { "heat_capacity_ratio": arguments.heat_capacity_ratio, "molar_mass": "30 g/mol" },
+        "fill": { "pressure": "10 kPa", "temperature": "300 K" },
+        "shock_speed": "1000 m/s",
+    });
+    match Shot::read(record.to_string().as_bytes()) {
+        Err(error) if error.kind == ErrorKind::Doubtful && arguments.confirm.is_empty() => {
+            let remedy = "correct it, or state that it is right with --confirm heat-capacity-ratio";
+            Err(Failure::option("heat-capacity-ratio", error.wrong, &arguments.heat_capacity_ratio, remedy))
+        }
+        _ => Ok(()),
+    }
 }
 
 /// A Mach number or a step as an exact decimal, short enough that the doubles nearest to its multiples print as it was typed.

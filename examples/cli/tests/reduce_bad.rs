@@ -34,17 +34,27 @@ fn pressures() {
     refuse(PRESSURE, "8.000", &["fill.pressure", "8.000", "no unit", "kPa"]);
     refuse(PRESSURE, "8,000 kPa", &["fill.pressure", "8,000 kPa", "point"]);
     refuse(PRESSURE, "8.000 K", &["fill.pressure", "8.000 K", "a temperature", "kPa"]);
+    refuse(PRESSURE, "8.000 ± 20 kPa", &["fill.pressure", "8.000 ± 20 kPa", "more than half", "its unit", "\"confirm\""]);
+    refuse(PRESSURE, "8.000 ± 0.020 ± 0.010 kPa", &["fill.pressure", "± stands twice", "once"]);
     refuse(PRESSURE, "8.000 ± -0.020 kPa", &["fill.pressure", "negative", "zero or more"]);
 }
 
 #[test]
 fn temperatures() {
     refuse(TEMPERATURE, "23 ± 0.5 K", &["fill.temperature", "23 ± 0.5 K", "was 23 degC meant?", "\"confirm\": [\"fill.temperature\"]"]);
-    refuse(TEMPERATURE, "2300 K", &["fill.temperature", "2300 K", "another unit", "\"confirm\""]);
+    refuse(TEMPERATURE, "2300 K", &["fill.temperature", "2300 K", "was degC or another unit meant?", "\"confirm\""]);
+    for edge in ["100 K", "2000 K"] {
+        reduce(&changed(&by_speed(RATIO, "2000 m/s"), "296.2 ± 0.5 K", edge), &[]).good();
+    }
+    for beyond in ["99.99 K", "2000.1 K", "-174 degC"] {
+        let record = changed(&by_speed(RATIO, "2000 m/s"), "296.2 ± 0.5 K", beyond);
+        reduce(&record, &[]).refused(&["fill.temperature", beyond, "\"confirm\": [\"fill.temperature\"]"]);
+        reduce(&changed(&record, "\"record\"", "\"confirm\": [\"fill.temperature\"], \"record\""), &[]).good();
+    }
     refuse(TEMPERATURE, "296.2 degC", &["fill.temperature", "296.2 degC", "was 296.2 K meant?"]);
     refuse(TEMPERATURE, "0 K", &["fill.temperature", "0 K", "degC"]);
     refuse(TEMPERATURE, "-20 K", &["fill.temperature", "-20 K", "degC"]);
-    refuse(TEMPERATURE, "-300 degC", &["fill.temperature", "-300 degC", "above 0 K"]);
+    refuse(TEMPERATURE, "-300 degC", &["fill.temperature", "-300 degC", "above 0 K", "check the sign"]);
     refuse(TEMPERATURE, "296.2 C", &["fill.temperature", "296.2 C", "was degC meant?"]);
     let confirmed = changed(&changed(ARGON, TEMPERATURE, "23 ± 0.5 K"), "\"record\"", "\"confirm\": [\"fill.temperature\"], \"record\"");
     reduce(&confirmed, &[]).good();
@@ -57,12 +67,13 @@ fn gases() {
     let refuse_ratio = |ratio: &str, names: &[&str]| {
         reduce(&by_speed(&changed(RATIO, "5/3", ratio), "950 ± 1 m/s"), &[]).refused(names);
     };
-    for rounded in ["1.67", "1.667"] {
+    for rounded in ["1.66", "1.67", "1.667", "1.6667"] {
         refuse_ratio(rounded, &["gas.heat_capacity_ratio", rounded, "was 5/3 meant?", "\"confirm\""]);
     }
     for wrong in ["1", "0.9", "-5/3", "0", "3/5"] {
         refuse_ratio(wrong, &["gas.heat_capacity_ratio", wrong, "greater than one", "5/3"]);
     }
+    refuse_ratio("5:3", &["gas.heat_capacity_ratio", "5:3", "without a unit, like 5/3"]);
     refuse_ratio("4", &["gas.heat_capacity_ratio", "4", "above three"]);
     refuse_ratio("5/0", &["gas.heat_capacity_ratio", "5/0", "denominator"]);
     refuse("39.948 g/mol", "39.948 kg/mol", &["gas.molar_mass", "39.948 kg/mol", "was g/mol meant?"]);
@@ -70,7 +81,8 @@ fn gases() {
     let mixture = |gas: &str, names: &[&str]| reduce(&by_speed(gas, "950 ± 1 m/s"), &[]).refused(names);
     mixture(r#"{ "Ar": "90 %", "He": "5 %" }"#, &["gas", "sum to 0.95", "balance"]);
     mixture(r#"{ "Ar": "balance", "He": "balance" }"#, &["gas.He", "Ar is the balance"]);
-    mixture(r#"{ "Ar": "110 %", "He": "balance" }"#, &["gas.Ar", "110 %"]);
+    mixture(r#"{ "Ar": "110 %", "He": "balance" }"#, &["gas.Ar", "110 %", "correct the number"]);
+    mixture(r#"{ "Ar": "50", "He": "balance" }"#, &["gas.Ar", "50", "was % meant?"]);
     mixture(r#"{ "Ar": "-1 %", "He": "balance" }"#, &["gas.Ar", "-1 %", "sign"]);
     mixture(r#"{ "N2": "balance", "Ar": "1 %" }"#, &["gas.N2", "not available", "heat_capacity_ratio"]);
     mixture("{}", &["gas", "no gas is given", "5/3"]);
@@ -100,10 +112,19 @@ fn stations() {
 }
 
 #[test]
+fn more_stations_than_can_be_fitted() {
+    let one = |at: usize| format!(r#"{{ "name": "S{at}", "from_end_wall": "{} mm", "arrival": "{at} us" }}"#, 100 - at);
+    let stations: Vec<String> = (0..17).map(one).collect();
+    let record = changed(&by_speed(RATIO, "950 m/s"), "\"shock_speed\": \"950 m/s\"", &format!("\"stations\": [{}]", stations.join(",")));
+    reduce(&record, &[]).refused(&["stations", "17", "at most 16", "\"use\": false"]);
+}
+
+#[test]
 fn speeds() {
     for speed in ["300 ± 1 m/s", "320 m/s", "320.543130348547 m/s"] {
-        reduce(&by_speed(RATIO, speed), &[]).refused(&["shock_speed", speed, "sound speed", "320.543"]);
+        reduce(&by_speed(RATIO, speed), &[]).refused(&["shock_speed", speed, "sound speed", "320.543", "check the digits of the speed"]);
     }
+    reduce(&by_speed(RATIO, "950 ± 500 m/s"), &[]).refused(&["shock_speed", "950 ± 500 m/s", "more than half"]);
     reduce(&by_speed(RATIO, "-950 m/s"), &[]).refused(&["shock_speed", "-950 m/s", "greater than zero"]);
     reduce(&by_speed(RATIO, "0 m/s"), &[]).refused(&["shock_speed", "0 m/s", "greater than zero"]);
     reduce(&by_speed(RATIO, "9.5 m/s"), &[]).refused(&["shock_speed", "9.5 m/s", "is the unit right?"]);
@@ -148,6 +169,9 @@ fn files() {
     reduce(&" ".repeat((1 << 20) + 1), &[]).refused(&["bytes", "1048576"]);
     reduce(&"[".repeat(200_000), &[]).refused(&["not valid JSON"]);
     reduce(&changed(ARGON, "\"notes\": \"", &format!("\"notes\": \"{}", "x".repeat(1 << 20))), &[]).refused(&["bytes"]);
+    let comma = reduce(&changed(ARGON, "\"clock\"", ", \"clock\""), &[]);
+    assert!(!comma.err.contains('?'), "{}", comma.err);
+    comma.refused(&["not valid JSON", "line 13", "commas"]);
     refuse("\"shot/1\"", "\"shot/2\"", &["record", "shot/2", "shot/1"]);
     refuse("\"shot/1\"", "\"plan/1\"", &["record", "plan/1", "shot/1"]);
     endwall(&["reduce", "no such file.json"], b"").refused(&["no such file.json", "cannot be read"]);
@@ -166,6 +190,9 @@ fn an_endless_file_is_left_alone() {
 fn fields() {
     refuse("\"pressure\":", "\"presure\":", &["fill.presure", "unknown", "was \"pressure\" meant?"]);
     refuse("\"molar_mass\":", "\"molarmass\":", &["gas.molarmass", "was \"molar_mass\" meant?"]);
+    let measured = |field: &str| changed(ARGON, "\"clock\"", &format!("\"measured\": {{ \"{field}\": \"370 kPa\" }}, \"clock\""));
+    reduce(&measured("pressure5"), &[]).refused(&["measured.pressure5", "was \"pressure_5\" meant?"]);
+    reduce(&measured("Pressure-2"), &[]).refused(&["measured.Pressure-2", "was \"pressure_2\" meant?"]);
     refuse("\"clock\"", "\"colour\": 1, \"clock\"", &["colour", "unknown", "stations"]);
     refuse("\"clock\"", "\"name\": \"again\", \"clock\"", &["name", "again", "twice"]);
     refuse("\"pressure\":", "\"pressure\": \"1 kPa\", \"pressure\":", &["fill.pressure", "twice"]);

@@ -165,7 +165,16 @@ fn a_monte_carlo_run_repeats_and_tells_its_seed() {
     assert_eq!(seed(&["--json", "--monte-carlo", "--seed", "7"]), 7);
     assert!(reduce(ARGON, &["--monte-carlo", "--seed", "7"]).good().contains("seed 7"));
     let file = concat!(env!("CARGO_MANIFEST_DIR"), "/../records/argon-b0412.json");
-    endwall(&["reduce", "--monte-carlo", file], b"").good();
+    assert_eq!(seed(&["--json", "--monte-carlo", "500000", "--seed", "7"]), 7);
+    endwall(&["reduce", "--monte-carlo", "500000", file], b"").good();
+    // A number of trials may be left out, but a file is none.
+    endwall(&["reduce", "--monte-carlo", file], b"").refused(&["--monte-carlo", "argon-b0412.json", "FILE stands before"]);
+    for few in ["0", "1000", "19999"] {
+        reduce(ARGON, &["--monte-carlo", few]).refused(&[few, "too few", "20000"]);
+    }
+    // This shot has not settled after two blocks, and says so.
+    let short: Value = serde_json::from_str(&reduce(ARGON, &["--json", "--monte-carlo", "20000"]).good()).unwrap();
+    assert!(short["flags"].to_string().contains("20000 trials, which have not settled"), "{short}");
     reduce(ARGON, &["--seed", "7"]).refused(&["--monte-carlo"]);
     reduce(ARGON, &["--monte-carlo", "--seed", "-7"]).refused(&["-7"]);
     reduce(ARGON, &["--monte-carlo", "--seed", "18446744073709551615"]).refused(&["18446744073709551615", "2^53", "smaller"]);
@@ -199,6 +208,52 @@ fn doubts_about_a_result_are_flags_and_no_failure() {
     let question = changed(BY_SPEED, "296.2 ± 0.5 K", "80 ± 0.5 K");
     reduce(&question, &[]).refused(&["fill.temperature", "80 ± 0.5 K", "\"confirm\": [\"fill.temperature\"]"]);
     flagged(&changed(&question, "\"record\"", "\"confirm\": [\"fill.temperature\"], \"record\""), "confirmed");
+}
+
+#[test]
+fn a_gauge_pressure_is_marked_where_it_is_repeated() {
+    let gauge = changed(ARGON, "8.000 ± 0.020 kPa", "-0.2 ± 0.001 bar(g)");
+    let text = reduce(&changed(&gauge, "\"clock\"", "\"ambient\": \"1013 ± 1 mbar\", \"clock\""), &[]).good();
+    let line = text.lines().find(|line| line.starts_with("fill.pressure")).unwrap();
+    assert!(line.contains("-20000 Pa (gauge)"), "{line}");
+    assert!(text.contains("[gauge-pressure]") && text.contains("81300 Pa") && text.contains("Pressures are absolute."), "{text}");
+}
+
+#[test]
+fn notes_do_not_push_the_numbers_aside() {
+    let input = |record: &str| {
+        let text = reduce(record, &[]).good();
+        text.lines().find(|line| line.starts_with("fill.pressure")).unwrap().to_string()
+    };
+    let long = changed(ARGON, "Invented shot", &"long ".repeat(100));
+    assert_eq!(input(&long), input(ARGON));
+    assert!(input(ARGON).chars().count() < 96);
+}
+
+#[test]
+#[cfg(target_os = "linux")]
+fn a_full_disk_is_no_bad_input() {
+    use std::process::{Command, Stdio};
+    let full = || Stdio::from(std::fs::File::options().write(true).open("/dev/full").unwrap());
+    let file = concat!(env!("CARGO_MANIFEST_DIR"), "/../records/argon-b0412.json");
+    for arguments in [&["reduce", file][..], &["table", "--heat-capacity-ratio", "7/5", "--from", "2", "--to", "3", "--step", "1"]] {
+        let output = Command::new(env!("CARGO_BIN_EXE_endwall")).args(arguments).stdout(full()).stderr(Stdio::piped()).output().unwrap();
+        let error = String::from_utf8(output.stderr).unwrap();
+        assert_eq!(output.status.code(), Some(1), "{error}");
+        assert!(error.contains("standard output: cannot be written") && error.contains("space on the device"), "{error}");
+    }
+}
+
+#[test]
+#[cfg(target_os = "linux")]
+fn a_file_name_need_not_be_text() {
+    use std::os::unix::ffi::OsStringExt;
+    let name = std::ffi::OsString::from_vec(format!("endwall-{}-", std::process::id()).into_bytes().into_iter().chain([0xff]).collect());
+    let file = std::env::temp_dir().join(name);
+    std::fs::write(&file, ARGON).unwrap();
+    let output = std::process::Command::new(env!("CARGO_BIN_EXE_endwall")).arg("reduce").arg(&file).output().unwrap();
+    std::fs::remove_file(&file).unwrap();
+    assert_eq!(String::from_utf8(output.stdout).unwrap(), reduce(ARGON, &[]).good());
 }
 
 #[test]

@@ -95,7 +95,7 @@ fn a_file_is_written() {
     std::fs::remove_file(&file).unwrap();
     assert_eq!(written, table(&[&options[..], &["-"]].concat()).good());
     let nowhere = file.join("no such folder.csv");
-    table(&[&options[..], &[nowhere.to_str().unwrap()]].concat()).refused(&["no such folder.csv", "cannot be written"]);
+    table(&[&options[..], &[nowhere.to_str().unwrap()]].concat()).failed(1, &["no such folder.csv", "cannot be written"]);
 }
 
 #[test]
@@ -123,6 +123,15 @@ fn bad_ranges_are_refused() {
             "7/5",
         ]);
     };
-    ["1", "0", "1e9", "x", "7/0", "NaN"].into_iter().for_each(ratio);
+    ["1", "0", "-1", "1e9", "x", "7/0", "NaN"].into_iter().for_each(ratio);
     table(&["--from", "2", "--to", "3", "--step", "1", "--digits", "16"]).refused(&["16", "15"]);
+}
+
+#[test]
+fn a_rounded_ratio_is_asked_about() {
+    for typed in ["1.66", "1.667", "1.67", "1.7"] {
+        let options = ["table", "--heat-capacity-ratio", typed, "--from", "2", "--to", "3", "--step", "1"];
+        endwall(&options, b"").refused(&["--heat-capacity-ratio", typed, "5/3", "--confirm heat-capacity-ratio"]);
+        endwall(&[&options[..], &["--confirm", "heat-capacity-ratio"]].concat(), b"").good();
+    }
 }

@@ -91,7 +91,7 @@ impl Answer {
 
     /// The object as text.
     pub fn to_json(&self) -> Result<String, Failure> {
-        serde_json::to_string_pretty(self).map_err(|error| Failure::option("json", "the answer cannot be written", "", error))
+        serde_json::to_string_pretty(self).map_err(Failure::unformatted)
     }
 }
 

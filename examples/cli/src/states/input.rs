@@ -96,7 +96,7 @@ impl<'a> Input<'a> {
         let gas = HeatCapacityRatio::new(ratio).and_then(|ratio| Gas::new(ratio, mass)).map_err(refused)?;
         let fill = Fill::new(gas, pressure, temperature).map_err(refused)?;
         let Some(given) = arguments.entry.given() else {
-            return Err(Failure::missing(
+            return Err(Failure::plain(
                 "nothing fixes the strength of the shock",
                 "add one of its quantities, like --shock-speed \"950 m/s\" or --mach 3: see --help",
             ));

@@ -30,7 +30,12 @@ impl Run {
 
     /// Asserts a refusal that prints no result and names each of these.
     pub fn refused(self, names: &[&str]) {
-        assert_eq!((self.code, self.out.as_str()), (2, ""), "{}", self.err);
+        self.failed(2, names);
+    }
+
+    /// Asserts an end with this code that prints no result and names each of these.
+    pub fn failed(self, code: i32, names: &[&str]) {
+        assert_eq!((self.code, self.out.as_str()), (code, ""), "{}", self.err);
         for name in names {
             assert!(self.err.contains(name), "\"{name}\" is not in: {}", self.err);
         }
