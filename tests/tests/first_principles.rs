@@ -86,7 +86,7 @@ impl Function for AtVolume {
 
 /// The reflected shock behind an incident one of known speed and volume ratio; unknown volume ratio x of the reflected shock.
 ///
-/// The gas comes to rest: u2 + U_R = w with U_R = w·x, so w = u2/(1 − x).
+/// The gas comes to rest: u2 + `U_R` = w with `U_R` = w·x, so w = u2/(1 − x).
 struct Reflection {
     filling: Filling,
     speed: f64,

@@ -3,8 +3,8 @@
 use endwall::number::Rational;
 use endwall::shock::{Entry, Output};
 use endwall::shot::{
-    Allowance, EndWall, FitFlags, FitSettings, LEVEL_TWO_SIGMA, Measured, MonteCarlo, MonteCarloSettings, Outlier, RECOMMENDED_BLOCK,
-    Reduction, Shot, SpeedSource, Station, Stop, fit, numerical_tolerance, reduce, validate_linear,
+    Allowance, DrivenGas, EndWall, FitFlags, FitSettings, LEVEL_TWO_SIGMA, Measured, MonteCarlo, MonteCarloSettings, Outlier,
+    RECOMMENDED_BLOCK, Reduction, Shot, SpeedSource, Station, Stop, fit, numerical_tolerance, reduce, validate_linear,
 };
 use endwall_tests::random::Random;
 use endwall_tests::tolerances::{ATTENUATION, LAST_DIGIT, MONTE_CARLO_UNCERTAINTY, SHOCK_SPEED, SLOPE};
@@ -80,10 +80,12 @@ fn the_late_station_is_the_one_that_is_named() {
 }
 
 /// A shot with a given speed.
-fn given(gamma: &str, molar_mass: &str, pressure: (&str, f64), temperature: (&str, f64), speed: (Rational, f64)) -> Reduction {
+fn given(gamma: &str, molar_mass: &str, pressure: (&str, f64), temperature: (&str, f64), speed: (Rational, f64)) -> Reduction<'static> {
     let shot = Shot {
-        heat_capacity_ratio: Measured::exact(exact(gamma)),
-        molar_mass: Measured::exact(exact(molar_mass)),
+        gas: DrivenGas::ConstantHeatCapacity {
+            heat_capacity_ratio: Measured::exact(exact(gamma)),
+            molar_mass: Measured::exact(exact(molar_mass)),
+        },
         pressure: Measured::new(exact(pressure.0), pressure.1),
         temperature: Measured::new(exact(temperature.0), temperature.1),
         speed: SpeedSource::Given(Measured::new(speed.0, speed.1)),
@@ -96,8 +98,12 @@ fn given(gamma: &str, molar_mass: &str, pressure: (&str, f64), temperature: (&st
 fn relative(reduction: &Reduction, output: Output) -> [f64; 3] {
     let value = reduction.estimate(output).value;
     let slopes = reduction.sensitivities(output);
-    let fill = reduction.incident().fill();
-    let inputs = [reduction.incident().output(Output::ShockSpeed).middle(), fill.pressure().nominal(), fill.temperature().nominal()];
+    let fill = reduction.incident().expect("a gas of constant heat capacity").fill();
+    let inputs = [
+        reduction.incident().expect("a gas of constant heat capacity").output(Output::ShockSpeed).middle(),
+        fill.pressure().nominal(),
+        fill.temperature().nominal(),
+    ];
     core::array::from_fn(|k| slopes[k] * inputs[k] / value)
 }
 
@@ -118,7 +124,7 @@ fn sensitivities_at_fixed_shock_speed() {
     ] {
         // M 2: the speed is twice the sound speed.
         let still = given(gamma, molar_mass, ("1e4", 0.0), ("295", 0.0), (exact("5000"), 0.0));
-        let speed = Rational::from(2.0 * still.incident().output(Output::SoundSpeed1).middle());
+        let speed = Rational::from(2.0 * still.incident().expect("a gas of constant heat capacity").output(Output::SoundSpeed1).middle());
         let reduction = given(gamma, molar_mass, ("1e4", 10.0), ("295", 0.5), (speed, 1.0));
         for (output, expected) in
             [(Output::Temperature5, [temperature, 0.0, 1.0 - 0.5 * temperature]), (Output::Pressure5, [pressure, 1.0, -0.5 * pressure])]
@@ -188,15 +194,17 @@ fn contributions_to_a_step() {
 }
 
 /// The whole way: five stations, their fit, the states.
-fn whole_shot(noise: u64) -> Reduction {
+fn whole_shot(noise: u64) -> Reduction<'static> {
     let mut random = Random::new(noise);
     let mut stations = stations(&FIVE, 950.0, 0.012);
     for station in &mut stations {
         station.arrival += 3e-7 * (random.unit() - 0.5);
     }
     let shot = Shot {
-        heat_capacity_ratio: Measured::exact(exact("5/3")),
-        molar_mass: Measured::exact(exact("0.039948")),
+        gas: DrivenGas::ConstantHeatCapacity {
+            heat_capacity_ratio: Measured::exact(exact("5/3")),
+            molar_mass: Measured::exact(exact("0.039948")),
+        },
         pressure: Measured::new(exact("8000"), 20.0),
         temperature: Measured::new(exact("296.2"), 0.5),
         speed: SpeedSource::Stations(&stations, FitSettings::default()),
@@ -215,7 +223,7 @@ fn run(reduction: &Reduction, seed: u64, settings: &MonteCarloSettings) -> Monte
 #[test]
 fn monte_carlo_validates_the_linear_uncertainty() {
     let reduction = whole_shot(0x5407_0002);
-    assert_eq!(reduction.incident().entry().0, Entry::ShockSpeed);
+    assert_eq!(reduction.incident().expect("a gas of constant heat capacity").entry().0, Entry::ShockSpeed);
     let settings = MonteCarloSettings { level: LEVEL_TWO_SIGMA, digits: 1, tolerance: 0.2, max_trials: 4_000_000, ..Default::default() };
     let run = run(&reduction, 1, &settings);
     assert_eq!((run.stop, run.refused), (Stop::Converged, 0));
@@ -266,8 +274,10 @@ fn the_same_seed_gives_the_same_bits() {
         station.arrival = nanoseconds * 1e-9;
     }
     let shot = Shot {
-        heat_capacity_ratio: Measured::exact(exact("5/3")),
-        molar_mass: Measured::exact(exact("0.039948")),
+        gas: DrivenGas::ConstantHeatCapacity {
+            heat_capacity_ratio: Measured::exact(exact("5/3")),
+            molar_mass: Measured::exact(exact("0.039948")),
+        },
         pressure: Measured::new(exact("8000"), 20.0),
         temperature: Measured::new(exact("296.2"), 0.5),
         speed: SpeedSource::Stations(&stations, FitSettings::default()),

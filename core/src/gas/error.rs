@@ -52,6 +52,14 @@ pub enum Parameter {
     Temperature2,
     /// Lowest temperature for which the heat capacities of all species are known.
     DataRange,
+    /// A temperature of no particular state.
+    Temperature,
+    /// A pressure of no particular state.
+    Pressure,
+    /// Factor by which the pressure changes.
+    PressureFactor,
+    /// Relative humidity.
+    RelativeHumidity,
 }
 
 impl Parameter {
@@ -81,6 +89,10 @@ impl Parameter {
             Self::UpstreamSpeed => "gas speed ahead of the shock",
             Self::Temperature2 => "temperature T2",
             Self::DataRange => "lowest temperature with data for every species",
+            Self::Temperature => "temperature",
+            Self::Pressure => "pressure",
+            Self::PressureFactor => "pressure factor",
+            Self::RelativeHumidity => "relative humidity",
         }
     }
 
@@ -88,8 +100,8 @@ impl Parameter {
     pub const fn unit(self) -> &'static str {
         match self {
             Self::MolarMass => " kg/mol",
-            Self::FillPressure | Self::PressureRise | Self::ReflectedPressure | Self::Step => " Pa",
-            Self::FillTemperature | Self::Temperature2 | Self::ReflectedTemperature | Self::DataRange => " K",
+            Self::FillPressure | Self::PressureRise | Self::ReflectedPressure | Self::Step | Self::Pressure => " Pa",
+            Self::FillTemperature | Self::Temperature2 | Self::ReflectedTemperature | Self::DataRange | Self::Temperature => " K",
             Self::ShockSpeed | Self::GasSpeed | Self::WallSpeed | Self::UpstreamSpeed => " m/s",
             Self::WallImpedance => " Pa s/m",
             _ => "",
@@ -156,7 +168,10 @@ impl fmt::Display for InputError {
                 )
             }
             Rule::HeatsBeyondData(low, high) => {
-                write!(f, "takes the gas outside its data, {low} K to {high} K: its heat capacity is not known there and is not extrapolated")
+                write!(
+                    f,
+                    "takes the gas outside its data, {low} K to {high} K: its heat capacity is not known there and is not extrapolated"
+                )
             }
             Rule::Ranges => {
                 write!(f, "begins more ranges than a mixture can hold: the species change their polynomials at too many temperatures")

@@ -1,6 +1,6 @@
 //! Heat capacity of an ideal gas as polynomials over adjoining ranges of temperature.
 
-use crate::number::{Ball, Elementary, Enclosure, Semifield, Signed};
+use crate::number::{Ball, Dual, Elementary, Semifield, Signed};
 
 /// Ranges, at most.
 pub const RANGES: usize = 5;
@@ -52,6 +52,22 @@ impl<S: Elementary> Range<S> {
         let rational = a1 / (t * end) + a2 * excess.log1p_ratio() / t;
         let whole = S::whole;
         rational + (a3 + a4 * first / whole(2) + a5 * second / whole(3) + a6 * third / whole(4) + a7 * fourth / whole(5))
+    }
+
+    /// ∫ `c_p`/R dT/T from T to T(1 + x), by divided differences: no term cancels as x goes to zero.
+    #[inline(always)]
+    fn entropy_rise(&self, temperature: S, excess: S) -> S {
+        let [a1, a2, a3, a4, a5, a6, a7] = self.a;
+        let t = temperature;
+        let end = t + t * excess;
+        let square = t.squared();
+        let first = t + end;
+        let second = square + end * first;
+        let third = square * t + end * second;
+        let whole = S::whole;
+        let falling = (a1 * first / (t * end).doubled() + a2) / end;
+        let rising = t * (a4 + a5 * first / whole(2) + a6 * second / whole(3) + a7 * third / whole(4));
+        excess * (a3 * excess.log1p_ratio() + falling + rising)
     }
 }
 
@@ -152,6 +168,62 @@ impl<S: Elementary> HeatCapacity<S> {
         let last = self.at(to);
         (sum + part(last, last.start, end)) / temperature
     }
+
+    /// (s(T(1 + x)) − s(T))/R = ∫ `c_p`/R dT/T at constant pressure, between a temperature T in range `from` and T(1 + x) in range `to`.
+    ///
+    /// Across joints it is the sum of the integrals of both polynomials, without a jump: continuous and, with `c_p`, increasing.
+    pub fn entropy_rise(&self, from: usize, temperature: S, excess: S, to: usize) -> S {
+        if from == to {
+            return self.at(from).entropy_rise(temperature, excess);
+        }
+        let end = temperature + temperature * excess;
+        if from > to {
+            return -self.entropy_rise(to, end, -(excess / (S::whole(1) + excess)), from);
+        }
+        let part = |range: &Range<S>, low: S, high: S| range.entropy_rise(low, (high - low) / low);
+        let between = self.ranges.iter().zip(self.ranges.iter().skip(1)).enumerate().skip(from).take(to - from);
+        let sum = between.fold(S::whole(0), |sum, (index, (range, next))| {
+            let low = if index == from { temperature } else { range.start };
+            sum + part(range, low, next.start)
+        });
+        let last = self.at(to);
+        sum + part(last, last.start, end)
+    }
+}
+
+impl<S: Signed> HeatCapacity<S> {
+    /// The same with the slopes of every coefficient with respect to one input.
+    pub(crate) fn with_slopes(&self, slopes: &Self) -> HeatCapacity<Dual<S, 1>> {
+        let mut all = self.map(Dual::constant);
+        for (range, slope) in all.ranges.iter_mut().zip(&slopes.ranges) {
+            for (coefficient, slope) in range.a.iter_mut().zip(slope.a) {
+                *coefficient = Dual::with_slopes(coefficient.value(), [slope]);
+            }
+            range.jump = Dual::with_slopes(range.jump.value(), [slope.jump]);
+        }
+        all
+    }
+
+    /// The sum with a multiple of another one of the same ranges.
+    pub(crate) fn plus(&self, other: &Self, times: S) -> Self {
+        let mut sum = *self;
+        for (range, other) in sum.ranges.iter_mut().zip(&other.ranges) {
+            for (coefficient, other) in range.a.iter_mut().zip(other.a) {
+                *coefficient = *coefficient + times * other;
+            }
+            range.jump = range.jump + times * other.jump;
+        }
+        sum
+    }
+
+    /// Less the same at every temperature.
+    pub(super) fn less_constant(mut self, constant: S) -> Self {
+        for range in &mut self.ranges {
+            let [.., a3, _, _, _, _] = &mut range.a;
+            *a3 = *a3 - constant;
+        }
+        self
+    }
 }
 
 impl HeatCapacity<Ball> {
@@ -166,11 +238,5 @@ impl HeatCapacity<Ball> {
         *self.ranges.get_mut(self.used)? = range;
         self.used += 1;
         Some(self)
-    }
-
-    /// An upper bound of the sum of all jumps of h/R, K.
-    pub(crate) fn jumps(&self) -> f64 {
-        let size = |x: Enclosure| x.low().abs().max(x.high().abs());
-        self.used().iter().skip(1).map(|range| size(range.jump.enclosure())).sum::<f64>() * (1.0 + 1e-9)
     }
 }

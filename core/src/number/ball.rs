@@ -1,7 +1,7 @@
 //! [`Ball`]: a pair of doubles with a running error radius.
 
 use super::counted::Counted;
-use super::enclosure::Enclosure;
+use super::enclosure::{Enclosure, Quality};
 use super::rational::Rational;
 use super::round::{UNIT, add_down, add_up, in_range, power_of_two, sqrt, two_product, two_sum};
 use super::traits::{Positive, Semifield};
@@ -30,10 +30,11 @@ pub struct Ball {
 /// Added wherever a rounding may have underflowed: products here are at least 2⁻⁹⁶⁰, their tails' errors at most 2⁻¹⁰⁷⁴ each.
 const TINY: f64 = f64::from_bits(1 << 52);
 
-/// u times a sum of magnitudes of rounded results, rounded up; 0 only if all are 0.
+/// u times a sum of magnitudes of rounded results, rounded up, with what may have underflowed; 0 only where nothing was rounded. That the result
+/// is 0 does not tell: it may have underflowed whole.
 #[inline(always)]
-fn roundings(magnitudes: f64) -> f64 {
-    if magnitudes == 0.0 { 0.0 } else { up(magnitudes * UNIT) + 64.0 * TINY }
+fn roundings(magnitudes: f64, nothing_rounded: bool) -> f64 {
+    if nothing_rounded { 0.0 } else { up(magnitudes * UNIT) + 64.0 * TINY }
 }
 
 /// Covers the at most 2⁶ roundings by which a sum of non-negative terms may be too small.
@@ -128,11 +129,16 @@ impl Ball {
         Self::computed(self.head * 0.5, self.tail * 0.5, self.radius * 0.5 + lost)
     }
 
-    /// 2ⁿ·x for small n; exact.
+    /// 2ⁿ·x, exact but for a tail that underflows; unknown for |n| above 1000.
     #[inline(always)]
     pub(crate) fn scaled(self, n: i32) -> Self {
-        let factor = power_of_two(n.clamp(-1000, 1000));
-        let scaled = Self { head: self.head * factor, tail: self.tail * factor, radius: product_up(self.radius, factor) };
+        if !(-1000..=1000).contains(&n) {
+            return Self::UNKNOWN;
+        }
+        let factor = power_of_two(n);
+        let tail = self.tail * factor;
+        let lost = if tail / factor == self.tail { 0.0 } else { TINY };
+        let scaled = Self { head: self.head * factor, tail, radius: product_up(self.radius, factor) + lost };
         if scaled.head == 0.0 && self.head == 0.0 || in_range(scaled.head) { scaled } else { Self::UNKNOWN }
     }
 
@@ -142,7 +148,9 @@ impl Ball {
         if self.radius == f64::INFINITY {
             return Enclosure::UNKNOWN;
         }
-        Enclosure::ordered(add_down(self.head, add_down(self.tail, -self.radius)), add_up(self.head, add_up(self.tail, self.radius)))
+        let (low, high) = (add_down(self.head, add_down(self.tail, -self.radius)), add_up(self.head, add_up(self.tail, self.radius)));
+        // A bound beyond the largest double is infinite, and marked so.
+        Enclosure::computed(low, high, Quality::Proven)
     }
 
     /// A bound on |x| from above.
@@ -155,7 +163,8 @@ impl Ball {
     #[inline(always)]
     fn mignitude(self) -> f64 {
         let inner = self.head.abs() - self.tail.abs() - self.radius;
-        inner - inner.abs() * 8.0 * f64::EPSILON
+        // Both roundings are at most u·|head| each; where they cancel, relative to what is left they are not small.
+        inner - self.head.abs() * (8.0 * f64::EPSILON)
     }
 
     /// True if every number of the ball is positive.
@@ -216,6 +225,10 @@ impl Mul for Ball {
     fn mul(self, other: Self) -> Self {
         let spread = product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius);
         if self.head == 0.0 || other.head == 0.0 {
+            // Zero times what is not known, and may have no value, is not zero.
+            if self.radius.max(other.radius) == f64::INFINITY {
+                return Self::UNKNOWN;
+            }
             // A zero head means a zero middle: all that is left is the spread.
             return Self::computed(0.0, 0.0, up(spread));
         }
@@ -229,7 +242,8 @@ impl Mul for Ball {
         let (cross, third) = two_sum(first, second);
         let (tail, fourth) = two_sum(error, cross);
         let dropped = product_up(self.tail.abs(), other.tail.abs());
-        let lost = roundings(first.abs() + second.abs()) + third.abs() + fourth.abs() + dropped;
+        let exact = self.tail == 0.0 && other.tail == 0.0;
+        let lost = roundings(first.abs() + second.abs(), exact) + third.abs() + fourth.abs() + dropped;
         Self::computed(head, tail, up(spread + lost))
     }
 }
@@ -259,10 +273,10 @@ impl Div for Ball {
         let (numerator, second) = two_sum(remainder, tails);
         let tail = numerator / other.head;
         // The quotient of the remainder is exact only if there is none.
-        let last = roundings(tail.abs());
+        let last = roundings(tail.abs(), numerator == 0.0);
         let spread = self.radius
             + product_up(quotient.abs(), other.radius)
-            + roundings(shift.abs())
+            + roundings(shift.abs(), other.tail == 0.0)
             + first.abs()
             + second.abs()
             // Divided by head instead of by the true divisor.
@@ -291,6 +305,52 @@ impl Positive for Ball {
         let curvature = product_up(distance, distance / root) / (2.0 * root * root);
         let spread = up(self.radius + first.abs()) / (root + root) + curvature;
         let spread = if spread == 0.0 { 0.0 } else { up(spread) + TINY };
-        Self::computed(root, tail, up(spread + roundings(tail.abs())))
+        Self::computed(root, tail, up(spread + roundings(tail.abs(), numerator == 0.0)))
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::number::Elementary;
+
+    /// A tail whose product, quotient or root underflows whole still counts.
+    #[test]
+    fn what_underflows_is_not_forgotten() {
+        let x = Ball::from(1.0) + Ball::from(power_of_two(-1000));
+        let small = power_of_two(-100);
+        for y in [x * Ball::from(small), Ball::from(small) * x, x / Ball::from(1.0 / small), Ball::from(small) / x, x.scaled(-100)] {
+            assert_eq!(y.head, small);
+            assert!(y.radius > 0.0, "{y:?}");
+        }
+        let large = Ball::from(power_of_two(900)) + Ball::from(power_of_two(-700));
+        assert!(large.sqrt().radius > 0.0);
+        assert!(Ball::from(1e-300).exp().radius > 0.0);
+        // What is exact stays exact.
+        assert_eq!((Ball::from(0.1) * Ball::from(3.0)).radius, 0.0);
+        assert_eq!((Ball::from(6.0) / Ball::from(3.0)).radius, 0.0);
+        assert_eq!(Ball::from(9.0).sqrt().radius, 0.0);
+    }
+
+    /// The least number of this ball is 2⁻⁵⁴: head less tail rounds to the head.
+    #[test]
+    fn the_least_magnitude_survives_cancellation() {
+        let ball = Ball { head: 1.0, tail: -power_of_two(-54), radius: 1.0 - power_of_two(-53) };
+        assert!(ball.mignitude() <= power_of_two(-54), "{}", ball.mignitude());
+        let reciprocal = (Ball::whole(1) / ball).enclosure();
+        assert!(reciprocal.high() >= power_of_two(54), "{reciprocal:?}");
+    }
+
+    #[test]
+    fn zero_times_unknown_is_unknown() {
+        let undefined = Ball::from(-1.0).ln();
+        assert!(!(Ball::from(0.0) * undefined).enclosure().is_proven());
+        assert!(!(undefined * Ball::from(0.0)).enclosure().is_proven());
+    }
+
+    #[test]
+    fn an_infinite_bound_is_not_proven() {
+        let wide = Ball::around(Enclosure::ordered(0.0, f64::MAX)).doubled().enclosure();
+        assert_eq!((wide.high(), wide.quality()), (f64::INFINITY, Quality::Unbounded));
     }
 }

@@ -46,7 +46,8 @@ pub(crate) fn bounds<const N: usize>(
     let corner = |part: &Part<N>, result: &Dual<Enclosure, N>, upper: bool| {
         let mut inputs = part.inputs;
         for (input, slope) in inputs.iter_mut().zip(result.slopes()) {
-            *input = input.end((slope.middle() >= 0.0) == upper);
+            // A slope that is at most zero but for its rounded middle decreases.
+            *input = input.end((slope.high() > 0.0 && slope.middle() >= 0.0) == upper);
         }
         point(inputs)
     };

@@ -69,8 +69,19 @@ impl Counted {
     /// The exact double `x`, where 2^low ≤ x ≤ 2^high; `None` elsewhere.
     #[inline(always)]
     pub fn exactly(x: f64, low: i32, high: i32) -> Option<Self> {
-        let inside = x >= super::round::power_of_two(low) && x <= super::round::power_of_two(high);
-        inside.then_some(Self { head: x, tail: 0.0, tail_count: 0, error_count: 0, low, high })
+        Self::is_within(x, low, high).then_some(Self::inside(x, low, high))
+    }
+
+    /// 2^low ≤ x ≤ 2^high.
+    #[inline(always)]
+    pub(crate) fn is_within(x: f64, low: i32, high: i32) -> bool {
+        x >= power_of_two(low) && x <= power_of_two(high)
+    }
+
+    /// The exact double `x`, of which the caller knows that it [is within](Self::is_within) the bounds.
+    #[inline(always)]
+    pub(crate) fn inside(x: f64, low: i32, high: i32) -> Self {
+        Self { head: x, tail: 0.0, tail_count: 0, error_count: 0, low, high }
     }
 
     /// An exact rational number, where 2^low ≤ |x| ≤ 2^high; `None` elsewhere.
@@ -180,14 +191,26 @@ impl Counted {
         self.optimal_by(|middle| exact_square().compare(&Exact::from(middle).squared()))
     }
 
+    /// The two neighbouring doubles that bracket the value, and whether they are proven to: not where the value is too close to a double, or
+    /// one, for the pair to tell. Without a branch, for loops over many values.
+    ///
+    /// Proof as for [`Counted::enclosure`]: |rest| > r puts the value strictly between `nearest` and its neighbour on the side of `rest`.
+    #[inline(always)]
+    pub(crate) fn neighbours(self) -> (f64, f64, bool) {
+        let (nearest, rest, bound) = self.rounded();
+        // Positive and far from both ends of the range: the neighbour below by the sign bit of `rest`, the one above is next to it.
+        let low = nearest.to_bits() - (rest.to_bits() >> 63);
+        (f64::from_bits(low), f64::from_bits(low + 1), rest.abs() > bound)
+    }
+
     /// The enclosure, decided by `order` of the exact value against the middle of three doubles where the pair leaves three.
     #[inline(always)]
     pub(crate) fn optimal_by(self, order: impl FnOnce(f64) -> Option<Ordering>) -> Enclosure {
-        let (nearest, rest, bound) = self.rounded();
-        if rest.abs() > bound {
-            return self.enclosure();
+        let (low, high, proven) = self.neighbours();
+        if proven {
+            return Enclosure::ordered(low, high);
         }
-        settle_cold(self.enclosure(), nearest, order)
+        settle_cold(self.enclosure(), self.rounded().0, order)
     }
 
     /// The order of this value and another where the pairs can tell.
@@ -262,7 +285,9 @@ impl Add for Counted {
     fn add(self, other: Self) -> Self {
         let exact_tails = self.tail_count == 0 && other.tail_count == 0;
         let k = self.tail_count.max(other.tail_count);
-        let (head, error) = two_sum(self.head, other.head);
+        // Heads are positive, so their order is that of their magnitudes: a choice and three operations instead of six.
+        let (greater, less) = if self.head < other.head { (other.head, self.head) } else { (self.head, other.head) };
+        let (head, error) = fast_two_sum(greater, less);
         let (tail, rounding) = if exact_tails {
             (error, 0)
         } else if other.tail_count == 0 {
@@ -322,30 +347,36 @@ impl Mul for Counted {
 impl Div for Counted {
     type Output = Self;
 
-    /// q = RN(a.head/b.head); r = a.head − q·b.head is a double (the remainder property; the difference with the rounded product
-    /// is exact by Sterbenz's lemma); tail = RN(RN(r + RN(a.tail − RN(q·b.tail)))/b.head).
+    /// y = RN(1/b.head), q = RN(a.head·y); r = RN(a.head − q·b.head); tail = RN(RN(r + RN(a.tail − RN(q·b.tail)))·y).
+    ///
+    /// One hardware division instead of two, and quotients by the same divisor share it.
+    ///
+    /// y and q each have one rounding, so |a.head − q·b.head| ≤ (2u + …)·q·b.head. The rounded product is then within 3u of a.head, their
+    /// difference exact by Sterbenz's lemma, and r has one rounding, of at most u·2u·q·b.head.
     ///
     /// Exactly, A/B − q = (r + a.tail − q·b.tail + δa − q·δb)/B. In units of u²·q: δa and δb give e₁ + e₂; dividing by b.head
-    /// instead of B gives k₂(k₁+k₂+1), since |r| ≤ u·q·b.head; the roundings give k₂, k₁+k₂, 1+k₁+k₂ and 1+k₁+k₂. All second-order
-    /// factors together stay below 2: e = e₁ + e₂ + k₂(k₁+k₂+1) + 3k₁ + 4k₂ + 4. |tail| ≤ (1+k₁+k₂+…)·u·q ≤ (k₁+k₂+2)·u·q.
+    /// instead of B gives k₂(k₁+k₂+2); the roundings of r, the product, the difference and the sum give 2, k₂, k₁+k₂ and 2+k₁+k₂; the error of
+    /// y and the rounding of the last product give 2(2+k₁+k₂). All second-order factors together stay below 2:
+    /// e = e₁ + e₂ + k₂(k₁+k₂+2) + 4k₁ + 5k₂ + 10. |tail| ≤ (2+k₁+k₂+…)·u·q ≤ (k₁+k₂+3)·u·q.
     #[inline(always)]
     fn div(self, other: Self) -> Self {
         let (k1, k2) = (self.tail_count, other.tail_count);
-        let head = self.head / other.head;
+        let reciprocal = 1.0 / other.head;
+        let head = self.head * reciprocal;
         let (p, error) = two_product(head, other.head);
         let remainder = (self.head - p) - error;
         let tails = if k2 == 0 { self.tail } else { self.tail - head * other.tail };
         let numerator = if k1 == 0 && k2 == 0 { remainder } else { remainder + tails };
         let sum = k1.saturating_add(k2);
         let rounding = k2
-            .saturating_mul(sum.saturating_add(1))
-            .saturating_add(k1.saturating_mul(3))
-            .saturating_add(k2.saturating_mul(4))
-            .saturating_add(4);
+            .saturating_mul(sum.saturating_add(2))
+            .saturating_add(k1.saturating_mul(4))
+            .saturating_add(k2.saturating_mul(5))
+            .saturating_add(10);
         Self {
             head,
-            tail: numerator / other.head,
-            tail_count: sum.saturating_add(2),
+            tail: numerator * reciprocal,
+            tail_count: sum.saturating_add(3),
             error_count: self.error_count.saturating_add(other.error_count).saturating_add(rounding),
             low: self.low - other.high,
             high: self.high - other.low,
@@ -356,10 +387,14 @@ impl Div for Counted {
 
 impl Positive for Counted {
     /// s = RN(√head); r = head − s² is a double (Lefèvre et al. 2023, section 2, from memory; it is the exact remainder of the
-    /// square root); tail = RN(RN(r + a.tail)/2s).
+    /// square root); y = RN(s·RN(1/(2·head))); tail = RN(RN(r + a.tail)·y).
+    ///
+    /// y stands for 1/2s, and the division need not wait for the root: s² is within 2u of head and y has two roundings, so y·2s is within 4u + …
+    /// of 1.
     ///
     /// √X = s + (X − s²)/(s + √X), and |X − s²| ≤ (2 + k + …)·u·s². In units of u²·s: δ gives e/2; replacing s + √X by 2s gives at
-    /// most (2+k)²/8; two roundings give 2·(2+k)/2. So e' = ⌈e/2⌉ + ⌈(2+k)²/8⌉ + (2+k) + 2 and |tail| ≤ (k/2 + 1 + …)·u·s ≤ (⌈k/2⌉ + 2)·u·s.
+    /// most (2+k)²/8; the rounding of the sum gives (2+k)/2, y and the last product 5(2+k)/2. So e' = ⌈e/2⌉ + ⌈(2+k)²/8⌉ + 3(2+k) + 2 and
+    /// |tail| ≤ (k/2 + 1 + …)·u·s ≤ (⌈k/2⌉ + 2)·u·s.
     #[inline(always)]
     fn sqrt(self) -> Self {
         let k = self.tail_count;
@@ -370,13 +405,13 @@ impl Positive for Counted {
         let k_plus = k.saturating_add(2);
         Self {
             head,
-            tail: numerator / (head + head),
+            tail: numerator * (head * (0.5 / self.head)),
             tail_count: k.div_ceil(2).saturating_add(2),
             error_count: self
                 .error_count
                 .div_ceil(2)
                 .saturating_add(k_plus.saturating_mul(k_plus).div_ceil(8))
-                .saturating_add(k_plus)
+                .saturating_add(k_plus.saturating_mul(3))
                 .saturating_add(2),
             // Rounded outward to whole exponents.
             low: self.low.div_euclid(2),

@@ -58,7 +58,8 @@ impl From<super::Rational> for Enclosure {
         }
         let error = super::Exact::from(x).compare(&super::Exact::from(nearest));
         let outward = if x.is_negative() { error.map(Ordering::reverse) } else { error };
-        Self::ordered(nearest.next_down(), nearest.next_up()).split_at(nearest, outward)
+        let split = Self::ordered(nearest.next_down(), nearest.next_up()).split_at(nearest, outward);
+        Self::computed(split.low, split.high, split.quality)
     }
 }
 
@@ -87,7 +88,7 @@ impl Enclosure {
 
     /// Bounds of a computed result, with the mark of its operands and an own one for infinite bounds.
     #[inline(always)]
-    fn computed(low: f64, high: f64, quality: Quality) -> Self {
+    pub(super) fn computed(low: f64, high: f64, quality: Quality) -> Self {
         let own = if low > f64::NEG_INFINITY && high < f64::INFINITY { Quality::Proven } else { Quality::Unbounded };
         Self { low, high, quality: quality.max(own) }
     }
@@ -310,6 +311,7 @@ impl serde::Serialize for Enclosure {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::number::Rational;
 
     fn enclosure(low: f64, high: f64) -> Enclosure {
         Enclosure::new(low, high).unwrap()
@@ -344,6 +346,10 @@ mod tests {
         assert_eq!((Enclosure::whole(1) / Enclosure::whole(0)).quality(), Quality::Undefined);
         assert_eq!((enclosure(1e200, 1e300) * enclosure(1e200, 1e300)).quality(), Quality::Unbounded);
         assert_eq!(Enclosure::from(f64::NAN).quality(), Quality::Undefined);
+        // A little more than the largest double, though that is the nearest one.
+        let more = Rational::from(1.0).checked_add(Rational::from(2f64.powi(-60))).unwrap();
+        let beyond = Enclosure::from(Rational::from(f64::MAX).checked_mul(more).unwrap());
+        assert_eq!((beyond.low(), beyond.quality()), (f64::MAX, Quality::Unbounded));
     }
 
     #[test]

@@ -49,10 +49,8 @@ impl Exact {
             return Self { parts: Some((numerator, Wide::from(1))), exponent: 0 };
         }
         let (up, down) = (numerator.trailing_zeros(), denominator.trailing_zeros());
-        Self {
-            parts: Some((numerator.shr(up), denominator.shr(down))),
-            exponent: exponent.saturating_add(up as i32).saturating_sub(down as i32),
-        }
+        let exponent = exponent.checked_add(up as i32).and_then(|sum| sum.checked_sub(down as i32));
+        exponent.map_or(Self::INDEFINITE, |exponent| Self { parts: Some((numerator.shr(up), denominator.shr(down))), exponent })
     }
 
     /// The order of two fractions; `None` if one is indefinite or the products do not fit.
@@ -132,7 +130,7 @@ impl Semifield for Exact {
     }
 
     fn doubled(self) -> Self {
-        Self { exponent: self.exponent.saturating_add(1), ..self }
+        self.exponent.checked_add(1).map_or(Self::INDEFINITE, |exponent| Self { exponent, ..self })
     }
 }
 
@@ -201,6 +199,20 @@ mod tests {
         assert_eq!((zero * x).compare_double(0.0), Some(Ordering::Equal));
         assert_eq!((x / zero).compare(&x), None);
         assert!(zero.counted(-200, 200).is_none());
+    }
+
+    /// An exponent that leaves 32 bits makes the fraction indefinite, not another one.
+    #[test]
+    fn an_exponent_that_does_not_fit_is_indefinite() {
+        let mut power = Exact::whole(2);
+        let mut all = power;
+        for _ in 1..31 {
+            power = power * power;
+            all = all * power;
+        }
+        assert_eq!(all.exponent, i32::MAX);
+        assert_eq!(all.doubled().compare(&all), None);
+        assert_eq!((all + all).compare(&all), None);
     }
 
     #[test]

@@ -60,6 +60,12 @@ impl Rational {
         Self::scaled(x < 0.0, u128::from(mantissa), biased.max(1) - 1075)
     }
 
+    /// In lowest terms, `None` where the power of two leaves ±2³⁰: then no sum of a few exponents leaves 32 bits.
+    const fn limited(self) -> Option<Self> {
+        const LIMIT: i32 = 1 << 30;
+        if self.exponent < -LIMIT || self.exponent > LIMIT { None } else { Some(self.reduced()) }
+    }
+
     /// Lowest terms: odd numerator and denominator (the powers of two in the exponent), no common factor; one form for each number.
     const fn reduced(mut self) -> Self {
         if self.denominator == 0 {
@@ -127,15 +133,13 @@ impl Rational {
         // Cross-cancelled first, so that a result that fits is found.
         let a = Self::ratio(self.numerator, other.denominator)?;
         let b = Self::ratio(other.numerator, self.denominator)?;
-        Some(
-            Self {
-                negative: self.negative != other.negative,
-                numerator: a.numerator.checked_mul(b.numerator)?,
-                denominator: a.denominator.checked_mul(b.denominator)?,
-                exponent: self.exponent.checked_add(other.exponent)?.checked_add(a.exponent)?.checked_add(b.exponent)?,
-            }
-            .reduced(),
-        )
+        Self {
+            negative: self.negative != other.negative,
+            numerator: a.numerator.checked_mul(b.numerator)?,
+            denominator: a.denominator.checked_mul(b.denominator)?,
+            exponent: self.exponent.checked_add(other.exponent)?.checked_add(a.exponent)?.checked_add(b.exponent)?,
+        }
+        .limited()
     }
 
     /// x/y, exactly; `None` where 128 bits do not hold it, y is zero or an operand is not finite.
@@ -184,7 +188,7 @@ impl Rational {
         } else {
             (other.negative, b - a)
         };
-        Some(Self { negative, numerator, denominator, exponent }.reduced())
+        Self { negative, numerator, denominator, exponent }.limited()
     }
 
     /// x − y, exactly; `None` where 128 bits do not hold it or an operand is not finite.
@@ -254,11 +258,12 @@ fn nearest(numerator: u128, denominator: u128, exponent: i32) -> f64 {
     if drop <= 0 {
         return times_power_of_two(quotient, exponent);
     }
-    let mantissa = if drop > 127 {
+    let mantissa = if drop > 128 {
         0
     } else {
-        let kept = quotient >> drop;
-        let lost = quotient & ((1 << drop) - 1);
+        // All 128 bits may be dropped and still round up.
+        let kept = quotient.checked_shr(drop as u32).unwrap_or(0);
+        let lost = quotient - kept.checked_shl(drop as u32).unwrap_or(0);
         let half = 1 << (drop - 1);
         kept + u128::from(lost > half || (lost == half && (rest != 0 || kept & 1 == 1)))
     };
@@ -306,6 +311,10 @@ mod tests {
         for x in [0.1, 1.0, 5e-324, 1.1e-310, f64::MAX, f64::MIN_POSITIVE, -3.25, 2f64.powi(200), 1.0 + f64::EPSILON] {
             assert_eq!(Rational::from(x).to_f64(), x);
         }
+        // Just below the least double, with all 128 bits in use.
+        let least = Rational::scaled(false, u128::MAX, -1202);
+        assert_eq!(least.to_f64(), 5e-324);
+        assert_eq!(Rational::scaled(false, 1 << 127, -1202).to_f64(), 0.0);
         assert!(Rational::from(f64::NAN).to_f64().is_nan());
         assert_eq!(Rational::from(f64::NEG_INFINITY).to_f64(), f64::NEG_INFINITY);
     }
@@ -319,5 +328,19 @@ mod tests {
         assert_eq!(r("1").checked_div(r("7")), Some(r("1/7")));
         assert_eq!(r("1/3").compare(r("0.3333333333333333")), Some(Ordering::Greater));
         assert_eq!(r("-1").compare(r("0")), Some(Ordering::Less));
+    }
+
+    /// Powers of two up to 2^(2³⁰) multiply and add without overflow of the exponent; beyond, nothing is returned.
+    #[test]
+    fn a_power_of_two_that_is_too_large_is_refused() {
+        let mut power = Rational::from(2.0);
+        for _ in 0..30 {
+            power = power.checked_mul(power).unwrap();
+        }
+        assert_eq!(power.checked_mul(power), None);
+        let twice = power.checked_add(power).unwrap();
+        assert_eq!(twice.checked_add(twice), None);
+        assert_eq!(power.checked_div(twice), Some(Rational::ratio(1, 2).unwrap()));
+        assert_eq!(power.to_f64(), f64::INFINITY);
     }
 }

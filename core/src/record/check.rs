@@ -9,25 +9,31 @@ use super::quantity::Absolute;
 use super::reduce::{left_aside, station_name};
 use super::report::{ReportQuantity, States};
 use super::shot::Shot;
-use crate::shock::Wave;
-use crate::shot::{EndWall, Fit, FitFlags, Outlier, Reduction};
+use crate::gas::species::Shape;
+use crate::gas::{HeatCapacityModel, shortenings};
+use crate::number::Rational;
+use crate::shock::{ThermalShock, Wave};
+use crate::shot::{EndWall, Fit, FitFlags, Outlier, Reduction, Solved};
 
 /// Above this a gas that is not monatomic has an appreciable heat capacity of vibration, K.
 const VIBRATION: f64 = 600.0;
 /// A heat capacity ratio above this belongs to a gas of atoms.
 const MONATOMIC: f64 = 1.6;
+/// Species that dissociate above about this temperature, K (common practice, no source).
+const DISSOCIATION: [(&str, f64); 3] = [("O2", 2500.0), ("CO2", 2500.0), ("N2", 4500.0)];
 /// Noble gases ionise above about this temperature, K (common practice, no source).
 const IONISATION: f64 = 8000.0;
 /// Above about this pressure the gas is no ideal gas, Pa (common practice, no source).
 const REAL_GAS: f64 = 50.0e5;
 
-pub(super) fn result(shot: &Shot, reduction: &Reduction, states: &States, step: &ReportQuantity) -> Vec<Flag> {
+pub(super) fn result(shot: &Shot, reduction: &Reduction<'_>, states: &States, step: &ReportQuantity) -> Vec<Flag> {
     let mut flags = left_aside(shot);
     if let Some(fit) = reduction.fit() {
         arrival_times(shot, fit, &mut flags);
     }
     validity(reduction, states, &mut flags);
     flags.extend(end_wall(reduction));
+    flags.extend(pressure_change(shot, reduction, states));
     compare_measured(shot, states, step, &mut flags);
     flags
 }
@@ -72,10 +78,12 @@ fn arrival_times(shot: &Shot, fit: &Fit, flags: &mut Vec<Flag>) {
 }
 
 /// What state 5 is where the wall is not rigid.
-fn end_wall(reduction: &Reduction) -> Option<Flag> {
-    let reflection = reduction.wall_reflection()?;
-    let speed = significant(reflection.state.gas_speed.middle(), 4);
-    let kind = match reflection.wave {
+fn end_wall(reduction: &Reduction<'_>) -> Option<Flag> {
+    if matches!(reduction.wall(), EndWall::Rigid) {
+        return None;
+    }
+    let speed = significant(reduction.wall_velocity().value, 4);
+    let kind = match reduction.wave() {
         Wave::Shock => "a shock runs back from it",
         Wave::Expansion => "it recedes faster than the gas, so an expansion runs back from it and state 5 is the gas that follows it",
         Wave::Vacuum => "it recedes so fast that the gas cannot follow: state 5 is a vacuum",
@@ -88,10 +96,24 @@ fn end_wall(reduction: &Reduction) -> Option<Flag> {
     Some(Flag::new("wall-moves", format!("the end wall moves with {speed} m/s along the incident shock: {kind}{elastic}")))
 }
 
-/// Where the model of an ideal gas of constant heat capacity ends.
-fn validity(reduction: &Reduction, states: &States, flags: &mut Vec<Flag>) {
-    let ratio = reduction.incident().fill().gas().heat_capacity_ratio().enclosure().middle();
-    let temperature = states.reflected.temperature.value;
+/// Where the model ends.
+fn validity(reduction: &Reduction<'_>, states: &States, flags: &mut Vec<Flag>) {
+    match reduction.solved() {
+        Solved::Constant(incident, _) => {
+            let ratio = incident.fill().gas().heat_capacity_ratio().enclosure().middle();
+            constant_heat_capacity(ratio, states.reflected.temperature.value, flags);
+        }
+        Solved::Thermal(shock) => composition(shock, states, flags),
+    }
+    let pressure = states.reflected.pressure.value;
+    if pressure > REAL_GAS {
+        let text =
+            format!("p5 = {} bar: above about 50 bar the gas departs from the ideal gas of the model", significant(pressure / 1e5, 3));
+        flags.push(Flag::new("real-gas", text));
+    }
+}
+
+fn constant_heat_capacity(ratio: f64, temperature: f64, flags: &mut Vec<Flag>) {
     let kelvin = significant(temperature, 4);
     if ratio < MONATOMIC && temperature > VIBRATION {
         let text = format!(
@@ -100,17 +122,63 @@ fn validity(reduction: &Reduction, states: &States, flags: &mut Vec<Flag>) {
         flags.push(Flag::new("constant-heat-capacity", text));
     }
     if ratio >= MONATOMIC && temperature > IONISATION {
-        flags.push(Flag::new(
-            "ionisation",
-            format!("T5 = {kelvin} K: above about {IONISATION} K noble gases ionise, which the model leaves out"),
-        ));
+        flags.push(ionisation(&kelvin));
     }
-    let pressure = states.reflected.pressure.value;
-    if pressure > REAL_GAS {
+}
+
+fn ionisation(kelvin: &str) -> Flag {
+    Flag::new("ionisation", format!("T5 = {kelvin} K: above about {IONISATION} K noble gases ionise, which the model leaves out"))
+}
+
+/// What the species of a mixture do at the temperatures of the shot.
+fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>) {
+    let temperature = states.incident.temperature.value.max(states.reflected.temperature.value);
+    let kelvin = significant(temperature, 4);
+    let gas = shock.fill().gas();
+    let present = || gas.portions().iter().filter(|portion| portion.fraction.is_positive()).map(|portion| portion.species);
+    for (name, limit) in DISSOCIATION {
+        if temperature > limit && present().any(|species| species.name == name) {
+            let text = format!(
+                "at {kelvin} K {name} dissociates (above about {limit} K), which the model of a gas of fixed composition leaves out"
+            );
+            flags.push(Flag::new("dissociation", text));
+        }
+    }
+    let noble = present().any(|species| ["He", "Ne", "Ar", "Kr", "Xe"].contains(&species.name));
+    if noble && temperature > IONISATION {
+        flags.push(ionisation(&kelvin));
+    }
+    let vibrates = present().any(|species| species.shape != Shape::Atom);
+    if vibrates && shock.fill().model() == HeatCapacityModel::Constant && temperature > VIBRATION {
         let text =
-            format!("p5 = {} bar: above about 50 bar the gas departs from the ideal gas of the model", significant(pressure / 1e5, 3));
-        flags.push(Flag::new("real-gas", text));
+            format!("the heat capacity is taken as that of the fill, but at {kelvin} K molecules vibrate: compare the other choices");
+        flags.push(Flag::new("constant-heat-capacity", text));
     }
+    for remark in shortenings(gas) {
+        let text = format!("{remark}: then the relaxation times of the report are upper limits");
+        flags.push(Flag::new("relaxation-shortened", text));
+    }
+}
+
+/// The temperature after a measured change of the pressure at the end wall.
+fn pressure_change(shot: &Shot, reduction: &Reduction<'_>, states: &States) -> Option<Flag> {
+    let change = shot.measured.as_ref()?.pressure_change.as_ref()?;
+    let factor = Rational::ONE.checked_add(change.value())?;
+    let temperature = states.reflected.temperature.value;
+    let later = match reduction.solved() {
+        Solved::Constant(incident, _) => incident.fill().gas().heat_capacity_ratio().isentropic_temperature(temperature, factor),
+        // With the heat capacity of state 5.
+        Solved::Thermal(shock) => shock.heat_capacity_5().isentropic_temperature(temperature, factor),
+    };
+    let percent = significant(change.value().to_f64() * 100.0, 3);
+    let text = match later {
+        Ok(later) => format!(
+            "after the pressure changed by {percent} % the temperature is {} K, if the change is isentropic; T5 and p5 are those just behind the reflected shock",
+            significant(later.middle(), 5)
+        ),
+        Err(error) => format!("the temperature after the pressure changed by {percent} % is not known: {error}"),
+    };
+    Some(Flag::new("pressure-change", text))
 }
 
 fn compare_measured(shot: &Shot, states: &States, step: &ReportQuantity, flags: &mut Vec<Flag>) {

@@ -11,32 +11,8 @@ use super::quantity::Quantity;
 use super::read::{self, Fields, Reading};
 use super::tree::Node;
 use super::unit::Dimension;
+use crate::gas::HeatCapacityModel;
 use crate::number::Rational;
-
-/// Which heat capacity a state is computed with.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum HeatCapacity {
-    /// The heat capacity at the fill temperature throughout.
-    Constant,
-    /// Vibration in equilibrium in every state.
-    Equilibrium,
-    /// Vibration keeps its energy of the fill.
-    Frozen,
-    /// Frozen behind the incident shock, in equilibrium behind the reflected one.
-    FrozenThenEquilibrium,
-}
-
-impl HeatCapacity {
-    /// The text of the record field `heat_capacity`.
-    pub const fn text(self) -> &'static str {
-        match self {
-            Self::Constant => "constant",
-            Self::Equilibrium => "equilibrium",
-            Self::Frozen => "frozen",
-            Self::FrozenThenEquilibrium => "frozen then equilibrium",
-        }
-    }
-}
 
 /// One species of a mixture.
 #[derive(Clone, Debug, PartialEq)]
@@ -95,7 +71,7 @@ impl GasRecord {
     ///
     /// # Errors
     /// A species or a `heat_capacity` that this version does not compute, with the remedy.
-    pub fn constant(&self, heat_capacity: HeatCapacity) -> Result<ConstantGas, RecordError> {
+    pub fn constant(&self, heat_capacity: HeatCapacityModel) -> Result<ConstantGas, RecordError> {
         let components = match self {
             Self::Ratio { heat_capacity_ratio, molar_mass } => {
                 return Ok(ConstantGas {
@@ -109,12 +85,12 @@ impl GasRecord {
             Self::Mixture(components) => components,
         };
         let unavailable = |path: &str, typed: &str, wrong: &str| {
-            let remedy = "give the gas as { \"heat_capacity_ratio\": …, \"molar_mass\": … }";
+            let remedy =
+                "give the gas as { \"heat_capacity_ratio\": …, \"molar_mass\": … }, or leave it to a report, which computes any species";
             RecordError::new(ErrorKind::Value, path, typed, wrong, remedy)
         };
-        if heat_capacity != HeatCapacity::Constant {
-            let wrong = "temperature-dependent heat capacity is not available in this version";
-            return Err(unavailable("heat_capacity", heat_capacity.text(), wrong));
+        if heat_capacity != HeatCapacityModel::Constant {
+            return Err(unavailable("heat_capacity", heat_capacity.name(), "a closed form needs a constant heat capacity"));
         }
         let too_long = || unavailable("gas", "", "the fractions have too many digits for an exact molar mass");
         let mut masses = Vec::new();
@@ -122,7 +98,7 @@ impl GasRecord {
         for component in components {
             let species = component.species.as_str();
             let Some(mass) = monatomic(species) else {
-                let wrong = "this species is not available in this version (helium, neon and argon are)";
+                let wrong = "a closed form takes helium, neon and argon only";
                 return Err(unavailable(&format!("gas.{species}"), "", wrong));
             };
             mean = mass.checked_mul(component.fraction).and_then(|part| mean.checked_add(part)).ok_or_else(too_long)?;
@@ -142,6 +118,16 @@ impl GasRecord {
             molar_mass_uncertainty: known.then(|| libm::sqrt(variance)),
             source: "heat capacity 5/2 R; molar masses of NASA/TP-2002-211556",
         })
+    }
+}
+
+impl GasRecord {
+    /// True for a mixture of gases whose heat capacity is 5/2 R at any temperature of interest.
+    pub(super) fn is_monatomic(&self) -> bool {
+        match self {
+            Self::Ratio { .. } => false,
+            Self::Mixture(components) => components.iter().all(|component| monatomic(&component.species).is_some()),
+        }
     }
 }
 
@@ -295,31 +281,30 @@ fn mixture(fields: Fields, path: &str, reading: &mut Reading, flags: &mut Vec<Fl
     Ok(GasRecord::Mixture(components))
 }
 
-/// Reads `heat_capacity`, which a mixture must state and a ratio implies.
-pub(super) fn heat_capacity(typed: Option<&str>, gas: &GasRecord) -> Result<HeatCapacity, RecordError> {
-    const ALL: [HeatCapacity; 4] =
-        [HeatCapacity::Constant, HeatCapacity::Equilibrium, HeatCapacity::Frozen, HeatCapacity::FrozenThenEquilibrium];
+/// Reads `heat_capacity`. A ratio implies it; a mixture without it gets the full heat capacity, and the report says so.
+pub(super) fn heat_capacity(typed: Option<&str>, gas: &GasRecord, flags: &mut Vec<Flag>) -> Result<HeatCapacityModel, RecordError> {
     let path = "heat_capacity";
-    let choices = || ALL.map(|choice| format!("\"{}\"", choice.text())).join(", ");
+    let choices = || HeatCapacityModel::ALL.map(|choice| format!("\"{}\"", choice.name())).join(", ");
     let by_ratio = matches!(gas, GasRecord::Ratio { .. });
     let Some(typed) = typed else {
         if by_ratio {
-            return Ok(HeatCapacity::Constant);
+            return Ok(HeatCapacityModel::Constant);
         }
-        let remedy = format!("add \"heat_capacity\": one of {}", choices());
-        return Err(RecordError::new(ErrorKind::Field, path, "", "the field is missing: the choice moves the states", remedy));
+        let text = "the record does not choose a heat capacity: vibration is taken as in equilibrium in every state; the other choices stand beside";
+        flags.push(Flag::new("heat-capacity-not-chosen", text));
+        return Ok(HeatCapacityModel::Equilibrium);
     };
-    let found = ALL.iter().find(|choice| choice.text() == typed);
+    let found = HeatCapacityModel::ALL.into_iter().find(|choice| choice.name() == typed);
     match found {
         None => {
             Err(RecordError::new(ErrorKind::Value, path, typed, "this heat capacity is unknown", format!("write one of {}", choices())))
         }
-        Some(choice) if by_ratio && *choice != HeatCapacity::Constant => {
+        Some(choice) if by_ratio && choice != HeatCapacityModel::Constant => {
             let wrong = "a gas given by its heat capacity ratio has a constant heat capacity";
             let remedy = "leave the field out or write \"constant\"; give species for the other choices";
             Err(RecordError::new(ErrorKind::Value, path, typed, wrong.to_string(), remedy))
         }
-        Some(choice) => Ok(*choice),
+        Some(choice) => Ok(choice),
     }
 }
 

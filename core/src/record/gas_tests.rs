@@ -87,28 +87,30 @@ fn bad_gases_are_refused_by_name() {
 
 #[test]
 fn noble_gases_are_computed_and_others_are_not() {
-    let argon = good(r#"{ "Ar": "balance" }"#).constant(HeatCapacity::Constant).unwrap();
+    let argon = good(r#"{ "Ar": "balance" }"#).constant(HeatCapacityModel::Constant).unwrap();
     assert_eq!((argon.heat_capacity_ratio, argon.molar_mass), (exact("5/3"), exact("0.039948")));
-    let mixture = good(r#"{ "He": "10 ± 0.1 %", "Ar": "balance" }"#).constant(HeatCapacity::Constant).unwrap();
+    let mixture = good(r#"{ "He": "10 ± 0.1 %", "Ar": "balance" }"#).constant(HeatCapacityModel::Constant).unwrap();
     assert_eq!(mixture.molar_mass, exact("0.0363534602"));
     let expected = 0.001 * (0.039_948 - 0.004_002_602);
     assert!((mixture.molar_mass_uncertainty.unwrap() / expected - 1.0).abs() < 1e-12);
     let other = good(r#"{ "N2": "balance" }"#);
-    let message = other.constant(HeatCapacity::Constant).unwrap_err().to_string();
-    assert!(message.contains("gas.N2") && message.contains("not available in this version") && message.contains("heat_capacity_ratio"));
-    assert!(other.constant(HeatCapacity::Equilibrium).unwrap_err().to_string().contains("not available in this version"));
+    let message = other.constant(HeatCapacityModel::Constant).unwrap_err().to_string();
+    assert!(message.contains("gas.N2") && message.contains("helium, neon and argon only") && message.contains("heat_capacity_ratio"));
+    assert!(other.constant(HeatCapacityModel::Equilibrium).unwrap_err().to_string().contains("closed form"));
 }
 
 #[test]
 fn the_heat_capacity_is_stated_or_implied() {
     let by_ratio = good(r#"{ "heat_capacity_ratio": "7/5", "molar_mass": "28.0134 g/mol" }"#);
     let by_species = good(r#"{ "N2": "balance" }"#);
-    assert_eq!(heat_capacity(None, &by_ratio), Ok(HeatCapacity::Constant));
-    assert_eq!(heat_capacity(Some("constant"), &by_ratio), Ok(HeatCapacity::Constant));
-    assert!(heat_capacity(Some("frozen"), &by_ratio).unwrap_err().to_string().contains("leave the field out"));
-    assert!(heat_capacity(None, &by_species).unwrap_err().to_string().contains("\"equilibrium\""));
-    assert!(heat_capacity(Some("frosen"), &by_species).unwrap_err().to_string().contains("\"frozen then equilibrium\""));
+    assert_eq!(heat_capacity(None, &by_ratio, &mut Vec::new()), Ok(HeatCapacityModel::Constant));
+    assert_eq!(heat_capacity(Some("constant"), &by_ratio, &mut Vec::new()), Ok(HeatCapacityModel::Constant));
+    assert!(heat_capacity(Some("frozen"), &by_ratio, &mut Vec::new()).unwrap_err().to_string().contains("leave the field out"));
+    let mut flags = Vec::new();
+    assert_eq!(heat_capacity(None, &by_species, &mut flags), Ok(HeatCapacityModel::Equilibrium));
+    assert_eq!(flags[0].code, "heat-capacity-not-chosen");
+    assert!(heat_capacity(Some("frosen"), &by_species, &mut Vec::new()).unwrap_err().to_string().contains("\"frozen then equilibrium\""));
     for choice in ["constant", "equilibrium", "frozen", "frozen then equilibrium"] {
-        assert_eq!(heat_capacity(Some(choice), &by_species).unwrap().text(), choice);
+        assert_eq!(heat_capacity(Some(choice), &by_species, &mut Vec::new()).unwrap().name(), choice);
     }
 }

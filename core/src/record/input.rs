@@ -72,9 +72,11 @@ impl Shot {
         let path = match error.parameter {
             Parameter::HeatCapacityRatio => "gas.heat_capacity_ratio",
             Parameter::MolarMass => "gas.molar_mass",
-            Parameter::MoleFraction => "gas",
+            Parameter::MoleFraction | Parameter::DataRange => "gas",
             Parameter::FillPressure => "fill.pressure",
             Parameter::FillTemperature => "fill.temperature",
+            Parameter::RelativeHumidity => "humidity",
+            Parameter::PressureFactor => "measured.pressure_change",
             Parameter::WallSpeed => "wall.speed",
             Parameter::WallImpedance => "wall.impedance",
             _ if matches!(self.speed, Speed::Given(_)) => "shock_speed",

@@ -4,14 +4,17 @@
 //! [`Shot::read`] never guesses: whatever is unknown, missing, impossible or doubtful is a [`RecordError`] with the full
 //! path, the text as typed and the remedy.
 
+mod alternatives;
 mod check;
 mod digest;
+mod driven;
 mod error;
 mod flag;
 mod format;
 mod gas;
 mod hazard;
 mod input;
+mod leak;
 mod monte_carlo;
 mod optional;
 mod quantity;
@@ -20,16 +23,19 @@ mod read;
 mod reduce;
 mod report;
 mod shot;
+mod species;
 mod station;
 mod text;
 mod tree;
 mod unit;
 
 pub use digest::input_digest;
+pub use driven::{GAS_DATA, GasNotes};
 pub use error::{ErrorKind, RecordError};
 pub use flag::Flag;
 pub use format::value_with_uncertainty;
-pub use gas::{Component, ConstantGas, GasRecord, HeatCapacity};
+pub use gas::{Component, ConstantGas, GasRecord};
+pub use leak::Leak;
 pub use optional::{Driver, Measured, Survey, Tube, Wall};
 pub use quantity::{Absolute, Coverage, Mark, Quantity, QuantityError, Uncertainty};
 pub use read::Entry;
@@ -37,5 +43,6 @@ pub use report::{
     BudgetLine, Correlation, Fit, FitLine, Incident, LeftOut, MadeBy, Reflected, Report, ReportQuantity, ReportState, Share, States,
 };
 pub use shot::{Fill, Shot, Speed};
+pub use species::OwnSpecies;
 pub use station::Station;
 pub use unit::{Dimension, Unit};

@@ -80,14 +80,20 @@ impl Shot {
             return refuse(wrong, format!("take {FEWEST_TRIALS} or more"));
         }
         let mut report = self.reduce()?;
-        let (reduction, _) = self.reduction()?;
-        report.flags.push(check(&reduction, seed, most_trials, text::pressure_unit(self), progress));
+        let unit = text::pressure_unit(self);
+        report.flags.push(self.with_reduction(|reduction, _| check(reduction, seed, most_trials, unit, progress))?);
         report.made_by.seed = Some(seed);
         Ok(report)
     }
 }
 
-fn check(reduction: &Reduction, seed: u64, max_trials: u64, pressure: Option<Unit>, progress: &mut dyn FnMut(Progress) -> bool) -> Flag {
+fn check(
+    reduction: &Reduction<'_>,
+    seed: u64,
+    max_trials: u64,
+    pressure: Option<Unit>,
+    progress: &mut dyn FnMut(Progress) -> bool,
+) -> Flag {
     let not_run = |why: String| Flag::new("monte-carlo-not-run", format!("the uncertainties were not checked by a Monte Carlo run: {why}"));
     if OUTPUTS.iter().any(|(output, ..)| reduction.estimate(*output).standard_uncertainty.is_none_or(|standard| standard == 0.0)) {
         return not_run("an input states no uncertainty".into());
@@ -102,7 +108,7 @@ fn check(reduction: &Reduction, seed: u64, max_trials: u64, pressure: Option<Uni
     }
 }
 
-fn outcome(reduction: &Reduction, run: &MonteCarlo, pressure: Option<Unit>) -> Flag {
+fn outcome(reduction: &Reduction<'_>, run: &MonteCarlo, pressure: Option<Unit>) -> Flag {
     let mut differing = String::new();
     for ((output, name), summary) in OUTPUTS.iter().zip(run.outputs()) {
         let linear = reduction.estimate(*output);

@@ -38,6 +38,8 @@ pub struct Measured {
     pub pressure_5: Option<(Quantity, Absolute)>,
     /// The step p5 − p1.
     pub rise: Option<Quantity>,
+    /// Change of the pressure at the end wall after the reflection, up to the time of interest, relative to p5.
+    pub pressure_change: Option<Quantity>,
 }
 
 /// The tube; lengths in m, pressures absolute.
@@ -283,7 +285,7 @@ fn marked_pressure(inner: Fields, key: &str, ambient: Option<&Quantity>, reading
 pub(super) fn measured(fields: Fields, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Option<Measured>, RecordError> {
     let Some(node) = fields.get("measured") else { return Ok(None) };
     let inner = Fields::new(node, "measured")?;
-    inner.allow(&["pressure_2", "pressure_5", "rise"])?;
+    inner.allow(&["pressure_2", "pressure_5", "rise", "pressure_change"])?;
     let rise = inner.quantity(reading, "rise", Dimension::Pressure)?;
     if let Some(rise) = rise.as_ref().filter(|rise| rise.mark() != Mark::Unmarked) {
         let wrong = "a rise is a difference of pressures and is neither gauge nor absolute";
@@ -293,7 +295,23 @@ pub(super) fn measured(fields: Fields, ambient: Option<&Quantity>, reading: &mut
         pressure_2: pressure(inner, "pressure_2", ambient, reading)?,
         pressure_5: pressure(inner, "pressure_5", ambient, reading)?,
         rise,
+        pressure_change: pressure_change(inner, reading)?,
     }))
+}
+
+fn pressure_change(measured: Fields, reading: &mut Reading) -> Result<Option<Quantity>, RecordError> {
+    let Some(change) = measured.quantity(reading, "pressure_change", Dimension::Fraction)? else { return Ok(None) };
+    let value = change.value().to_f64();
+    if value <= -1.0 {
+        let wrong = "the pressure cannot fall by all of it";
+        let remedy = "write the change relative to p5, like \"6 ± 1 %\"";
+        return Err(RecordError::new(ErrorKind::Value, "measured.pressure_change", change.typed(), wrong, remedy));
+    }
+    if !(-0.5..=1.0).contains(&value) {
+        let question = "a change of the pressure this large is no drift of a plateau; is it right?";
+        reading.ask("measured.pressure_change", change.typed(), question)?;
+    }
+    Ok(Some(change))
 }
 
 pub(super) fn tube(fields: Fields, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Option<Tube>, RecordError> {

@@ -4,16 +4,18 @@ use alloc::format;
 use alloc::string::{String, ToString};
 use alloc::vec::Vec;
 
+use super::alternatives::alternatives;
 use super::check;
+use super::driven::GasNotes;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
-use super::gas::ConstantGas;
 use super::optional::Wall;
 use super::quantity::{Coverage, Mark, Quantity};
 use super::report::{
     BudgetLine, Correlation, Fit, FitLine, Incident, LeftOut, MadeBy, Reflected, Report, ReportQuantity, ReportState, Share, States,
 };
 use super::shot::{Shot, Speed};
+use crate::gas::{HeatCapacityModel, MixtureChange};
 use crate::number::{Enclosure, Known};
 use crate::shock::Output;
 use crate::shot::{
@@ -41,39 +43,47 @@ impl Shot {
     /// # Ok::<(), endwall::record::RecordError>(())
     /// ```
     pub fn reduce(&self) -> Result<Report, RecordError> {
-        self.reduction().map(|(reduction, gas)| report(self, &reduction, &gas))
+        self.with_reduction(|reduction, notes| report(self, reduction, notes))
     }
 
-    /// The reduction behind [`reduce`](Self::reduce), for a Monte Carlo run or further outputs, and the gas that it took.
+    /// Calls a function with the reduction behind [`reduce`](Self::reduce), for a Monte Carlo run or further outputs, and with what the gas was made of.
     ///
     /// # Errors
     /// As for [`reduce`](Self::reduce).
-    pub fn reduction(&self) -> Result<(Reduction, ConstantGas), RecordError> {
-        let gas = self.gas.constant(self.heat_capacity)?;
-        let stations = self.fit_stations();
-        let speed = match &self.speed {
-            Speed::Stations(_) => SpeedSource::Stations(&stations, self.fit_settings()),
-            Speed::Given(speed) => SpeedSource::Given(measured(speed)),
-        };
-        let exact_unless = |value: crate::number::Rational, uncertainty: Option<f64>| Measured::new(value, uncertainty.unwrap_or(0.0));
-        let shot = crate::shot::Shot {
-            heat_capacity_ratio: exact_unless(gas.heat_capacity_ratio, gas.heat_capacity_ratio_uncertainty),
-            molar_mass: exact_unless(gas.molar_mass, gas.molar_mass_uncertainty),
-            pressure: self.absolute_fill_pressure(),
-            temperature: measured(&self.fill.temperature),
-            speed,
-            wall: match &self.wall {
-                None => EndWall::Rigid,
-                Some(Wall::Speed(velocity)) => EndWall::Moving(measured(velocity)),
-                Some(Wall::Impedance(impedance)) => EndWall::Yielding(measured(impedance)),
-            },
-        };
-        let reduction = reduce(&shot).map_err(|error| match error {
-            ReductionError::Fit(error) => self.refused_fit(error),
-            ReductionError::Input(error) => self.refused(error),
-            other @ ReductionError::Uncertainty { .. } => RecordError::new(ErrorKind::Value, "", "", format!("{other}"), ""),
-        })?;
-        Ok((reduction, gas))
+    pub fn with_reduction<T>(&self, compute: impl FnOnce(&Reduction<'_>, &GasNotes) -> T) -> Result<T, RecordError> {
+        self.with_model(self.heat_capacity, compute)
+    }
+
+    /// The same with another choice of heat capacity.
+    pub(super) fn with_model<T>(
+        &self,
+        model: HeatCapacityModel,
+        compute: impl FnOnce(&Reduction<'_>, &GasNotes) -> T,
+    ) -> Result<T, RecordError> {
+        self.with_gas(model, |gas, notes| {
+            let stations = self.fit_stations();
+            let speed = match &self.speed {
+                Speed::Stations(_) => SpeedSource::Stations(&stations, self.fit_settings()),
+                Speed::Given(speed) => SpeedSource::Given(measured(speed)),
+            };
+            let shot = crate::shot::Shot {
+                gas,
+                pressure: self.absolute_fill_pressure(),
+                temperature: measured(&self.fill.temperature),
+                speed,
+                wall: match &self.wall {
+                    None => EndWall::Rigid,
+                    Some(Wall::Speed(velocity)) => EndWall::Moving(measured(velocity)),
+                    Some(Wall::Impedance(impedance)) => EndWall::Yielding(measured(impedance)),
+                },
+            };
+            let reduction = reduce(&shot).map_err(|error| match error {
+                ReductionError::Fit(error) => self.refused_fit(error),
+                ReductionError::Input(error) => self.refused(error),
+                other => RecordError::new(ErrorKind::Value, "", "", format!("{other}"), ""),
+            })?;
+            Ok(compute(&reduction, &notes))
+        })
     }
 
     /// The fill pressure with the degrees of freedom of gauge and barometer combined (JCGM 100:2008, G.4).
@@ -103,7 +113,7 @@ fn measured(quantity: &Quantity) -> Measured {
     Measured { value: Known::from(quantity.value()), uncertainty }
 }
 
-fn report(shot: &Shot, reduction: &Reduction, gas: &ConstantGas) -> Report {
+fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
     let estimate = |output, unit| figure(&reduction.estimate(output), unit);
     let state = |pressure, temperature, outputs: [Output; 2], gas_speed| ReportState {
         pressure,
@@ -129,13 +139,13 @@ fn report(shot: &Shot, reduction: &Reduction, gas: &ConstantGas) -> Report {
             estimate(Output::Pressure5, "Pa"),
             estimate(Output::Temperature5, "K"),
             [Output::Density5, Output::SoundSpeed5],
-            reduction.wall_reflection().map_or_else(at_rest, |_| figure(&reduction.wall_velocity(), "m/s")),
+            if matches!(reduction.wall(), EndWall::Rigid) { at_rest() } else { figure(&reduction.wall_velocity(), "m/s") },
         ),
     };
     let step = estimate(Output::Step, "Pa");
     let mut flags = shot.flags.clone();
+    flags.extend(notes.flags.iter().cloned());
     flags.extend(check::result(shot, reduction, &states, &step));
-    let exact = if gas.heat_capacity_ratio_uncertainty.is_none() && gas.molar_mass_uncertainty.is_none() { ", taken as exact" } else { "" };
     Report {
         incident: Incident {
             speed: estimate(Output::ShockSpeed, "m/s"),
@@ -145,15 +155,16 @@ fn report(shot: &Shot, reduction: &Reduction, gas: &ConstantGas) -> Report {
         states,
         reflected: Reflected { speed: estimate(Output::ReflectedSpeed, "m/s"), mach: estimate(Output::ReflectedMach, "1") },
         step,
+        heat_capacity: alternatives(shot, reduction),
         fit: reduction.fit().map(|fit| fit_lines(shot, fit)),
         budget: budget(reduction),
         correlation: Correlation { temperature_pressure: reduction.correlation(Output::Temperature5, Output::Pressure5) },
         flags,
-        made_by: MadeBy::this_version(shot, &format!("{}{exact}", gas.source)),
+        made_by: MadeBy::this_version(shot, &notes.source),
     }
 }
 
-fn figure(estimate: &Estimate, unit: &'static str) -> ReportQuantity {
+pub(super) fn figure(estimate: &Estimate, unit: &'static str) -> ReportQuantity {
     let finite = |value: Option<f64>| value.filter(|value| value.is_finite());
     ReportQuantity {
         value: estimate.value,
@@ -213,29 +224,36 @@ pub(super) fn station_name(shot: &Shot, at: usize) -> String {
     }
 }
 
-/// One line for each input with an uncertainty; inputs taken as exact have none.
-fn budget(reduction: &Reduction) -> Vec<BudgetLine> {
+/// One line for each input with an uncertainty; inputs taken as exact have none, and all changes of the composition form one.
+fn budget(reduction: &Reduction<'_>) -> Vec<BudgetLine> {
     let shares = [Output::Temperature5, Output::Pressure5, Output::Step].map(|output| reduction.shares(output));
     let stated = reduction.budget().iter().enumerate().filter_map(|(at, line)| Some((at, line.source, line.uncertainty?.standard)));
-    stated
-        .filter(|(.., standard)| *standard > 0.0)
-        .map(|(at, source, standard_uncertainty)| {
-            let [temperature, pressure, step] = shares.map(|shares| shares.and_then(|shares| shares.get(at).copied()));
-            BudgetLine {
+    let mut lines: Vec<BudgetLine> = Vec::new();
+    for (at, source, standard_uncertainty) in stated.filter(|(.., standard)| *standard > 0.0) {
+        let [temperature, pressure, step] = shares.map(|shares| shares.and_then(|shares| shares.get(at).copied()));
+        let share = Share { temperature, pressure, step };
+        let is_composition = matches!(source, Source::Mixture(change) if change != MixtureChange::Data);
+        match lines.iter_mut().find(|line| is_composition && line.input == source.name()) {
+            Some(line) => {
+                line.standard_uncertainty = libm::hypot(line.standard_uncertainty, standard_uncertainty);
+                line.share = line.share.plus(&share);
+            }
+            None => lines.push(BudgetLine {
                 input: source.name().to_string(),
                 standard_uncertainty,
-                share: Share { temperature, pressure, step },
+                share,
                 unit: match source {
-                    Source::HeatCapacityRatio => "1",
+                    Source::HeatCapacityRatio | Source::Mixture(_) => "1",
                     Source::FillPressure => "Pa",
                     Source::FillTemperature => "K",
                     Source::MolarMass => "kg/mol",
                     Source::EndWall if matches!(reduction.wall(), EndWall::Yielding(_)) => "Pa s/m",
                     Source::Fit(_) | Source::ShockSpeed | Source::EndWall => "m/s",
                 },
-            }
-        })
-        .collect()
+            }),
+        }
+    }
+    lines
 }
 
 /// A flag for what the record states and the reduction leaves aside.

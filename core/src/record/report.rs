@@ -130,6 +130,60 @@ pub struct Share {
     pub step: Option<f64>,
 }
 
+impl Share {
+    /// The sum, for inputs that form one line.
+    pub(super) fn plus(&self, other: &Self) -> Self {
+        let sum = |a: Option<f64>, b: Option<f64>| a.zip(b).map(|(a, b)| a + b);
+        Self {
+            temperature: sum(self.temperature, other.temperature),
+            pressure: sum(self.pressure, other.pressure),
+            step: sum(self.step, other.step),
+        }
+    }
+}
+
+/// The choice of heat capacity.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct HeatCapacityChoice {
+    /// The one with which the states were computed.
+    pub chosen: &'static str,
+    /// Every choice at the same shock speed, the chosen one among them; empty for a gas given by its heat capacity ratio.
+    pub beside: Vec<Alternative>,
+    /// Relaxation times of vibration.
+    pub relaxation: Vec<Relaxation>,
+}
+
+/// The states for one choice of heat capacity. The spread of the choices is no uncertainty and is not added to one.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Alternative {
+    /// The choice.
+    pub heat_capacity: &'static str,
+    /// T2, K; `None` where the states leave the data.
+    #[serde(rename = "2.temperature")]
+    pub temperature_2: Option<ReportQuantity>,
+    /// T5, K.
+    #[serde(rename = "5.temperature")]
+    pub temperature: Option<ReportQuantity>,
+    /// p5, Pa.
+    #[serde(rename = "5.pressure")]
+    pub pressure: Option<ReportQuantity>,
+}
+
+/// Vibrational relaxation time of a species by an empirical formula.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Relaxation {
+    /// The species.
+    pub species: String,
+    /// In state 2, s.
+    #[serde(rename = "2")]
+    pub incident: Option<f64>,
+    /// In state 5, s.
+    #[serde(rename = "5")]
+    pub reflected: Option<f64>,
+    /// The formula is known to hold within this factor, up and down.
+    pub factor: f64,
+}
+
 /// One line of the uncertainty budget; correlated inputs form one line.
 #[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct BudgetLine {
@@ -188,6 +242,8 @@ pub struct Report {
     pub reflected: Reflected,
     /// p5 − p1, Pa.
     pub step: ReportQuantity,
+    /// The heat capacity that was chosen, and what the others would give.
+    pub heat_capacity: HeatCapacityChoice,
     /// `None` without stations.
     pub fit: Option<Fit>,
     /// The uncertainty budget.

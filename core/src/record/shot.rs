@@ -7,14 +7,17 @@ use alloc::vec::Vec;
 use super::digest::input_digest;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
-use super::gas::{self, GasRecord, HeatCapacity};
+use super::gas::{self, GasRecord};
 use super::hazard;
+use super::leak::{self, Leak};
 use super::optional::{self, Driver, Measured, Survey, Tube, Wall};
 use super::quantity::{Absolute, Mark, Quantity};
 use super::read::{self, Entry, Fields, Reading};
+use super::species::{self, OwnSpecies};
 use super::station::{self, Station};
 use super::tree::{self, Node};
 use super::unit::Dimension;
+use crate::gas::HeatCapacityModel;
 
 /// The fill of the driven section.
 #[derive(Clone, Debug, PartialEq)]
@@ -45,7 +48,9 @@ pub struct Shot {
     /// The test gas.
     pub gas: GasRecord,
     /// The heat capacity that the states are to be computed with.
-    pub heat_capacity: HeatCapacity,
+    pub heat_capacity: HeatCapacityModel,
+    /// Species that the record describes.
+    pub species: Vec<OwnSpecies>,
     /// State 1.
     pub fill: Fill,
     /// Stations or a speed.
@@ -58,10 +63,10 @@ pub struct Shot {
     pub survey: Option<Survey>,
     /// Ambient pressure, Pa, absolute.
     pub ambient: Option<Quantity>,
-    /// Relative humidity of the fill.
+    /// Relative humidity of the air in the gas, at the temperature of the fill and the ambient pressure.
     pub humidity: Option<Quantity>,
-    /// Rise of pressure in the closed, evacuated tube, Pa/s.
-    pub leak: Option<Quantity>,
+    /// Air that leaked into the fill.
+    pub leak: Option<Leak>,
     /// An end wall that is not rigid.
     pub wall: Option<Wall>,
     /// Measured values, to be compared.
@@ -80,11 +85,12 @@ pub struct Shot {
     pub input_digest: String,
 }
 
-const FIELDS: [&str; 22] = [
+const FIELDS: [&str; 23] = [
     "record",
     "name",
     "gas",
     "heat_capacity",
+    "species",
     "fill",
     "stations",
     "shock_speed",
@@ -134,7 +140,8 @@ impl Shot {
         let name = fields.text("name")?.unwrap_or("").to_string();
         let example = "{ \"Ar\": \"98.5 %\", … }";
         let gas = gas::read(fields.required("gas", example)?, "gas", &mut reading, &mut flags)?;
-        let heat_capacity = gas::heat_capacity(fields.text("heat_capacity")?, &gas)?;
+        let heat_capacity = gas::heat_capacity(fields.text("heat_capacity")?, &gas, &mut flags)?;
+        let species = species::read(fields, &mut reading)?;
         let ambient = optional::ambient(fields, &mut reading)?;
         let fill = fill(fields, ambient.as_ref(), &mut reading, &mut flags)?;
         let speed = speed(fields, &mut reading, &mut flags)?;
@@ -142,7 +149,7 @@ impl Shot {
         let clock = optional::clock(fields, &mut reading)?;
         let survey = optional::survey(fields, &mut reading)?;
         let humidity = optional::humidity(fields, &mut reading)?;
-        let leak = fields.quantity(&mut reading, "leak", Dimension::PressureRate)?;
+        let leak = leak::read(fields, &mut reading)?;
         let wall = optional::wall(fields, &mut reading)?;
         let measured = optional::measured(fields, ambient.as_ref(), &mut reading)?;
         let tube = optional::tube(fields, ambient.as_ref(), &mut reading)?;
@@ -154,7 +161,7 @@ impl Shot {
                 flags.push(Flag::new("not-used", text));
             }
         }
-        for key in ["humidity", "leak", "tube", "driver"].into_iter().filter(|key| fields.get(key).is_some()) {
+        for key in ["tube", "driver"].into_iter().filter(|key| fields.get(key).is_some()) {
             flags.push(Flag::not_used(key));
         }
         if let Some(flag) = hazard::can_burn(&gas, driver.as_ref()) {
@@ -166,6 +173,7 @@ impl Shot {
             name,
             gas,
             heat_capacity,
+            species,
             fill,
             speed,
             attenuation,

@@ -27,6 +27,7 @@ pub(super) fn render(report: &Report, shot: &Shot) -> String {
         fit_section(&mut page, fit, report, shot);
     }
     states(&mut page, report, units);
+    heat_capacity(&mut page, report, units);
     budget(&mut page, report);
     digits(&mut page, report);
     page.heading("Before anybody acts on these numbers");
@@ -193,6 +194,70 @@ fn states(page: &mut Page, report: &Report, units: DisplayUnits) {
         row(["Reflected shock, speed in the laboratory", &units.show_with_factor(&report.reflected.speed)]),
         row(["Reflected shock, Mach number relative to gas 2", &units.show_with_factor(&report.reflected.mach)]),
     ]);
+}
+
+/// The choices side by side, and how long vibration takes.
+fn heat_capacity(page: &mut Page, report: &Report, units: DisplayUnits) {
+    let choice = &report.heat_capacity;
+    if choice.beside.is_empty() {
+        return;
+    }
+    page.heading("Choice of the heat capacity");
+    let mut rows = alloc::vec![row(["heat capacity", "T2", "T5", "p5", "T5 less the chosen"])];
+    let chosen = report.states.reflected.temperature.value;
+    for other in &choice.beside {
+        let shown =
+            |quantity: &Option<ReportQuantity>| quantity.as_ref().map_or("outside the data".to_string(), |quantity| units.show(quantity));
+        let is_chosen = other.heat_capacity == choice.chosen;
+        let difference = other.temperature.as_ref().map_or(String::new(), |own| {
+            if is_chosen { "chosen".to_string() } else { format!("{:+.2} %", 100.0 * (own.value / chosen - 1.0)) }
+        });
+        rows.push(row([
+            other.heat_capacity,
+            &shown(&other.temperature_2),
+            &shown(&other.temperature),
+            &shown(&other.pressure),
+            &difference,
+        ]));
+    }
+    page.table(&rows);
+    page.paragraph(
+        "",
+        "All at the same shock speed. The spread of the choices is a question of the model: it is no uncertainty and is not part of U.",
+    );
+    if choice.relaxation.is_empty() {
+        return;
+    }
+    page.line("");
+    let time = |seconds: Option<f64>| seconds.map_or("-".to_string(), relaxation_time);
+    let mut rows = alloc::vec![row(["vibrational relaxation time", "in state 2", "in state 5", "known within a factor of"])];
+    for relaxing in &choice.relaxation {
+        rows.push(row([&relaxing.species, &time(relaxing.incident), &time(relaxing.reflected), &significant(relaxing.factor, 2)]));
+    }
+    page.table(&rows);
+    page.paragraph("", &nearer(choice));
+}
+
+/// What the relaxation times say about the choice.
+fn nearer(choice: &super::report::HeatCapacityChoice) -> String {
+    let times = || choice.relaxation.iter().filter_map(|relaxing| relaxing.reflected);
+    let (quickest, slowest) = (times().fold(f64::INFINITY, f64::min), times().fold(0.0, f64::max));
+    let between = if quickest < slowest { "; between them some species are, some are not" } else { "" };
+    format!(
+        "An observation in state 5 that is over well before {} sees frozen vibration, one that begins well after {} sees equilibrium{between}. Where a time in state 2 is much longer than the gas spends there, \"frozen then equilibrium\" is nearer than \"equilibrium\". By the formula of Millikan and White (1963).",
+        relaxation_time(quickest),
+        relaxation_time(slowest)
+    )
+}
+
+fn relaxation_time(seconds: f64) -> String {
+    if seconds >= 1.0 {
+        format!("{} s", significant(seconds, 2))
+    } else if seconds >= 1e-3 {
+        format!("{} ms", significant(seconds * 1e3, 2))
+    } else {
+        format!("{} us", significant(seconds * 1e6, 2))
+    }
 }
 
 fn budget(page: &mut Page, report: &Report) {

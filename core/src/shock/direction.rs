@@ -197,3 +197,64 @@ fn in_strength(output: Output) -> Dependence {
         _ => Dependence::In(Up),
     }
 }
+
+#[cfg(test)]
+mod tests {
+    extern crate std;
+    use super::*;
+    use crate::gas::Gamma;
+    use crate::number::Dual;
+    use crate::shock::{Flow, Jump, Problem};
+
+    /// Slopes of an output with respect to the entry, γ − 1, p1, T1 and W, each times its input, where the entry is that of a shock of M² − 1 = z.
+    fn slopes(entry: Entry, output: Output, gamma: f64, z: f64) -> [f64; 5] {
+        let (excess, pressure, temperature, molar_mass) = (gamma - 1.0, 2e4, 300.0, 0.03);
+        let plain = Gamma::from_excess(excess);
+        let value = Flow::new(Jump::new(plain, z), plain, pressure, temperature, molar_mass).evaluate(entry.output());
+        let inputs = [value, excess, pressure, temperature, molar_mass];
+        let variable = |at: usize| Dual::<f64, 5>::variable(inputs[at], at);
+        let problem = Problem {
+            entry: variable(0),
+            gamma: Gamma::from_excess(variable(1)),
+            pressure: variable(2),
+            temperature: variable(3),
+            molar_mass: variable(4),
+        };
+        let branch = Problem { entry: value, gamma: plain, pressure, temperature, molar_mass }.branch(entry);
+        let z = problem.mach_squared_excess(entry, branch);
+        let flow = Flow::new(Jump::new(problem.gamma, z), problem.gamma, problem.pressure, problem.temperature, problem.molar_mass);
+        let result = flow.evaluate(output);
+        core::array::from_fn(|at| result.slopes()[at] * inputs[at] / result.value())
+    }
+
+    /// Every direction that is claimed, against the slopes at strengths from M = 1.005 to 100 and γ from 1.001 to 20.
+    #[test]
+    fn every_claimed_direction_has_the_sign_of_its_slope() {
+        let mut claims = 0;
+        for entry in Entry::ALL {
+            for output in Output::ALL.into_iter().filter(|output| *output != entry.output()) {
+                for gamma in [1.001, 1.05, 1.2, 1.4, 1.6, 1.666, 1.8, 2.5, 2.99, 3.5, 6.0, 20.0] {
+                    for z in [0.01, 0.1, 0.3, 1.0, 3.0, 10.0, 30.0, 100.0, 1e4] {
+                        let slopes = slopes(entry, output, gamma, z);
+                        let fill = |input| with_fill(entry, output, input, gamma);
+                        let directions = [
+                            with_entry(output),
+                            with_gamma(entry, output),
+                            fill(FillInput::Pressure),
+                            fill(FillInput::Temperature),
+                            fill(FillInput::MolarMass),
+                        ];
+                        for (at, (direction, slope)) in directions.into_iter().zip(slopes).enumerate() {
+                            let Some(direction) = direction else { continue };
+                            claims += 1;
+                            let along = if direction == Up { slope } else { -slope };
+                            // What rounding leaves of a slope that is zero.
+                            assert!(along > -1e-8, "{entry:?} {output:?} input {at}, γ {gamma}, z {z}: {direction:?} but {slope}");
+                        }
+                    }
+                }
+            }
+        }
+        assert!(claims > 100_000, "{claims}");
+    }
+}

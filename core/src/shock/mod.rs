@@ -19,5 +19,5 @@ pub use output::{Flow, Form, Output};
 pub use ratios::{Ratios, error_counts, nine_ratios};
 pub use relations::{Jump, Quadratic, from_density_excess, from_gas_speed_squared, from_pressure_excess, from_shock_speed, mach_excess};
 pub use state::State;
-pub use thermal::{PlainShock, ThermalError, ThermalFill, ThermalFlow, ThermalShock};
+pub use thermal::{PlainFill, PlainShock, ThermalError, ThermalFill, ThermalFlow, ThermalInput, ThermalShock};
 pub use wall::{Approach, WallReflection, Wave};

@@ -59,7 +59,7 @@ impl Incident {
 
     /// Total-pressure loss 1 − pt2/pt1, accurate for the weakest shock: it vanishes as (16γ/(3(γ+1)²))·(M − 1)³.
     pub fn total_pressure_loss(&self) -> Enclosure {
-        self.of_logarithm(Output::PressureRatio, |l| -(l * l.expm1_ratio()), |l| -(l * l.expm1_ratio()))
+        self.of_logarithm(Output::DensityRatio, |l| -(l * l.expm1_ratio()), |l| -(l * l.expm1_ratio()))
     }
 
     fn of_logarithm(
@@ -79,7 +79,40 @@ impl Incident {
             let (problem, z) = self.over_box(variables);
             slopes(logarithm(problem.gamma, z))
         };
-        // Both directions are those of an output that falls or grows with the strength alone.
+        // Both directions are those of an output that depends on M and γ alone: the ratio goes with M2, falling with M and growing with γ, the loss
+        // with ρ2/ρ1. With γ at fixed z since −ln(pt2/pt1) is the integral over z of 2z²/((A/γ)·B·(1+z)), of which ∂[(A/γ)·B]/∂γ =
+        // (1 + 1/γ + 2z)(1 + z) − (γ+1 + (γ−1)z)/γ² > 0, because (γ+1)/γ² ≤ 1 + 1/γ and (γ−1)/γ² ≤ 1/4.
         self.range_of(direction, over_box, at)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::gas::{Fill, Gas, HeatCapacityRatio};
+    use crate::number::{Enclosure, Known};
+    use crate::shock::{Entry, Incident};
+
+    /// At a given Mach number the loss falls and the ratio grows with γ: the range runs from one end of γ to the other.
+    #[test]
+    fn a_tolerance_of_gamma_bounds_ratio_and_loss() {
+        let shock = |gamma: Known, mach: f64| {
+            let gas = Gas::new(HeatCapacityRatio::new(gamma).unwrap(), 0.028).unwrap();
+            Incident::new(&Fill::new(gas, 1e4, 296.0).unwrap(), Entry::Mach, mach).unwrap()
+        };
+        for mach in [1.01, 2.0, 30.0] {
+            for (low, high) in [(1.000_001, 1.1), (1.3, 1.4), (1.6, 3.0), (3.0, 100.0)] {
+                let range = shock(Enclosure::new(low, high).unwrap().into(), mach);
+                for gamma in [low, f64::midpoint(low, high), high] {
+                    let point = shock(gamma.into(), mach);
+                    let pairs = [
+                        (range.total_pressure_ratio(), point.total_pressure_ratio()),
+                        (range.total_pressure_loss(), point.total_pressure_loss()),
+                    ];
+                    for (range, point) in pairs {
+                        assert!(range.low() <= point.high() && point.low() <= range.high(), "{mach} {gamma} {range:?} {point:?}");
+                    }
+                }
+            }
+        }
     }
 }

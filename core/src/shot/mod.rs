@@ -1,5 +1,6 @@
 //! Floor 5: a shot. Arrival times to a shock speed, reduction to states, uncertainty, Monte Carlo.
 mod arrival;
+mod constant;
 mod coverage;
 mod coverage_interval;
 mod estimate;
@@ -15,6 +16,7 @@ mod propagate;
 mod random;
 mod reduction;
 mod station;
+mod thermal;
 mod validate;
 mod validation;
 pub use coverage::{CoverageError, LEVEL_TWO_SIGMA, coverage_factor, effective_degrees_of_freedom};
@@ -29,7 +31,8 @@ pub use monte_carlo_result::{
 pub use propagate::{Inputs, PropagationError};
 pub use random::Generator;
 pub use reduction::{
-    BudgetLine, Distribution, EndWall, Estimate, Measured, Reduction, ReductionError, Shot, Source, SpeedSource, Uncertainty, reduce,
+    BudgetLine, Distribution, DrivenGas, EndWall, Estimate, MAX_CHANGES, Measured, Reduction, ReductionError, Shot, Solved, Source,
+    SpeedSource, Uncertainty, reduce,
 };
 pub use station::{MAX_STATIONS, Station, seconds_between};
 pub use validation::{Validation, numerical_tolerance, validate_linear};

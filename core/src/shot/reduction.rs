@@ -4,13 +4,15 @@ use super::fit::{FitSettings, fit};
 use super::fit_error::FitError;
 use super::fit_result::{Fit, FitSource};
 use super::station::Station;
-use crate::gas::{Fill, Gas, HeatCapacityRatio, InputError};
+use crate::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio, InputError, MixtureChange, ThermallyPerfectGas};
 use crate::number::{Enclosure, Known};
-use crate::shock::{Entry, Incident, WallReflection};
+use crate::shock::{Entry, Incident, ThermalError, ThermalFill, ThermalShock, WallReflection, Wave};
 use core::fmt;
 
-/// Lines of a budget, at most: seven of a fit (or one of a given speed), γ, W, p1, T1, wall.
-pub(super) const LINES: usize = 12;
+/// Lines of a budget, at most: seven of a fit (or one of a given speed), p1, T1, wall, and γ and W or the changes of a mixture.
+pub(super) const LINES: usize = 24;
+/// Uncertain changes of a mixture, at most.
+pub const MAX_CHANGES: usize = LINES - 10;
 /// Inputs of the model: shock speed, γ − 1, p1, T1, W, wall velocity or impedance. The Mach number is not one of them.
 pub(super) const VARIABLES: usize = 6;
 
@@ -31,7 +33,7 @@ pub enum Distribution {
 pub struct Uncertainty {
     /// Standard uncertainty, zero or more.
     pub standard: f64,
-    /// Degrees of freedom; infinite where it was stated and not estimated.
+    /// Degrees of freedom, one or more; infinite where it was stated and not estimated. With anything else no uncertainty is handed out.
     pub degrees_of_freedom: f64,
     /// Shape.
     pub distribution: Distribution,
@@ -86,19 +88,39 @@ pub enum EndWall {
     Yielding(Measured),
 }
 
+/// The driven gas.
+#[derive(Clone, Copy, Debug)]
+#[expect(clippy::large_enum_variant, reason = "a shot holds one of them, and there is no heap")]
+pub enum DrivenGas<'a> {
+    /// Of constant heat capacity.
+    ConstantHeatCapacity {
+        /// γ.
+        heat_capacity_ratio: Measured,
+        /// kg/mol.
+        molar_mass: Measured,
+    },
+    /// Of species with temperature-dependent heat capacity.
+    ThermallyPerfect {
+        /// The species and their fractions.
+        gas: ThermallyPerfectGas<'a>,
+        /// The heat capacity across the shocks.
+        model: HeatCapacityModel,
+        /// How uncertain the mixture is: independent changes with their standard uncertainties, at most [`MAX_CHANGES`].
+        changes: &'a [(MixtureChange, Uncertainty)],
+    },
+}
+
 /// What is known of a shot.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Shot<'a> {
-    /// Heat-capacity ratio of the driven gas.
-    pub heat_capacity_ratio: Measured,
-    /// Molar mass of the driven gas, kg/mol.
-    pub molar_mass: Measured,
+#[derive(Clone, Copy, Debug)]
+pub struct Shot<'s, 'g> {
+    /// Driven gas.
+    pub gas: DrivenGas<'g>,
     /// Fill pressure p1, Pa, absolute.
     pub pressure: Measured,
     /// Fill temperature T1, K.
     pub temperature: Measured,
     /// Incident shock.
-    pub speed: SpeedSource<'a>,
+    pub speed: SpeedSource<'s>,
     /// End wall.
     pub wall: EndWall,
 }
@@ -110,6 +132,10 @@ pub enum ReductionError {
     Fit(FitError),
     /// An input of the shock relations was refused.
     Input(InputError),
+    /// The shock has no proven answer.
+    Shock(ThermalError),
+    /// The mixture has more uncertain changes than [`MAX_CHANGES`]; this many.
+    Changes(usize),
     /// A stated standard uncertainty is negative or not a number.
     Uncertainty {
         /// Of which input.
@@ -124,6 +150,8 @@ impl fmt::Display for ReductionError {
         match self {
             Self::Fit(error) => error.fmt(f),
             Self::Input(error) => error.fmt(f),
+            Self::Shock(error) => error.fmt(f),
+            Self::Changes(count) => write!(f, "{count} uncertain fractions are more than a budget holds, {MAX_CHANGES}"),
             Self::Uncertainty { source, value } => {
                 write!(f, "standard uncertainty {value} of the {} must be zero or more", source.name())
             }
@@ -145,6 +173,15 @@ impl From<InputError> for ReductionError {
     }
 }
 
+impl From<ThermalError> for ReductionError {
+    fn from(error: ThermalError) -> Self {
+        match error {
+            ThermalError::Input(error) => Self::Input(error),
+            other => Self::Shock(other),
+        }
+    }
+}
+
 /// What a line of the budget is about.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 #[cfg_attr(feature = "serde", derive(serde::Serialize))]
@@ -163,6 +200,8 @@ pub enum Source {
     MolarMass,
     /// Velocity or impedance of the end wall.
     EndWall,
+    /// A change of the mixture.
+    Mixture(MixtureChange),
 }
 
 impl Source {
@@ -182,6 +221,8 @@ impl Source {
             Self::FillTemperature => "fill temperature",
             Self::MolarMass => "molar mass",
             Self::EndWall => "end wall",
+            Self::Mixture(MixtureChange::Data) => "gas data",
+            Self::Mixture(_) => "composition",
         }
     }
 
@@ -193,7 +234,8 @@ impl Source {
             Self::FillPressure => 2,
             Self::FillTemperature => 3,
             Self::MolarMass => 4,
-            Self::EndWall => 5,
+            // Mixtures have slopes of their own.
+            Self::EndWall | Self::Mixture(_) => 5,
         }
     }
 }
@@ -226,12 +268,21 @@ pub struct Estimate {
     pub expanded: Option<f64>,
 }
 
+/// The shocks of a shot.
+#[derive(Clone, Copy, Debug)]
+#[expect(clippy::large_enum_variant, reason = "a reduction holds one of them, and there is no heap")]
+pub enum Solved<'a> {
+    /// Into a gas of constant heat capacity; the reflection where the wall is not rigid.
+    Constant(Incident, Option<WallReflection>),
+    /// Into a thermally perfect gas.
+    Thermal(ThermalShock<'a>),
+}
+
 /// A reduced shot.
 #[derive(Clone, Copy, Debug)]
-pub struct Reduction {
-    incident: Incident,
+pub struct Reduction<'a> {
+    solved: Solved<'a>,
     wall: EndWall,
-    reflection: Option<WallReflection>,
     fit: Option<Fit>,
     lines: [BudgetLine; LINES],
     used: usize,
@@ -246,11 +297,13 @@ pub struct Reduction {
 /// ```
 /// use endwall::number::Rational;
 /// use endwall::shock::Output;
-/// use endwall::shot::{EndWall, Measured, Shot, SpeedSource, reduce};
+/// use endwall::shot::{DrivenGas, EndWall, Measured, Shot, SpeedSource, reduce};
 /// let exact = |text: &str| text.parse::<Rational>().unwrap();
 /// let shot = Shot {
-///     heat_capacity_ratio: Measured::exact(exact("7/5")),
-///     molar_mass: Measured::exact(exact("0.0289652")),
+///     gas: DrivenGas::ConstantHeatCapacity {
+///         heat_capacity_ratio: Measured::exact(exact("7/5")),
+///         molar_mass: Measured::exact(exact("0.0289652")),
+///     },
 ///     pressure: Measured::new(exact("100e3"), 100.0),
 ///     temperature: Measured::new(exact("295.15"), 0.5),
 ///     speed: SpeedSource::Given(Measured::new(exact("620"), 0.93)),
@@ -264,9 +317,7 @@ pub struct Reduction {
 /// assert!((step.standard_uncertainty.unwrap() - 6.34e3).abs() < 20.0);
 /// # Ok::<(), endwall::shot::ReductionError>(())
 /// ```
-pub fn reduce(shot: &Shot<'_>) -> Result<Reduction, ReductionError> {
-    let gas = Gas::new(HeatCapacityRatio::new(shot.heat_capacity_ratio.value)?, shot.molar_mass.value)?;
-    let fill = Fill::new(gas, shot.pressure.value, shot.temperature.value)?;
+pub fn reduce<'g>(shot: &Shot<'_, 'g>) -> Result<Reduction<'g>, ReductionError> {
     let (fitted, speed) = match shot.speed {
         SpeedSource::Stations(stations, settings) => {
             let fitted = fit(stations, &settings)?;
@@ -274,16 +325,9 @@ pub fn reduce(shot: &Shot<'_>) -> Result<Reduction, ReductionError> {
         }
         SpeedSource::Given(measured) => (None, measured.value),
     };
-    let incident = Incident::new(&fill, Entry::ShockSpeed, speed)?;
-    let reflection = match shot.wall {
-        EndWall::Rigid => None,
-        EndWall::Moving(velocity) => Some(incident.reflected_from_wall(velocity.value)?),
-        EndWall::Yielding(impedance) => Some(incident.reflected_from_yielding_wall(impedance.value)?),
-    };
     let mut reduction = Reduction {
-        incident,
+        solved: solve(shot, speed)?,
         wall: shot.wall,
-        reflection,
         fit: fitted,
         lines: [BudgetLine { source: Source::ShockSpeed, uncertainty: None }; LINES],
         used: 0,
@@ -302,15 +346,53 @@ pub fn reduce(shot: &Shot<'_>) -> Result<Reduction, ReductionError> {
     }
     reduction.add(Source::FillPressure, shot.pressure.uncertainty)?;
     reduction.add(Source::FillTemperature, shot.temperature.uncertainty)?;
-    reduction.add(Source::HeatCapacityRatio, shot.heat_capacity_ratio.uncertainty)?;
-    reduction.add(Source::MolarMass, shot.molar_mass.uncertainty)?;
+    match shot.gas {
+        DrivenGas::ConstantHeatCapacity { heat_capacity_ratio, molar_mass } => {
+            reduction.add(Source::HeatCapacityRatio, heat_capacity_ratio.uncertainty)?;
+            reduction.add(Source::MolarMass, molar_mass.uncertainty)?;
+        }
+        DrivenGas::ThermallyPerfect { changes, .. } => {
+            if changes.len() > MAX_CHANGES {
+                return Err(ReductionError::Changes(changes.len()));
+            }
+            for (change, uncertainty) in changes {
+                reduction.add(Source::Mixture(*change), Some(*uncertainty))?;
+            }
+        }
+    }
     if let EndWall::Moving(wall) | EndWall::Yielding(wall) = shot.wall {
         reduction.add(Source::EndWall, wall.uncertainty)?;
     }
     Ok(reduction)
 }
 
-impl Reduction {
+/// The shocks at the nominal inputs.
+fn solve<'g>(shot: &Shot<'_, 'g>, speed: Known) -> Result<Solved<'g>, ReductionError> {
+    match shot.gas {
+        DrivenGas::ConstantHeatCapacity { heat_capacity_ratio, molar_mass } => {
+            let gas = Gas::new(HeatCapacityRatio::new(heat_capacity_ratio.value)?, molar_mass.value)?;
+            let fill = Fill::new(gas, shot.pressure.value, shot.temperature.value)?;
+            let incident = Incident::new(&fill, Entry::ShockSpeed, speed)?;
+            let reflection = match shot.wall {
+                EndWall::Rigid => None,
+                EndWall::Moving(velocity) => Some(incident.reflected_from_wall(velocity.value)?),
+                EndWall::Yielding(impedance) => Some(incident.reflected_from_yielding_wall(impedance.value)?),
+            };
+            Ok(Solved::Constant(incident, reflection))
+        }
+        DrivenGas::ThermallyPerfect { gas, model, .. } => {
+            let fill = ThermalFill::new(gas, model, shot.pressure.value, shot.temperature.value)?;
+            let shock = ThermalShock::new(&fill, Entry::ShockSpeed, speed)?;
+            Ok(Solved::Thermal(match shot.wall {
+                EndWall::Rigid => shock,
+                EndWall::Moving(velocity) => shock.reflected_from_wall(velocity.value)?,
+                EndWall::Yielding(impedance) => shock.reflected_from_yielding_wall(impedance.value)?,
+            }))
+        }
+    }
+}
+
+impl<'a> Reduction<'a> {
     fn add(&mut self, source: Source, uncertainty: Option<Uncertainty>) -> Result<(), ReductionError> {
         let refused = |stated: &Uncertainty| !(stated.standard >= 0.0 && stated.standard.is_finite());
         if let Some(stated) = uncertainty.filter(refused) {
@@ -323,9 +405,25 @@ impl Reduction {
         Ok(())
     }
 
-    /// The shock at the nominal inputs.
-    pub fn incident(&self) -> &Incident {
-        &self.incident
+    /// The shocks at the nominal inputs.
+    pub fn solved(&self) -> &Solved<'a> {
+        &self.solved
+    }
+
+    /// The shock into a gas of constant heat capacity, if it is one.
+    pub fn incident(&self) -> Option<&Incident> {
+        match &self.solved {
+            Solved::Constant(incident, _) => Some(incident),
+            Solved::Thermal(_) => None,
+        }
+    }
+
+    /// The shock into a thermally perfect gas, if it is one.
+    pub fn thermal(&self) -> Option<&ThermalShock<'a>> {
+        match &self.solved {
+            Solved::Constant(..) => None,
+            Solved::Thermal(shock) => Some(shock),
+        }
     }
 
     /// The fit of the arrival times, if there were any.
@@ -343,8 +441,11 @@ impl Reduction {
         &self.wall
     }
 
-    /// The reflection, where the wall is not rigid; then state 5 and the reflected wave are these.
-    pub fn wall_reflection(&self) -> Option<&WallReflection> {
-        self.reflection.as_ref()
+    /// The kind of wave that runs back from the wall.
+    pub fn wave(&self) -> Wave {
+        match &self.solved {
+            Solved::Constant(_, Some(reflection)) => reflection.wave,
+            Solved::Constant(_, None) | Solved::Thermal(_) => Wave::Shock,
+        }
     }
 }

@@ -3,7 +3,7 @@
 use super::ThermalError;
 use super::certify::{Problem, Root};
 use super::flow::{Ranges, ThermalFlow, reflected_stage};
-use super::plain::PlainShock;
+use super::plain::{PlainFill, PlainShock};
 use super::setting::Setting;
 use super::stage::GivenSpeed;
 use crate::gas::{HeatCapacity, HeatCapacityModel, InputError, Parameter, Rule, ThermallyPerfectGas, positive};
@@ -61,24 +61,20 @@ impl<'a> ThermalFill<'a> {
     /// The fill in balls, with the heat capacities of the model.
     pub(super) fn setting(&self, wall_speed: Ball) -> Setting<Ball> {
         let temperature = self.temperature.ball();
-        let full = *self.gas.heat_capacity();
-        let first = full.index_at(temperature.nearest());
-        let frozen = || HeatCapacity::constant(self.gas.frozen_heat_capacity(temperature));
-        let (incident, reflected) = match self.model {
-            HeatCapacityModel::Constant => {
-                let constant = HeatCapacity::constant(full.value(first, temperature));
-                (constant, constant)
-            }
-            HeatCapacityModel::Equilibrium => (full, full),
-            HeatCapacityModel::Frozen => (frozen(), frozen()),
-            HeatCapacityModel::FrozenThenEquilibrium => (frozen(), full),
-        };
-        let lagging = (self.model == HeatCapacityModel::FrozenThenEquilibrium).then_some(first);
-        let molar_mass = self.gas.molar_mass();
-        Setting { pressure: self.pressure.ball(), temperature, molar_mass, wall_speed, incident, reflected, lagging }
+        PlainFill {
+            model: self.model,
+            pressure: self.pressure.ball(),
+            temperature,
+            molar_mass: self.gas.molar_mass(),
+            full: *self.gas.heat_capacity(),
+            frozen: self.gas.frozen_heat_capacity(temperature),
+        }
+        .setting(temperature.nearest(), wall_speed)
     }
 }
 
+/// Bisections of the speed of a yielding wall.
+const SEARCH: u32 = 60;
 /// Solutions that cannot be told apart: either polynomial at a joint near T2, for each either one at a joint near T5.
 const FLOWS: usize = 4;
 
@@ -110,6 +106,7 @@ pub struct ThermalShock<'a> {
     fill: ThermalFill<'a>,
     entry: Entry,
     value: Known,
+    wall_speed: Ball,
     flows: [Option<ThermalFlow<Ball>>; FLOWS],
     steps: [u32; 2],
 }
@@ -122,7 +119,11 @@ impl<'a> ThermalShock<'a> {
     pub fn new(fill: &ThermalFill<'a>, entry: Entry, value: impl Into<Known>) -> Result<Self, ThermalError> {
         let value = value.into();
         positive(entry.parameter(), value)?;
-        let setting = fill.setting(Ball::whole(0));
+        Self::solved(fill, entry, value, Ball::whole(0))
+    }
+
+    fn solved(fill: &ThermalFill<'a>, entry: Entry, value: Known, wall_speed: Ball) -> Result<Self, ThermalError> {
+        let setting = fill.setting(wall_speed);
         let first = setting.incident.index_at(setting.temperature.nearest());
         let incident = match entry {
             Entry::ShockSpeed => setting.at_speed(value.ball()),
@@ -130,7 +131,90 @@ impl<'a> ThermalShock<'a> {
             _ => setting.at_mach_excess(first, value.ball() - Ball::whole(1)),
         };
         let (flows, steps) = solve(&setting, &incident, entry.parameter(), value.nominal())?;
-        Ok(Self { fill: *fill, entry, value, flows, steps })
+        Ok(Self { fill: *fill, entry, value, wall_speed, flows, steps })
+    }
+
+    /// The same shock reflected from an end wall that moves with a constant velocity V along the incident direction (positive: it recedes; m/s). State 5
+    /// is then the gas at the wall.
+    ///
+    /// # Errors
+    /// [`ThermalError`] for a velocity that is not finite, beyond 2^±200 or not below the gas speed u2 (an expansion would run back), and as for
+    /// [`ThermalShock::new`].
+    ///
+    /// ```
+    /// use endwall::gas::species::table;
+    /// use endwall::gas::{HeatCapacityModel, Portion, ThermallyPerfectGas};
+    /// use endwall::shock::{Entry, Output, ThermalFill, ThermalShock};
+    /// let nitrogen = [Portion { species: &table::N2, fraction: "1".parse()? }];
+    /// let fill = ThermalFill::new(ThermallyPerfectGas::new(&nitrogen)?, HeatCapacityModel::Equilibrium, 10e3, 295.0)?;
+    /// let rigid = ThermalShock::new(&fill, Entry::ShockSpeed, 1050.0)?;
+    /// let yielding = rigid.reflected_from_wall(100.0)?;
+    /// assert!(yielding.output(Output::Pressure5).certainly_less(rigid.output(Output::Pressure5)));
+    /// assert!(rigid.reflected_from_wall(900.0).is_err()); // the gas has 831 m/s
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    pub fn reflected_from_wall(&self, wall_speed: impl Into<Known>) -> Result<Self, ThermalError> {
+        let wall_speed = wall_speed.into();
+        let bounds = wall_speed.enclosure();
+        let refuse = |rule| InputError { parameter: Parameter::WallSpeed, value: wall_speed.nominal(), rule }.into();
+        if !bounds.is_proven() || bounds.low().abs().max(bounds.high().abs()) > Ball::LARGEST_ENTRY {
+            return Err(refuse(Rule::Between(-Ball::LARGEST_ENTRY, Ball::LARGEST_ENTRY)));
+        }
+        let gas_speed = self.output(Output::GasSpeed2);
+        if !bounds.certainly_less(gas_speed) {
+            return Err(refuse(Rule::Below(gas_speed.low())));
+        }
+        Self::solved(&self.fill, self.entry, self.value, wall_speed.ball())
+    }
+
+    /// The same shock reflected from a massive elastic wall of acoustic impedance Z (Pa·s/m), whose face moves with V = (p5 − p1)/Z until the wave in the
+    /// wall returns from its back face.
+    ///
+    /// V is enclosed between two doubles at which the sign of Z·V − (p5(V) − p1) is proven; p5 falls with V.
+    ///
+    /// # Errors
+    /// As for [`ThermalShock::reflected_from_wall`], and for an impedance that is not positive.
+    pub fn reflected_from_yielding_wall(&self, impedance: impl Into<Known>) -> Result<Self, ThermalError> {
+        let impedance = impedance.into();
+        positive(Parameter::WallImpedance, impedance)?;
+        let at = |speed: Ball| Self::solved(&self.fill, self.entry, self.value, speed);
+        let wanted = |shock: &Self| shock.ball(Output::Step) / impedance.ball();
+        let still = at(Ball::whole(0))?;
+        let (mut low, mut high) = (0.0, wanted(&still).nearest().min(self.nearest(Output::GasSpeed2)));
+        for _ in 0..SEARCH {
+            let middle = low + (high - low) / 2.0;
+            if !(middle > low && middle < high) {
+                break;
+            }
+            // A wall so fast that hardly anything runs back is too fast.
+            let too_fast = at(Ball::from(middle)).map_or(true, |shock| wanted(&shock).nearest() < middle);
+            if too_fast { high = middle } else { low = middle }
+        }
+        for reach in [4u32, 12, 20] {
+            let width = low * f64::from_bits((1023 - 50 + u64::from(reach)) << 52);
+            let (below, above) = (Ball::from(low - width), Ball::from(high + width));
+            let moves_on = (wanted(&at(below)?) - below).is_certainly_positive();
+            let stops = (above - wanted(&at(above)?)).is_certainly_positive();
+            if moves_on && stops {
+                return at(Ball::around(below.enclosure().hull(above.enclosure())));
+            }
+        }
+        Err(ThermalError::Existence { temperature: self.nearest(Output::Temperature5) })
+    }
+
+    /// One output as a ball, of the solution that the f64 iteration found.
+    fn ball(&self, output: Output) -> Ball {
+        self.flows.iter().flatten().next().map_or(Ball::UNKNOWN, |flow| flow.evaluate(output))
+    }
+
+    /// The heat capacity with which state 5 was computed.
+    pub fn heat_capacity_5(&self) -> HeatCapacity<Ball> {
+        self.fill.setting(Ball::whole(0)).reflected
+    }
+
+    /// An enclosure of the velocity of the end wall, m/s.
+    pub fn wall_speed(&self) -> Enclosure {
+        self.wall_speed.enclosure()
     }
 
     /// An enclosure of one output.
@@ -149,7 +233,7 @@ impl<'a> ThermalShock<'a> {
             return self.value.nominal();
         }
         let bounds = self.output(output);
-        let nearest = self.flows.iter().flatten().next().map_or(f64::NAN, |flow| flow.evaluate(output).nearest());
+        let nearest = self.ball(output).nearest();
         if bounds.contains(nearest) { nearest } else { bounds.middle() }
     }
 
@@ -185,14 +269,14 @@ impl<'a> ThermalShock<'a> {
         }
     }
 
-    /// State 5, at rest behind the shock that reflects off a rigid wall.
+    /// State 5, behind the reflected shock; the gas moves with the wall.
     pub fn state_5(&self) -> State {
         State {
             pressure: self.output(Output::Pressure5),
             temperature: self.output(Output::Temperature5),
             density: self.output(Output::Density5),
             sound_speed: self.output(Output::SoundSpeed5),
-            gas_speed: Enclosure::whole(0),
+            gas_speed: self.wall_speed(),
         }
     }
 }
@@ -216,7 +300,7 @@ fn solve(
         return Err(InputError { parameter, value, rule }.into());
     }
     let plain_setting = setting.map(Ball::nearest);
-    let plain_incident = GivenSpeed { m: incident.m.nearest(), m_excess: incident.m_excess.nearest() };
+    let plain_incident = incident.map(Ball::nearest);
     let plain = PlainShock::new(&plain_setting, &plain_incident);
     let (low, high) = setting.reflected.range();
     let plain = plain.ok_or(InputError { parameter, value, rule: Rule::HeatsBeyondData(low, high) })?;
@@ -269,7 +353,9 @@ mod tests {
                                 let bounds = shock.output(output);
                                 assert!(bounds.width_in_ulp() <= 2, "{} {model:?} {mach} {output:?} {bounds:?}", species.name);
                             }
-                            if mach == 3.0 { std::println!("{} {model:?} {} {:?}", species.name, shock.nearest(Output::Temperature5), shock.steps()); }
+                            if mach == 3.0 {
+                                std::println!("{} {model:?} {} {:?}", species.name, shock.nearest(Output::Temperature5), shock.steps());
+                            }
                         }
                         Err(error) => std::println!("{} {model:?} {mach} {error}", species.name),
                     }

@@ -125,6 +125,20 @@ impl<S: Signed> Stage<S> for GivenSpeedChange<S> {
     }
 }
 
+impl<S: Semifield> GivenSpeed<S> {
+    /// The same in another kind of number.
+    pub(super) fn map<T>(&self, convert: impl Fn(S) -> T) -> GivenSpeed<T> {
+        GivenSpeed { m: convert(self.m), m_excess: convert(self.m_excess) }
+    }
+}
+
+impl<S: Semifield> GivenSpeedChange<S> {
+    /// The same in another kind of number.
+    pub(super) fn map<T>(&self, convert: impl Fn(S) -> T) -> GivenSpeedChange<T> {
+        GivenSpeedChange { k: convert(self.k), lag: convert(self.lag) }
+    }
+}
+
 impl<S: Signed> GivenSpeed<S> {
     /// ε for constant heat capacity: 2(c(m − 1) − m)/(m(2c − 1)).
     #[inline(always)]

@@ -3,9 +3,10 @@
 //! The options are a record without a file: the reader of records checks them, so that the same doubts are asked in both places. A range
 //! makes two records, one of its lower and one of its upper ends.
 
+use endwall::gas::HeatCapacityModel;
 use endwall::gas::{Fill, Gas, HeatCapacityRatio, InputError, Parameter};
 use endwall::number::{Enclosure, Known, Rational};
-use endwall::record::{Dimension, ErrorKind, HeatCapacity, Mark, Quantity, RecordError, Shot};
+use endwall::record::{Dimension, ErrorKind, Mark, Quantity, RecordError, Shot};
 use endwall::shock::{Entry, Incident, WallReflection};
 use serde_json::{Value, json};
 
@@ -79,7 +80,7 @@ impl<'a> Input<'a> {
     pub fn read(arguments: &'a Arguments) -> Result<Self, Failure> {
         let low = shot(arguments, |typed| Ends::of(typed).low)?;
         let high = shot(arguments, |typed| Ends::of(typed).high)?;
-        let gas = |shot: &Shot| shot.gas.constant(HeatCapacity::Constant).map_err(|error| failure(arguments, error));
+        let gas = |shot: &Shot| shot.gas.constant(HeatCapacityModel::Constant).map_err(|error| failure(arguments, error));
         let (low_gas, high_gas) = (gas(&low)?, gas(&high)?);
         let between = |option: &str, typed: Option<&str>, low, high| range(option, typed.unwrap_or(""), low, high);
         let ratio = between(
