@@ -131,6 +131,8 @@ pub enum Rule {
     DataRange(f64, f64),
     /// It heats the gas beyond the temperatures between which its heat capacity is known, K.
     HeatsBeyondData(f64, f64),
+    /// It must be exact: a tolerance is not taken where the heat capacity depends on temperature.
+    Exact,
     /// The heat capacities of the species change their polynomials at too many temperatures.
     Ranges,
 }
@@ -172,6 +174,9 @@ impl fmt::Display for InputError {
                     f,
                     "takes the gas outside its data, {low} K to {high} K: its heat capacity is not known there and is not extrapolated"
                 )
+            }
+            Rule::Exact => {
+                write!(f, "is a tolerance, which is not taken where the heat capacity depends on temperature: give one exact value")
             }
             Rule::Ranges => {
                 write!(f, "begins more ranges than a mixture can hold: the species change their polynomials at too many temperatures")

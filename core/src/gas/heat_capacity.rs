@@ -104,6 +104,16 @@ impl<S: Semifield> HeatCapacity<S> {
         self.used().iter().position(|range| temperature <= range.high).unwrap_or(self.used - 1)
     }
 
+    /// The number of ranges.
+    pub(crate) fn len(&self) -> usize {
+        self.used
+    }
+
+    /// Both ends of a range, K.
+    pub(crate) fn ends(&self, index: usize) -> [f64; 2] {
+        [self.at(index).low, self.at(index).high]
+    }
+
     /// The temperatures at which a range begins where another ends, K.
     pub fn joints(&self) -> impl Iterator<Item = f64> + '_ {
         self.used().iter().skip(1).map(|range| range.low)

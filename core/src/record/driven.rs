@@ -40,6 +40,30 @@ struct Mixed<'a> {
 }
 
 impl Shot {
+    /// Calls a function with the driven gas: its species found, air and leak put in, for shocks other than the recorded one.
+    ///
+    /// # Errors
+    /// A species that is unknown, a mixture whose data have no range in common, a humidity without air.
+    ///
+    /// ```
+    /// # let file = r#"{ "record": "shot/1", "gas": { "N2": "balance" }, "heat_capacity": "equilibrium",
+    /// #   "fill": { "pressure": "10 kPa", "temperature": "295 K" }, "shock_speed": "1050 m/s" }"#;
+    /// use endwall::shock::{Entry, Output, ThermalFill, ThermalShock};
+    /// use endwall::shot::DrivenGas;
+    /// let shot = endwall::record::Shot::read(file.as_bytes())?;
+    /// let mach = shot.with_driven_gas(|gas, notes| {
+    ///     assert!(notes.source.starts_with("NASA/TP-2002-211556"));
+    ///     let DrivenGas::ThermallyPerfect { gas, model, .. } = gas else { panic!("it is given by its species") };
+    ///     let fill = ThermalFill::new(gas, model, 10e3, 295.0).unwrap();
+    ///     ThermalShock::new(&fill, Entry::ShockSpeed, 1050.0).unwrap().nearest(Output::Mach)
+    /// })?;
+    /// assert!((mach - 2.999).abs() < 1e-3); // the speed of sound is 350.1 m/s
+    /// # Ok::<(), endwall::record::RecordError>(())
+    /// ```
+    pub fn with_driven_gas<T>(&self, compute: impl FnOnce(DrivenGas<'_>, &GasNotes) -> T) -> Result<T, RecordError> {
+        self.with_gas(self.heat_capacity, |gas, notes| Ok(compute(gas, &notes)))
+    }
+
     /// Calls a function with the driven gas, for a choice of heat capacity.
     ///
     /// # Errors

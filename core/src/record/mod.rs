@@ -17,6 +17,7 @@ mod input;
 mod leak;
 mod monte_carlo;
 mod optional;
+mod page;
 mod quantity;
 mod quantity_text;
 mod read;
@@ -26,6 +27,7 @@ mod shot;
 mod species;
 mod station;
 mod text;
+mod text_choices;
 mod tree;
 mod unit;
 
@@ -40,7 +42,8 @@ pub use optional::{Driver, Measured, Survey, Tube, Wall};
 pub use quantity::{Absolute, Coverage, Mark, Quantity, QuantityError, Uncertainty};
 pub use read::Entry;
 pub use report::{
-    BudgetLine, Correlation, Fit, FitLine, Incident, LeftOut, MadeBy, Reflected, Report, ReportQuantity, ReportState, Share, States,
+    Alternative, BudgetLine, Correlation, Fit, FitLine, HeatCapacityChoice, Incident, LeftOut, MadeBy, Reflected, Relaxation, Report,
+    ReportQuantity, ReportState, Share, States,
 };
 pub use shot::{Fill, Shot, Speed};
 pub use species::OwnSpecies;

@@ -153,6 +153,13 @@ pub struct HeatCapacityChoice {
     pub relaxation: Vec<Relaxation>,
 }
 
+impl HeatCapacityChoice {
+    /// The choices and the relaxation times as text, with pressures in the unit in which the shot's fill was typed; empty where there is one choice only.
+    pub fn to_text(&self, shot: &Shot) -> String {
+        super::text_choices::heat_capacity(self, shot)
+    }
+}
+
 /// The states for one choice of heat capacity. The spread of the choices is no uncertainty and is not added to one.
 #[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct Alternative {

@@ -4,16 +4,14 @@ use alloc::format;
 use alloc::string::{String, ToString};
 use alloc::vec::Vec;
 
-use super::error::plain_character;
 use super::format::{shortest, significant, value_with_uncertainty};
 use super::hazard::CAUTIONS;
+use super::page::{Page, row};
 use super::quantity::Mark;
 use super::report::{Fit, Report, ReportQuantity, ReportState};
 use super::shot::{Shot, Speed};
+use super::text_choices::choices;
 use super::unit::Unit;
-
-/// Lines of running text are broken here.
-const WIDTH: usize = 96;
 
 pub(super) fn render(report: &Report, shot: &Shot) -> String {
     let mut page = Page::default();
@@ -27,7 +25,10 @@ pub(super) fn render(report: &Report, shot: &Shot) -> String {
         fit_section(&mut page, fit, report, shot);
     }
     states(&mut page, report, units);
-    heat_capacity(&mut page, report, units);
+    if !report.heat_capacity.beside.is_empty() {
+        page.heading("Choice of the heat capacity");
+        choices(&mut page, &report.heat_capacity, units);
+    }
     budget(&mut page, report);
     digits(&mut page, report);
     page.heading("Before anybody acts on these numbers");
@@ -44,7 +45,7 @@ pub(super) fn render(report: &Report, shot: &Shot) -> String {
 
 /// Pressures in the writer's unit, so that the numbers can be compared with the gauges; kPa for the units of the pascal.
 #[derive(Clone, Copy)]
-struct DisplayUnits {
+pub(super) struct DisplayUnits {
     pressure: Option<Unit>,
 }
 
@@ -56,12 +57,12 @@ pub(super) fn pressure_unit(shot: &Shot) -> Option<Unit> {
 }
 
 impl DisplayUnits {
-    fn of(shot: &Shot) -> Self {
+    pub(super) fn of(shot: &Shot) -> Self {
         Self { pressure: pressure_unit(shot) }
     }
 
     /// value ± U in display units.
-    fn show(self, quantity: &ReportQuantity) -> String {
+    pub(super) fn show(self, quantity: &ReportQuantity) -> String {
         let unit = match quantity.unit {
             "Pa" => self.pressure,
             "1/m" => Unit::find("%/m"),
@@ -196,69 +197,11 @@ fn states(page: &mut Page, report: &Report, units: DisplayUnits) {
     ]);
 }
 
-/// The choices side by side, and how long vibration takes.
-fn heat_capacity(page: &mut Page, report: &Report, units: DisplayUnits) {
-    let choice = &report.heat_capacity;
-    if choice.beside.is_empty() {
-        return;
-    }
-    page.heading("Choice of the heat capacity");
-    let mut rows = alloc::vec![row(["heat capacity", "T2", "T5", "p5", "T5 less the chosen"])];
-    let chosen = report.states.reflected.temperature.value;
-    for other in &choice.beside {
-        let shown =
-            |quantity: &Option<ReportQuantity>| quantity.as_ref().map_or("outside the data".to_string(), |quantity| units.show(quantity));
-        let is_chosen = other.heat_capacity == choice.chosen;
-        let difference = other.temperature.as_ref().map_or(String::new(), |own| {
-            if is_chosen { "chosen".to_string() } else { format!("{:+.2} %", 100.0 * (own.value / chosen - 1.0)) }
-        });
-        rows.push(row([
-            other.heat_capacity,
-            &shown(&other.temperature_2),
-            &shown(&other.temperature),
-            &shown(&other.pressure),
-            &difference,
-        ]));
-    }
-    page.table(&rows);
-    page.paragraph(
-        "",
-        "All at the same shock speed. The spread of the choices is a question of the model: it is no uncertainty and is not part of U.",
-    );
-    if choice.relaxation.is_empty() {
-        return;
-    }
-    page.line("");
-    let time = |seconds: Option<f64>| seconds.map_or("-".to_string(), relaxation_time);
-    let mut rows = alloc::vec![row(["vibrational relaxation time", "in state 2", "in state 5", "known within a factor of"])];
-    for relaxing in &choice.relaxation {
-        rows.push(row([&relaxing.species, &time(relaxing.incident), &time(relaxing.reflected), &significant(relaxing.factor, 2)]));
-    }
-    page.table(&rows);
-    page.paragraph("", &nearer(choice));
-}
-
-/// What the relaxation times say about the choice.
-fn nearer(choice: &super::report::HeatCapacityChoice) -> String {
-    let times = || choice.relaxation.iter().filter_map(|relaxing| relaxing.reflected);
-    let (quickest, slowest) = (times().fold(f64::INFINITY, f64::min), times().fold(0.0, f64::max));
-    let between = if quickest < slowest { "; between them some species are, some are not" } else { "" };
-    format!(
-        "An observation in state 5 that is over well before {} sees frozen vibration, one that begins well after {} sees equilibrium{between}. Where a time in state 2 is much longer than the gas spends there, \"frozen then equilibrium\" is nearer than \"equilibrium\". By the formula of Millikan and White (1963).",
-        relaxation_time(quickest),
-        relaxation_time(slowest)
-    )
-}
-
-fn relaxation_time(seconds: f64) -> String {
-    if seconds >= 1.0 {
-        format!("{} s", significant(seconds, 2))
-    } else if seconds >= 1e-3 {
-        format!("{} ms", significant(seconds * 1e3, 2))
-    } else {
-        format!("{} us", significant(seconds * 1e6, 2))
-    }
-}
+/// What an uncertainty without a unit is an uncertainty of.
+const REMARKS: [(&str, &str); 2] = [
+    ("composition", "Composition: mole fractions, each with its stated uncertainty; the line shows the root of the sum of their squares."),
+    ("gas data", "Gas data: relative, of the part of the heat capacity that exceeds translation and rotation."),
+];
 
 fn budget(page: &mut Page, report: &Report) {
     page.heading("Uncertainty budget");
@@ -279,7 +222,12 @@ fn budget(page: &mut Page, report: &Report) {
         ]));
     }
     page.table(&rows);
-    page.line("Shares are of variance; sensitivities are taken at a given shock speed, not at a given Mach number.");
+    page.paragraph("", "Shares are of variance; sensitivities are taken at a given shock speed, not at a given Mach number.");
+    for (input, remark) in REMARKS {
+        if report.budget.iter().any(|line| line.input == input) {
+            page.paragraph("", remark);
+        }
+    }
     if let Some(correlation) = report.correlation.temperature_pressure {
         page.line(&format!("Correlation of T5 and p5: {correlation:.3}. They share inputs; combine them with it."));
     }
@@ -311,62 +259,4 @@ fn enclosure(rows: &mut Vec<Vec<String>>, name: &str, quantity: &ReportQuantity)
     let unit = if quantity.unit == "1" { "" } else { quantity.unit };
     let between = if low == high { "exactly".to_string() } else { shortest(low) };
     rows.push(row([name, &between, &shortest(high), unit]));
-}
-
-fn row<const N: usize>(cells: [&str; N]) -> Vec<String> {
-    cells.iter().map(|cell| cell.chars().map(plain_character).collect()).collect()
-}
-
-#[derive(Default)]
-struct Page {
-    text: String,
-}
-
-impl Page {
-    fn line(&mut self, line: &str) {
-        self.text.extend(line.chars().map(plain_character));
-        self.text.push('\n');
-    }
-
-    fn heading(&mut self, title: &str) {
-        self.text.push('\n');
-        self.line(title);
-        self.line(&"-".repeat(title.chars().count()));
-    }
-
-    /// Broken into lines; further lines are indented below the text of the first.
-    fn paragraph(&mut self, mark: &str, text: &str) {
-        let mut line = mark.to_string();
-        let indent = " ".repeat(mark.chars().count());
-        for word in text.split_whitespace() {
-            let occupied = line.chars().count();
-            if occupied > mark.chars().count() && occupied + 1 + word.chars().count() > WIDTH {
-                self.line(&line);
-                line.clone_from(&indent);
-            }
-            if line.chars().count() > mark.chars().count() {
-                line.push(' ');
-            }
-            line.push_str(word);
-        }
-        self.line(&line);
-    }
-
-    /// Columns as wide as their widest cell. The last cell of a row may be longer, so that notes do not push the numbers off the screen.
-    fn table(&mut self, rows: &[Vec<String>]) {
-        let columns = rows.iter().map(Vec::len).max().unwrap_or(0);
-        let followed = |row: &[String], column: usize| row.iter().skip(column + 1).any(|cell| !cell.is_empty());
-        let in_column = |column: usize| rows.iter().filter(move |row| followed(row, column)).filter_map(move |row| row.get(column));
-        let width = |column: usize| in_column(column).map(|cell| cell.chars().count()).max().unwrap_or(0);
-        let widths: Vec<usize> = (0..columns).map(width).collect();
-        for row in rows {
-            let mut line = String::new();
-            for (cell, width) in row.iter().zip(&widths) {
-                line.push_str(cell);
-                let missing = width - cell.chars().count().min(*width);
-                line.extend(core::iter::repeat_n(' ', missing + 2));
-            }
-            self.line(line.trim_end());
-        }
-    }
 }

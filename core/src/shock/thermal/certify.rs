@@ -6,7 +6,7 @@ use crate::gas::HeatCapacity;
 use crate::number::{Ball, Enclosure, Semifield};
 
 /// Newton steps with proof, at most.
-const STEPS: u32 = 3;
+const STEPS: u32 = 5;
 /// A compression that is known this well, relative, gives outputs of one or two units in the last place.
 const NARROW: f64 = 1e-21;
 
@@ -14,6 +14,8 @@ const NARROW: f64 = 1e-21;
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Root {
     pub compression: Ball,
+    /// c̄ at it.
+    pub mean: Ball,
     /// The range whose polynomial gave it.
     pub to: usize,
 }
@@ -29,7 +31,7 @@ pub(super) struct Problem<'c, T: Stage<Ball>> {
 impl<T: Stage<Ball>> Problem<'_, T> {
     /// Interval Newton from an approximate root, with the polynomial of range `to`, extended beyond its ends where need be: ε − F(ε)/F′(E), where E
     /// is an interval about ε. If the result lies inside E, it holds the only root in E.
-    pub(super) fn newton(&self, approximate: f64, to: usize) -> Option<Ball> {
+    pub(super) fn newton(&self, approximate: f64, to: usize) -> Option<Root> {
         let mut e = approximate;
         let mut wanted = 0.0;
         for step in 0..STEPS {
@@ -45,14 +47,16 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             let c = self.heat_capacity.value(to, behind);
             // c̄ over E from c̄ at ε: the integral grows by c times the step. For weak shocks that loses too much.
             let mean_over = if excess.nearest().abs() > 1e-3 {
-                (mean * excess + c * (over - excess)) / over
+                mean + (c - mean) * (over - excess) / over
             } else {
                 self.heat_capacity.mean(self.from, self.temperature, over, to)
             };
             let slope = residual_slope(&self.stage, around, mean_over, (c - mean_over) / over);
             let found = at - value / slope;
             if around.contains(found) && (found.radius() <= NARROW * e.abs() || step + 1 == STEPS) {
-                return Some(found);
+                let there = self.stage.temperature_excess(found);
+                let mean = mean + (c - mean) * (there - excess) / there;
+                return Some(Root { compression: found, mean, to });
             }
             wanted = 4.0 * (found.nearest() - e).abs() + 4.0 * found.radius();
             if !(wanted < 0.1 * e.abs()) {
@@ -71,23 +75,48 @@ impl<T: Stage<Ball>> Problem<'_, T> {
     /// The roots: one, or where the temperature behind is so near a joint of two polynomials that the jump of the enthalpy decides, the root of
     /// either polynomial: the model's answer lies in the hull of both.
     ///
-    /// Existence is by interval Newton. Uniqueness: between joints the energy that the gas behind lacks is monotone in ε where it can vanish
-    /// (derived in [`how_it_is_proven`](crate::how_it_is_proven)), so it suffices that its sign on both sides of every joint is the one of the side of the root.
+    /// Existence is by interval Newton with the polynomial in whose range the temperature behind then lies. Uniqueness: between joints the energy that
+    /// the gas behind lacks is monotone in ε where it can vanish (derived in [`how_it_is_proven`](crate::how_it_is_proven)), so it suffices that its
+    /// sign on both sides of every joint is the one of the side of the root.
     pub(super) fn roots(&self, approximate: f64, to: usize) -> Result<[Option<Root>; 2], ThermalError> {
         let missing = || ThermalError::Existence { temperature: self.behind(Ball::from(approximate)).nearest() };
-        let compression = self.newton(approximate, to).ok_or_else(missing)?;
-        let first = Root { compression, to };
+        let mut first = self.newton(approximate, to).ok_or_else(missing)?;
         let mut second = None;
+        if let Some(other) = self.neighbour(&first) {
+            let moved = self.newton(first.compression.nearest(), other).ok_or_else(missing)?;
+            // Out of its own range, and not the other way round: the answer. Else nobody can tell, or the jump itself is the answer.
+            if self.neighbour(&moved).is_none() && self.is_outside(&first) { first = moved } else { second = Some(moved) }
+        }
         for (index, joint) in self.heat_capacity.joints().enumerate() {
-            if !self.is_clear_of(index, joint, compression)? {
-                let other = if to == index { index + 1 } else { index };
-                let near = (self.behind(compression).nearest() - joint).abs() < 1.0 && (to == index || to == index + 1) && second.is_none();
-                let compression = if near { self.newton(compression.nearest(), other) } else { None };
-                let compression = compression.ok_or(ThermalError::Uniqueness { temperature: joint })?;
-                second = Some(Root { compression, to: other });
+            if second.is_some_and(|second: Root| index == first.to.min(second.to)) || self.is_clear_of(index, joint, first.compression)? {
+                continue;
             }
+            let near = (self.behind(first.compression).nearest() - joint).abs() < 1.0 && (first.to == index || first.to == index + 1);
+            let other = if first.to == index { index + 1 } else { index };
+            let also = if near && second.is_none() { self.newton(first.compression.nearest(), other) } else { None };
+            second = Some(also.ok_or(ThermalError::Uniqueness { temperature: joint })?);
         }
         Ok([Some(first), second])
+    }
+
+    /// The range next to that of a root whose temperature behind is not certainly inside its own; a joint belongs to the lower range.
+    fn neighbour(&self, root: &Root) -> Option<usize> {
+        let behind = self.behind(root.compression).enclosure();
+        let [low, high] = self.heat_capacity.ends(root.to);
+        if behind.high() > high {
+            Some(root.to + 1).filter(|next| *next < self.heat_capacity.len())
+        } else if behind.low() <= low {
+            root.to.checked_sub(1)
+        } else {
+            None
+        }
+    }
+
+    /// True if the temperature behind is certainly outside the range of a root.
+    fn is_outside(&self, root: &Root) -> bool {
+        let behind = self.behind(root.compression).enclosure();
+        let [low, high] = self.heat_capacity.ends(root.to);
+        behind.low() > high || behind.high() <= low
     }
 
     /// Whether the residual, with the polynomial below the joint and with the one above, has the sign that belongs to its side of the root, wherever

@@ -1,6 +1,6 @@
 //! Why a shock into a thermally perfect gas has no proven answer.
 
-use crate::gas::InputError;
+use crate::gas::{InputError, Parameter};
 use core::fmt;
 
 /// Why there is no answer.
@@ -9,6 +9,8 @@ use core::fmt;
 pub enum ThermalError {
     /// An input was refused, or a temperature lies outside the data.
     Input(InputError),
+    /// This quantity does not fix one shock: in a gas whose heat capacity depends on temperature two shocks can share it.
+    NotUnique(Parameter),
     /// Existence of the shock is not proven near this temperature behind it, K.
     Existence {
         /// Temperature, K.
@@ -25,6 +27,11 @@ impl fmt::Display for ThermalError {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
             Self::Input(error) => error.fmt(f),
+            Self::NotUnique(parameter) => write!(
+                f,
+                "the {} does not fix one shock in a gas whose heat capacity depends on temperature: give the shock speed, or a pressure or temperature behind it",
+                parameter.name()
+            ),
             Self::Existence { temperature } => {
                 write!(f, "existence of the shock is not proven near {temperature} K: the shock is too weak for the digits of the inputs")
             }

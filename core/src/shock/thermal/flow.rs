@@ -31,6 +31,10 @@ pub struct ThermalFlow<S> {
     k: S,
     reflected_compression: S,
     reflected_excess: S,
+    /// c̄ across the reflected shock.
+    reflected_mean: S,
+    /// Δ/ε′.
+    lag_ratio: S,
     /// `c_p`/R in the states 1, 2 and 5, as the states were computed.
     heat_capacity: [S; 3],
 }
@@ -70,7 +74,13 @@ pub(super) fn reflected_stage<S: Elementary>(
 
 impl<S: Elementary> ThermalFlow<S> {
     /// From both compressions.
-    pub(super) fn new(setting: &Setting<S>, incident: &GivenSpeed<S>, ranges: Ranges, compression: S, reflected_compression: S) -> Self {
+    pub(super) fn new(
+        setting: &Setting<S>,
+        incident: &GivenSpeed<S>,
+        ranges: Ranges,
+        compression: S,
+        (reflected_compression, reflected_mean): (S, S),
+    ) -> Self {
         let (reflected, behind, closing_speed) = reflected_stage(setting, incident, ranges, compression);
         let reflected_excess = reflected.temperature_excess(reflected_compression);
         let scale = setting.scale();
@@ -88,6 +98,8 @@ impl<S: Elementary> ThermalFlow<S> {
             k: reflected.k,
             reflected_compression,
             reflected_excess,
+            reflected_mean,
+            lag_ratio: reflected.lag / reflected_compression,
             heat_capacity: [
                 setting.incident.value(ranges.first, setting.temperature),
                 setting.incident.value(ranges.second, behind),
@@ -155,10 +167,19 @@ impl<S: Signed> ThermalFlow<S> {
             Output::ReflectedSpeed => reflected_speed(),
             Output::ReflectedSpeedRatio => reflected_speed() / sound_speed(),
             Output::ReflectedMach => (self.k / ratio(c2)).sqrt() / r,
-            Output::ReflectedMachExcess => {
-                let square = r.squared() * ratio(c2);
-                mach_excess((self.k - square) / square)
-            }
+            Output::ReflectedMachExcess => mach_excess(self.reflected_mach_squared_excess()),
         }
+    }
+
+    /// `M_R`² − 1 with k from the equation of the reflected shock, in which nothing is left to cancel for a weak one:
+    ///
+    /// > k/ε′² = 2(c̄ − Δ/ε′)/D, `M_R`² − 1 = (2(c2 − c̄) + c2 ε′(2c̄ − 1) − 2(c2 − 1)Δ/ε′)/(c2 D), D = 2(c̄ − 1) − ε′(2c̄ − 1).
+    fn reflected_mach_squared_excess(&self) -> S {
+        let one = S::whole(1);
+        let [_, c2, _] = self.heat_capacity;
+        let (mean, r) = (self.reflected_mean, self.reflected_compression);
+        let growing = r * (mean.doubled() - one);
+        let sum = (c2 - mean).doubled() + c2 * growing - ((c2 - one) * self.lag_ratio).doubled();
+        sum / (c2 * ((mean - one).doubled() - growing))
     }
 }

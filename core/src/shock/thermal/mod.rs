@@ -3,6 +3,7 @@ mod approximate;
 mod certify;
 mod error;
 mod flow;
+mod inverse;
 mod plain;
 mod setting;
 mod shock;

@@ -107,8 +107,9 @@ impl<S: Elementary + Into<f64>> PlainShock<S> {
         let start = reflected.with_constant(setting.reflected.value(ahead, behind));
         let (reflected_compression, fifth, reflected_steps) = approximate(&reflected, &setting.reflected, ahead, behind, start)?;
         let ranges = Ranges { fifth, ..ranges };
+        let mean = setting.reflected.mean(ahead, behind, reflected.temperature_excess(reflected_compression), fifth);
         Some(Self {
-            flow: ThermalFlow::new(setting, incident, ranges, compression, reflected_compression),
+            flow: ThermalFlow::new(setting, incident, ranges, compression, (reflected_compression, mean)),
             compressions: [compression, reflected_compression],
             ranges,
             steps: [incident_steps, reflected_steps],

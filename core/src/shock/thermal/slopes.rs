@@ -119,7 +119,8 @@ pub(super) fn flow_with_slopes<S: ElementarySlopes, const N: usize>(
     let (stage, behind, _) = reflected_stage(setting, incident, ranges, compression);
     let along = [ranges.ahead, ranges.fifth];
     let reflected = implicit(&stage, &stage.map(value), &setting.reflected, along, behind, reflected);
-    ThermalFlow::new(setting, incident, ranges, compression, reflected)
+    let mean = setting.reflected.mean(ranges.ahead, behind, stage.temperature_excess(reflected), ranges.fifth);
+    ThermalFlow::new(setting, incident, ranges, compression, (reflected, mean))
 }
 
 impl ThermalFill<'_> {
