@@ -71,6 +71,8 @@ tables! {
     jcgm_100_h2;
     /// Printed results of JCGM 100: column `example`, `quantity`, `value`.
     jcgm_100_results;
+    /// Heat capacity and enthalpy of ideal gases from property libraries.
+    heat_capacity_library;
 }
 
 impl Table {

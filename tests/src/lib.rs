@@ -5,6 +5,8 @@
 
 pub mod data;
 pub mod euler;
+pub mod glenn;
 pub mod oracle;
 pub mod random;
+pub mod same_bits;
 pub mod tolerances;

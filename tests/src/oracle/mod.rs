@@ -14,6 +14,7 @@ mod real;
 mod reflection;
 mod root;
 mod shot;
+pub mod thermal;
 
 pub use compare::{Histogram, contains, optimal, ulp_error, ulp_width};
 pub use dashu_ratio::RBig;

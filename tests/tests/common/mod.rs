@@ -2,6 +2,8 @@
 
 #![allow(dead_code, reason = "each check uses its own part")]
 
+pub mod thermal;
+
 use endwall::gas::{Fill, Gas, HeatCapacityRatio};
 use endwall::number::{Enclosure, Rational};
 use endwall::shock::{Entry, Output};
