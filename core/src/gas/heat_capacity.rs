@@ -237,6 +237,16 @@ impl<S: Signed> HeatCapacity<S> {
 }
 
 impl HeatCapacity<Ball> {
+    /// The jump of h/R where the range above this one begins, K.
+    pub(crate) fn jump_above(&self, index: usize) -> Ball {
+        self.at(index + 1).jump
+    }
+
+    /// An upper bound of the sum of all jumps of h/R, K.
+    pub(crate) fn jumps(&self) -> f64 {
+        self.used().iter().skip(1).map(|range| range.jump.magnitude()).sum::<f64>() * (1.0 + 1e-9)
+    }
+
     /// One range of given coefficients.
     pub(super) fn range_of(low: f64, high: f64, jump: Ball, a: [Ball; 7]) -> Self {
         Self { ranges: [Range { low, high, start: Ball::from(low), jump, a }; RANGES], used: 1 }

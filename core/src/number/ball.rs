@@ -97,6 +97,12 @@ impl Ball {
         if head.is_finite() && tail.is_finite() && radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
     }
 
+    /// head + tail with a radius.
+    #[inline(always)]
+    pub(super) fn pair(head: f64, tail: f64, radius: f64) -> Self {
+        Self::computed(head, tail, radius)
+    }
+
     /// The ball of all numbers in the enclosure.
     pub fn around(x: Enclosure) -> Self {
         let middle = x.middle();

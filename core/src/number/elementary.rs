@@ -1,40 +1,65 @@
 //! Proven logarithm and exponential: [`Ball`] by reduction and series, [`Enclosure`] by monotonicity at both ends.
 //!
-//! No tables. Every constant is derived here from whole numbers, so that there is none to trust.
+//! The first terms of a series are summed as balls, the rest in plain f64 with a bound for its rounding: it is so much smaller that this costs
+//! no digit that matters.
 
 use super::ball::Ball;
+use super::constants::{FACTORIAL, LN_2, LOGARITHM, ODD};
 use super::enclosure::{Enclosure, Quality};
 use super::round::{in_range, power_of_two};
 use super::traits::{Elementary, ElementarySlopes, Semifield};
 
 /// Terms of a series are added until the next one is below 2⁻¹¹⁰ of the sum.
-const SMALL: f64 = f64::from_bits((1023 - 110) << 52);
+const SMALL: f64 = power_of_two(-110);
 
 /// The exponential's argument is halved this often before its series; each halving costs one squaring and one bit.
 const HALVINGS: i32 = 6;
 
+/// A constant of the table, good to 2⁻¹⁰⁶ of its value.
+#[inline(always)]
+fn constant((head, tail): (f64, f64)) -> Ball {
+    Ball::pair(head, tail, head.abs() * power_of_two(-106))
+}
+
 /// eʳ for |r| ≤ 0.36: (Taylor series at r/2⁶)^(2⁶).
 ///
-/// With |s| ≤ 0.36/64 = 0.005625, the terms after s¹³/13! sum to less than s¹⁴/14!·(1 + s) < 2⁻¹⁴⁰.
+/// With |s| ≤ 0.36/64 < 2⁻⁷: the terms s⁷/7! to s¹¹/11! in plain f64 have a relative error below 2⁻⁴⁸, and what follows is below 2⁻²⁵ of their last bit;
+/// together less than |s|⁷·2⁻⁵⁸.
 fn exp_reduced(r: Ball) -> Ball {
     let s = r.scaled(-HALVINGS);
-    let one = Ball::whole(1);
-    let series = (1..=13).rev().fold(one, |sum, n| one + s * sum / Ball::whole(n));
-    (0..HALVINGS).fold(series.widened(SMALL * power_of_two(-30)), |power, _| power * power)
+    let x = s.nearest();
+    let power = x * x * x * x * x * x * x;
+    let rest = power * (1.0 + x / 8.0 * (1.0 + x / 9.0 * (1.0 + x / 10.0 * (1.0 + x / 11.0)))) / 5040.0;
+    let [head @ .., last] = FACTORIAL;
+    let start = constant(last);
+    let series = head.iter().rev().fold(start, |sum, term| constant(*term) + s * sum);
+    // The rest moves by less than the radius of s times |s|⁶/6!.
+    let series = (series + Ball::from(rest)).widened(power.abs() * power_of_two(-58) + s.radius() * power_of_two(-50));
+    (0..HALVINGS).fold(series, |power, _| power * power)
 }
 
-/// ln 2 = 2·artanh(1/3) = (2/3)·Σ 9⁻ⁿ/(2n+1); the terms after n = 36 sum to less than 9⁻³⁷ < 2⁻¹¹⁷.
-fn ln_2() -> Ball {
-    let (one, nine) = (Ball::whole(1), Ball::whole(9));
-    let sum = (0..=36).rev().fold(Ball::from(0.0), |sum, n| sum / nine + one / Ball::whole(2 * n + 1));
-    (sum + sum).widened(SMALL * power_of_two(-6)) / Ball::whole(3)
+/// The terms of artanh(s)/s = Σ qⁿ/(2n + 1), q = s², before the term `first` as balls, that one and `count` after it in plain f64.
+///
+/// The plain part is below |q|^first/(2·first + 1)/(1 − q) and has a relative error below 2⁻⁴⁷, with what is left out: less than
+/// |q|^first·2⁻⁴⁸, for first ≥ 3.
+#[inline(always)]
+fn artanh_ratio(s: Ball, first: u32, count: u32) -> Ball {
+    let q = s * s;
+    let x = q.nearest();
+    let plain = (first..=first + count).rev().fold(0.0, |sum, n| sum * x + 1.0 / f64::from(2 * n + 1));
+    let power = (0..first).fold(1.0, |power, _| power * x);
+    let sum = ODD.iter().take(first as usize).rev().fold(Ball::from(plain), |sum, term| constant(*term) + q * sum);
+    sum.widened(power * power_of_two(-48) + q.radius() * power * 64.0)
 }
 
-/// artanh(s)/s = Σ s²ⁿ/(2n+1) for |s| ≤ 1/5: the terms after n = 23 sum to less than 25⁻²⁴ < 2⁻¹¹¹.
-fn artanh_ratio(s: Ball) -> Ball {
-    let square = s * s;
-    let sum = (0..=23).rev().fold(Ball::from(0.0), |sum, n| sum * square + Ball::whole(1) / Ball::whole(2 * n + 1));
-    sum.widened(SMALL)
+/// artanh(s)/s for |s| ≤ 0.145: q⁸ < 2⁻⁴⁴, and the terms after n = 21 sum to less than 2⁻¹²⁵.
+fn artanh_ratio_of_fraction(s: Ball) -> Ball {
+    artanh_ratio(s, 8, 13)
+}
+
+/// artanh(s)/s for |s| ≤ 2⁻⁸ (1 + 2⁻²⁰): q³ < 2⁻⁴⁷, and the terms after n = 8 sum to less than 2⁻¹⁴⁰.
+fn artanh_ratio_of_trace(s: Ball) -> Ball {
+    artanh_ratio(s, 3, 5)
 }
 
 /// True where two terms of a Taylor series leave less than 2⁻²⁴⁰, and products could leave the range of error-free transforms.
@@ -67,7 +92,7 @@ fn by_ends(x: Ball, f: impl Fn(Ball) -> Ball) -> Ball {
 }
 
 impl Elementary for Ball {
-    /// Near 1 by ln(1+x)/x, whose relative error stays small. Elsewhere x = m·2ⁿ with m within √2 of 1; an approximate logarithm y of m is corrected by ln(m·e⁻ʸ), whose argument is within 2⁻⁴⁰ of 1.
+    /// Near 1 by ln(1+x)/x, whose relative error stays small. Elsewhere x = m·2ⁿ with m in [1, 2).
     fn ln(self) -> Self {
         if !self.is_certainly_positive() {
             return Self::UNKNOWN;
@@ -91,21 +116,14 @@ impl Elementary for Ball {
         let centred = self.scaled(moved);
         let exponent = ((centred.nearest().to_bits() >> 52) & 0x7ff) as i32 - 1023;
         let mantissa = centred.nearest() * power_of_two((-exponent).clamp(-1000, 1000));
-        let of_mantissa = if mantissa > core::f64::consts::SQRT_2 { exponent + 1 } else { exponent };
-        let (m, n) = (centred.scaled(-of_mantissa), of_mantissa - moved);
-        let y = libm::log(m.nearest());
-        let d = m * exp_reduced(Self::from(-y)) - one;
-        let distance = d.magnitude();
-        if distance > power_of_two(-15) {
-            return Self::UNKNOWN;
-        }
-        // ln(1 + d) = d − d²/2 + d³/3 − d⁴/4 ± …: what follows the fourth term is below |d|⁵/(5(1 − |d|)).
-        let quarter = Self::whole(1) / Self::whole(4);
-        let third = Self::whole(1) / Self::whole(3);
-        let series = d * (one - d * (one.halved() - d * (third - d * quarter)));
-        let rest = distance * distance * distance * distance * distance;
-        let whole = Self::from(f64::from(n)) * ln_2();
-        (whole + (Self::from(y) + series)).widened(rest + power_of_two(-1000))
+        let (m, n) = (centred.scaled(-exponent), exponent - moved);
+        // ln m = ln c + 2·artanh((m − c)/(m + c)), c the middle of the 64th of [1, 2) in which m lies.
+        let index = (mantissa - 1.0) * 64.0;
+        let Some(logarithm) = LOGARITHM.get(index as usize) else { return Self::UNKNOWN };
+        let c = Self::from(1.0 + (2.0 * libm::floor(index) + 1.0) / 128.0);
+        let s = (m - c) / (m + c);
+        let of_m = constant(*logarithm) + (s * artanh_ratio_of_trace(s)).doubled();
+        Self::from(f64::from(n)) * constant(LN_2) + of_m
     }
 
     /// x = n·ln 2 + r.
@@ -126,7 +144,7 @@ impl Elementary for Ball {
             return Self::UNKNOWN;
         }
         let n = libm::round(x / core::f64::consts::LN_2);
-        let r = self - Self::from(n) * ln_2();
+        let r = self - Self::from(n) * constant(LN_2);
         exp_reduced(r).scaled(n as i32)
     }
 
@@ -141,7 +159,7 @@ impl Elementary for Ball {
         }
         if x.abs() <= 0.25 && self.radius() <= power_of_two(-10) {
             let below = Self::whole(2) + self;
-            return (Self::whole(2) / below) * artanh_ratio(self / below);
+            return (Self::whole(2) / below) * artanh_ratio_of_fraction(self / below);
         }
         (Self::whole(1) + self).ln() / self
     }
@@ -249,6 +267,36 @@ impl ElementarySlopes for Enclosure {
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    /// artanh(s)/s, s = n/d < 1/3, by a series of whole numbers, to 2⁻¹⁰⁸.
+    fn artanh_of(n: u32, d: u32) -> Ball {
+        let q = (Ball::whole(n) / Ball::whole(d)).squared();
+        let sum = (0..=40).rev().fold(Ball::from(0.0), |sum, n| sum * q + Ball::whole(1) / Ball::whole(2 * n + 1));
+        sum.widened(power_of_two(-120))
+    }
+
+    #[test]
+    fn the_constants_are_what_they_are_called() {
+        // Both balls hold the true constant, and neither is wider than 2⁻¹⁰⁰ of it.
+        let agrees = |table: (f64, f64), derived: Ball| {
+            let difference = constant(table) - derived;
+            assert!(difference.enclosure().contains(0.0), "{table:?}");
+            assert!(difference.radius() < table.0 * power_of_two(-100), "{table:?}");
+        };
+        let ratio = |n: u32, d: u32| Ball::whole(n) / Ball::whole(d);
+        agrees(LN_2, ratio(2, 3) * artanh_of(1, 3));
+        for (n, odd) in ODD.into_iter().enumerate() {
+            agrees(odd, ratio(1, 2 * n as u32 + 1));
+        }
+        for (n, factorial) in FACTORIAL.into_iter().enumerate() {
+            agrees(factorial, (1..=n as u32).fold(Ball::whole(1), |product, n| product / Ball::whole(n)));
+        }
+        for (i, logarithm) in LOGARITHM.into_iter().enumerate() {
+            // ln c = 2·artanh((c − 1)/(c + 1)), c − 1 = n/128.
+            let n = 2 * i as u32 + 1;
+            agrees(logarithm, ratio(2 * n, 256 + n) * artanh_of(n, 256 + n));
+        }
+    }
 
     #[test]
     fn known_values_are_exact_or_neighbours() {

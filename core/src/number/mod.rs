@@ -1,6 +1,7 @@
 //! Floor 1: what a number is, and how it is proven.
 mod ball;
 mod bounds;
+mod constants;
 mod counted;
 mod decimal;
 mod display;

@@ -88,7 +88,10 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             if self.neighbour(&moved).is_none() && self.is_outside(&first) { first = moved } else { second = Some(moved) }
         }
         for (index, joint) in self.heat_capacity.joints().enumerate() {
-            if second.is_some_and(|second: Root| index == first.to.min(second.to)) || self.is_clear_of(index, joint, first.compression)? {
+            if self.is_far_from(joint, &first)
+                || second.is_some_and(|second: Root| index == first.to.min(second.to))
+                || self.is_clear_of(index, joint, first.compression)?
+            {
                 continue;
             }
             let near = (self.behind(first.compression).nearest() - joint).abs() < 1.0 && (first.to == index || first.to == index + 1);
@@ -97,6 +100,14 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             second = Some(also.ok_or(ThermalError::Uniqueness { temperature: joint })?);
         }
         Ok([Some(first), second])
+    }
+
+    /// True if the slope of the energy alone keeps the sign at a joint: see [`Stage::least_slope`].
+    fn is_far_from(&self, joint: f64, root: &Root) -> bool {
+        let Some(least) = self.stage.least_slope() else { return false };
+        let distance = (self.behind(root.compression).nearest() - joint).abs();
+        // Twice, so that the rounding of these three doubles does not matter.
+        distance * least > 2.0 * self.heat_capacity.jumps()
     }
 
     /// The range next to that of a root whose temperature behind is not certainly inside its own; a joint belongs to the lower range.
@@ -130,7 +141,11 @@ impl<T: Stage<Ball>> Problem<'_, T> {
         if !discriminant.is_certainly_positive() {
             return Err(ThermalError::Uniqueness { temperature: joint });
         }
-        let rises = [below, below + 1].map(|to| self.heat_capacity.rise(self.from, self.temperature, excess, to));
+        // With the polynomials up to the joint and with the one beyond it, which differ by the jump.
+        let near = if self.from <= below { below } else { below + 1 };
+        let rise = self.heat_capacity.rise(self.from, self.temperature, excess, near);
+        let jump = self.heat_capacity.jump_above(below) / self.temperature;
+        let rises = [rise, if near == below { rise + jump } else { rise - jump }];
         let one = Ball::whole(1);
         for crossing in self.stage.compressions_at(excess).into_iter().flatten() {
             if (-crossing).is_certainly_positive() || (crossing - one).is_certainly_positive() {

@@ -132,15 +132,15 @@ impl<S> PlainShock<S> {
 impl super::ThermalFill<'_> {
     /// The nominal fill in plain numbers, each made from the nearest double.
     pub fn plain<S: Semifield>(&self, convert: impl Fn(f64) -> S + Copy) -> PlainFill<S> {
-        let temperature = self.temperature().ball();
+        let balls = self.balls();
         let plain = |x: Ball| convert(x.nearest());
         PlainFill {
-            model: self.model(),
-            pressure: plain(self.pressure().ball()),
-            temperature: plain(temperature),
-            molar_mass: plain(self.gas().molar_mass()),
-            full: self.gas().heat_capacity().map(plain),
-            frozen: plain(self.gas().frozen_heat_capacity(temperature)),
+            model: balls.model,
+            pressure: plain(balls.pressure),
+            temperature: plain(balls.temperature),
+            molar_mass: plain(balls.molar_mass),
+            full: balls.full.map(plain),
+            frozen: plain(balls.frozen),
         }
     }
 }

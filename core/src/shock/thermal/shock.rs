@@ -19,6 +19,7 @@ pub struct ThermalFill<'a> {
     model: HeatCapacityModel,
     pressure: Known,
     temperature: Known,
+    balls: PlainFill<Ball>,
 }
 
 impl<'a> ThermalFill<'a> {
@@ -39,7 +40,15 @@ impl<'a> ThermalFill<'a> {
         exact(Parameter::FillTemperature, temperature)?;
         gas.check_temperature(Parameter::FillTemperature, temperature.enclosure().low())?;
         gas.check_temperature(Parameter::FillTemperature, temperature.enclosure().high())?;
-        Ok(Self { gas, model, pressure, temperature })
+        let balls = PlainFill {
+            model,
+            pressure: pressure.ball(),
+            temperature: temperature.ball(),
+            molar_mass: gas.molar_mass(),
+            full: *gas.heat_capacity(),
+            frozen: gas.frozen_heat_capacity(temperature.ball()),
+        };
+        Ok(Self { gas, model, pressure, temperature, balls })
     }
 
     /// The gas.
@@ -62,18 +71,14 @@ impl<'a> ThermalFill<'a> {
         self.temperature
     }
 
+    /// The fill in balls.
+    pub(super) fn balls(&self) -> &PlainFill<Ball> {
+        &self.balls
+    }
+
     /// The fill in balls, with the heat capacities of the model.
     pub(super) fn setting(&self, wall_speed: Ball) -> Setting<Ball> {
-        let temperature = self.temperature.ball();
-        PlainFill {
-            model: self.model,
-            pressure: self.pressure.ball(),
-            temperature,
-            molar_mass: self.gas.molar_mass(),
-            full: *self.gas.heat_capacity(),
-            frozen: self.gas.frozen_heat_capacity(temperature),
-        }
-        .setting(temperature.nearest(), wall_speed)
+        self.balls.setting(self.balls.temperature.nearest(), wall_speed)
     }
 }
 

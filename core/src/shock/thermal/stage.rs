@@ -26,6 +26,8 @@ pub(super) trait Stage<S> {
     fn lacking(&self, compression: S, rise: S) -> S;
     /// Negative where x never has this value.
     fn discriminant(&self, temperature_excess: S) -> S;
+    /// A lower bound of the slope of the energy that is too much, h/R, with the temperature behind, where it has one for every temperature.
+    fn least_slope(&self) -> Option<f64>;
 }
 
 /// 2 c̄ A + B: positive for too small a compression, negative for too great a one.
@@ -77,6 +79,9 @@ impl<S: Signed> Stage<S> for GivenSpeed<S> {
     fn lacking(&self, e: S, rise: S) -> S {
         rise.doubled() + e * self.rest(e)
     }
+    fn least_slope(&self) -> Option<f64> {
+        None
+    }
     #[inline(always)]
     fn discriminant(&self, x: S) -> S {
         self.m_excess.squared() - (self.m * x).doubled().doubled()
@@ -118,6 +123,10 @@ impl<S: Signed> Stage<S> for GivenSpeedChange<S> {
     #[inline(always)]
     fn lacking(&self, e: S, rise: S) -> S {
         (e * rise).doubled() + self.rest(e)
+    }
+    /// c − κ/(1 + κ) with κ = k/ε², so more than c − 1, which the check of a species puts above 1/2.
+    fn least_slope(&self) -> Option<f64> {
+        Some(0.5)
     }
     #[inline(always)]
     fn discriminant(&self, x: S) -> S {
