@@ -11,9 +11,13 @@ use endwall_tests::random::Random;
 
 const ARGON: &str = include_str!("../../examples/records/argon-b0412.json");
 const SENSOR: &str = include_str!("../../examples/records/sensor-step-c17.json");
+const KINETICS: &str = include_str!("../../examples/records/kinetics-k0207.json");
+const NITROGEN: &str = include_str!("../../examples/records/nitrogen-n0703.json");
 
 /// Short records that reach the branches which the demo files do not.
-const SHORT: [&str; 4] = [
+const SHORT: [&str; 6] = [
+    include_str!("../fuzz/seeds/humid-air-leak.json"),
+    include_str!("../fuzz/seeds/own-species.json"),
     r#"{"record":"shot/1","gas":{"Ar":"balance","He":"10.0 ± 0.1 %"},"heat_capacity":"constant","fill":{"pressure":"-0.9 ± 0.001 bar(g)",
         "temperature":"23.0 ± 0.5 degC"},"shock_speed":"950(2) m/s (dof 9)","ambient":"101.3 ± 0.2 kPa","measured":{"pressure_5":"370 ± 9 kPa"}}"#,
     r#"{"record":"shot/1","gas":{"heat_capacity_ratio":"7/5","molar_mass":"28.0134 g/mol"},"fill":{"pressure":"60 ± 0.2 Torr",
@@ -126,10 +130,12 @@ fn below(random: &mut Random, bound: usize) -> usize {
 }
 
 fn record(random: &mut Random) -> &'static str {
-    match random.below(6) {
+    match random.below(10) {
         0 => ARGON,
         1 => SENSOR,
-        short => SHORT[usize::try_from(short - 2).expect("small")],
+        2 => KINETICS,
+        3 => NITROGEN,
+        short => SHORT[usize::try_from(short - 4).expect("small")],
     }
 }
 
@@ -190,6 +196,15 @@ fn arbitrary(random: &mut Random) -> Vec<u8> {
         0 => (0..length).map(|_| random.bits().to_le_bytes()[0]).collect(),
         1 => (0..length).map(|_| *random.pick(b"{}[]\",:0123456789.eE+- \nkPamstru")).collect(),
         _ => (0..length / 4).flat_map(|_| random.pick(&TOKENS).bytes().chain(random.pick(&["", " ", "\"", ",", ":"]).bytes())).collect(),
+    }
+}
+
+/// What is damaged is good before, or the damage reaches less than it seems to.
+#[test]
+fn the_records_are_good() {
+    for record in [ARGON, SENSOR, KINETICS, NITROGEN].into_iter().chain(SHORT) {
+        let reduced = Shot::read(record.as_bytes()).and_then(|shot| shot.reduce());
+        assert!(reduced.is_ok(), "{record}: {}", reduced.unwrap_err());
     }
 }
 

@@ -19,6 +19,11 @@ use endwall_tests::oracle::{Float, Histogram, RBig, Real, float, parse, ratio};
 use endwall_tests::random::{Input, Random};
 use endwall_tests::tolerances::{ALGEBRAIC_AT_ONE_ULP, ALGEBRAIC_WIDTH, JOINT_SIDE, NEAR_A_DOUBLE, ORACLE_SELF};
 
+/// The exact answer; of what is given, the input.
+fn truth_of(case: &ThermalCase, output: Output, shot: &ThermalShot) -> Real {
+    if output == case.entry.output() { Real::Rational(case.value.exact()) } else { thermal_truth(output, shot) }
+}
+
 /// What was seen.
 #[derive(Default)]
 struct Checked {
@@ -73,7 +78,7 @@ impl Checked {
     fn output(&mut self, case: &ThermalCase, output: Output, found: endwall::number::Enclosure, nearest: f64, truth: &ThermalAnswer) {
         let name = format!("{output:?}");
         for shot in &truth.shots {
-            let truth = self.truth_of(case, output, shot);
+            let truth = truth_of(case, output, shot);
             match place(found, &truth) {
                 Place::Inside => {}
                 Place::AtAnEnd => self.count("outputs that are a double"),
@@ -94,7 +99,7 @@ impl Checked {
             let width = found.width_in_ulp();
             // An answer nearer to a double than a ball can tell leaves both neighbours of that double.
             let near = width == ALGEBRAIC_WIDTH && {
-                let truth = self.truth_of(case, output, shot);
+                let truth = truth_of(case, output, shot);
                 truth.relative_difference(&Real::from_f64(found.low().next_up())) < NEAR_A_DOUBLE
             };
             let name = if near { "answers that are a double" } else { name.as_str() };
@@ -103,10 +108,6 @@ impl Checked {
                 self.fail(&format!("{name} width"), || format!("{width} ulp in {case:?}"));
             }
         }
-    }
-
-    fn truth_of(&self, case: &ThermalCase, output: Output, shot: &ThermalShot) -> Real {
-        if output == case.entry.output() { Real::Rational(case.value.exact()) } else { thermal_truth(output, shot) }
     }
 
     /// Prints what was seen. `share` of each output has to be at one ulp or less.
@@ -135,13 +136,13 @@ fn at_joint(case: &ThermalCase, shot: &ThermalShot) -> bool {
 fn random_cases(seed: u64) {
     let mut random = Random::new(seed);
     let mut checked = Checked::default();
-    for _ in 0..cases(2_500, 250_000) {
+    for _ in 0..cases(1_800, 250_000) {
         checked.case(&random_case(&mut random), false);
     }
     checked.finish(ALGEBRAIC_AT_ONE_ULP);
 }
 
-// 10⁴ in four parts, which run side by side.
+// 7 200 (a long run: 10⁶) in four parts, which run side by side. The oracle takes 5 ms for one.
 
 #[test]
 fn random_shocks_lie_inside() {
@@ -184,18 +185,24 @@ fn beside(joint: &str) -> Vec<RBig> {
     all
 }
 
+/// The first ones, or all in a long run.
+fn some<T>(mut all: Vec<T>, usual: usize) -> Vec<T> {
+    all.truncate(cases(usual, all.len()));
+    all
+}
+
 /// Gases with data beyond 6000 K and with joints, whose jumps of the enthalpy have either sign.
 fn jumping() -> Vec<Vec<(&'static str, String)>> {
-    let mut all: Vec<_> = ["N2", "CO2", "Ar", "Kr", "O2", "H2", "NO"].map(pure).to_vec();
-    all.push(air());
-    all
+    let mut all = vec![air()];
+    all.extend(["CO2", "Ar", "N2", "Kr", "O2", "H2", "NO"].map(pure));
+    some(all, 4)
 }
 
 #[test]
 fn temperatures_2_beside_joints_of_the_data() {
     let mut checked = Checked::default();
     for portions in jumping() {
-        for (joint, fill) in [("1000", "295"), ("1000", "990"), ("6000", "900")] {
+        for (joint, fill) in some(vec![("1000", "295"), ("6000", "900"), ("1000", "990")], 2) {
             for wanted in beside(joint) {
                 let mut case = case(&portions, HeatCapacityModel::Equilibrium, fill, Entry::Mach, Input::Double(2.0));
                 case.value = typed(&case.problem(true).mach_for_temperature_2(&wanted));
@@ -253,7 +260,7 @@ fn fills_beside_joints_of_the_data() {
     for portions in jumping() {
         for model in HeatCapacityModel::ALL {
             for temperature in temperatures {
-                for excess in [1e-6, 1e-4, 0.01, 1.0, 2.0] {
+                for excess in some(vec![1e-6, 1e-4, 1.0, 0.01, 2.0], 3) {
                     checked.case(&case(&portions, model, temperature, Entry::MachExcess, Input::Double(excess)), true);
                 }
             }
@@ -268,8 +275,8 @@ fn weakest_shocks_and_all_species() {
     for name in names() {
         let portions = pure(name);
         for model in HeatCapacityModel::ALL {
-            for temperature in ["298.15", "300", "650.5"] {
-                for excess in [1e-9, 1e-8, 1e-7, 1e-6, 1e-5, 1e-3, 0.5, 1.0, 2.5, 9.0] {
+            for temperature in some(vec!["298.15", "300", "650.5"], 1) {
+                for excess in some(vec![1e-9, 1e-7, 1e-5, 0.5, 2.5, 9.0, 1e-8, 1e-6, 1e-3, 1.0], 6) {
                     checked.case(&case(&portions, model, temperature, Entry::MachExcess, Input::Double(excess)), false);
                 }
             }

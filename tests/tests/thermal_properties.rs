@@ -44,13 +44,13 @@ fn inputs() -> impl Strategy<Value = (Vec<(&'static str, String)>, f64, f64, f64
 
 /// The shock, where the data reach far enough.
 fn shock<'a>(
-    gas: ThermallyPerfectGas<'a>,
+    gas: &ThermallyPerfectGas<'a>,
     model: HeatCapacityModel,
     pressure: f64,
     temperature: f64,
     excess: f64,
 ) -> Option<ThermalShock<'a>> {
-    let fill = ThermalFill::new(gas, model, pressure, temperature).expect("a fill");
+    let fill = ThermalFill::new(*gas, model, pressure, temperature).expect("a fill");
     ThermalShock::new(&fill, Entry::MachExcess, excess).ok()
 }
 
@@ -80,7 +80,7 @@ fn entropy_rise(portions: &[Portion<'_>], from: Enclosure, to: Enclosure) -> Bal
     ends.extend(joints.map(Ball::from));
     ends.push(Ball::around(to));
     ends.windows(2).fold(Ball::whole(0), |sum, pair| {
-        let middle = (pair[0].nearest() + pair[1].nearest()) / 2.0;
+        let middle = f64::midpoint(pair[0].nearest(), pair[1].nearest());
         let at = |t: Ball| {
             mean(portions, middle, |range| {
                 let [a1, a2, a3, a4, a5, a6, a7] = range.heat_capacity.map(Coefficient::ball);
@@ -109,7 +109,7 @@ fn mass_momentum_and_energy_are_conserved() {
         let gas = ThermallyPerfectGas::new(&portions).expect("a mixture");
         let specific = molar_gas_constant::<Ball>() / gas.molar_mass();
         for model in HeatCapacityModel::ALL {
-            let Some(shock) = shock(gas, model, pressure, temperature, excess) else { continue };
+            let Some(shock) = shock(&gas, model, pressure, temperature, excess) else { continue };
             let [one, two, five] = [shock.state_1(), shock.state_2(), shock.state_5()];
             let speed = shock.output(Output::ShockSpeed);
             let back = shock.output(Output::ReflectedSpeed);
@@ -155,7 +155,7 @@ fn entropy_rises_and_the_end_wall_is_hot() {
         let portions = portions(&names);
         let gas = ThermallyPerfectGas::new(&portions).expect("a mixture");
         for model in HeatCapacityModel::ALL {
-            let Some(shock) = shock(gas, model, pressure, temperature, excess) else { continue };
+            let Some(shock) = shock(&gas, model, pressure, temperature, excess) else { continue };
             let [one, two, five] = [shock.state_1(), shock.state_2(), shock.state_5()];
             prop_assert!(one.temperature.certainly_less(five.temperature) && one.temperature.certainly_less(two.temperature));
             prop_assert!(one.pressure.certainly_less(two.pressure) && two.pressure.certainly_less(five.pressure));
@@ -241,7 +241,7 @@ fn constant_heat_capacity_is_the_closed_form() {
     check(14, 1_500, &(gas(), 100.0f64..2e5, 300.0f64..900.0, strength), |(names, pressure, temperature, excess)| {
         let portions = portions(&names);
         let gas = ThermallyPerfectGas::new(&portions).expect("a mixture");
-        let found = shock(gas, HeatCapacityModel::Constant, pressure, temperature, excess);
+        let found = shock(&gas, HeatCapacityModel::Constant, pressure, temperature, excess);
         let found = found.ok_or_else(|| TestCaseError::fail("constant heat capacity has no range to leave"))?;
         let index = gas.heat_capacity().index_at(temperature);
         let c = gas.heat_capacity().value(index, Ball::from(temperature));
@@ -269,7 +269,7 @@ fn species_of_constant_heat_capacity_have_the_closed_form_in_every_model() {
         let gamma = Rational::ratio(twice as u128, twice as u128 - 2).expect("not zero");
         let closed = closed_form(gamma, &gas, pressure, temperature, excess);
         for model in HeatCapacityModel::ALL {
-            let found = shock(gas, model, pressure, temperature, excess);
+            let found = shock(&gas, model, pressure, temperature, excess);
             same(&found.ok_or_else(|| TestCaseError::fail(format!("{model:?} refused")))?, &closed)?;
         }
         Ok(())
@@ -286,7 +286,7 @@ fn noble_gases_have_five_thirds() {
         let closed = closed_form(five_thirds, &gas, 1e4, temperature, excess);
         for model in HeatCapacityModel::ALL {
             // None where the data end.
-            let Some(found) = shock(gas, model, 1e4, temperature, excess) else {
+            let Some(found) = shock(&gas, model, 1e4, temperature, excess) else {
                 prop_assert!(closed.output(Output::Temperature5).high() > gas.range().1 || excess < 1e-5, "{model:?} refused");
                 continue;
             };
@@ -320,9 +320,9 @@ fn everything_is_linear_in_the_pressure() {
         let portions = portions(&names);
         let gas = ThermallyPerfectGas::new(&portions).expect("a mixture");
         for model in HeatCapacityModel::ALL {
-            let Some(base) = shock(gas, model, pressure, temperature, excess) else { continue };
+            let Some(base) = shock(&gas, model, pressure, temperature, excess) else { continue };
             for factor in [0.25, 3.0] {
-                let other = shock(gas, model, pressure * factor, temperature, excess).expect("as before");
+                let other = shock(&gas, model, pressure * factor, temperature, excess).expect("as before");
                 // 3 p1 is rounded.
                 let factor = Enclosure::from(pressure * factor) / Enclosure::from(pressure);
                 for output in Output::ALL {

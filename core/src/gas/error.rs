@@ -131,7 +131,7 @@ pub enum Rule {
     DataRange(f64, f64),
     /// It heats the gas beyond the temperatures between which its heat capacity is known, K.
     HeatsBeyondData(f64, f64),
-    /// It must be exact: a tolerance is not taken where the heat capacity depends on temperature.
+    /// It must be exact: a tolerance is not taken here where the heat capacity depends on temperature.
     Exact,
     /// The heat capacities of the species change their polynomials at too many temperatures.
     Ranges,
@@ -176,7 +176,10 @@ impl fmt::Display for InputError {
                 )
             }
             Rule::Exact => {
-                write!(f, "is a tolerance, which is not taken where the heat capacity depends on temperature: give one exact value")
+                write!(
+                    f,
+                    "is a tolerance, which is not taken for this problem where the heat capacity depends on temperature: give one exact value"
+                )
             }
             Rule::Ranges => {
                 write!(f, "begins more ranges than a mixture can hold: the species change their polynomials at too many temperatures")

@@ -1,6 +1,6 @@
 //! Heat capacity of an ideal gas as polynomials over adjoining ranges of temperature.
 
-use crate::number::{Ball, Dual, Elementary, Semifield, Signed};
+use crate::number::{Ball, Dual, Elementary, Enclosure, Semifield, Signed};
 
 /// Ranges, at most.
 pub const RANGES: usize = 5;
@@ -198,6 +198,16 @@ impl<S: Elementary> HeatCapacity<S> {
         });
         let last = self.at(to);
         sum + part(last, last.start, end)
+    }
+}
+
+impl<const N: usize> HeatCapacity<Dual<Enclosure, N>> {
+    /// The sum of the jumps of h/R between two ranges, K.
+    pub(crate) fn jumps_between(&self, from: usize, to: usize) -> Enclosure {
+        let (first, last) = (from.min(to), from.max(to));
+        let between = self.used().iter().skip(first + 1).take(last - first);
+        let sum = between.fold(Enclosure::whole(0), |sum, range| sum + range.jump.value());
+        if from <= to { sum } else { -sum }
     }
 }
 

@@ -3,7 +3,7 @@
 use super::error::{InputError, Parameter, Rule};
 use super::heat_capacity::HeatCapacity;
 use super::species::{Species, SpeciesRange};
-use crate::number::{Ball, Elementary, Rational, Semifield};
+use crate::number::{Ball, Elementary, Enclosure, Rational, Semifield};
 
 /// With which heat capacity the states behind the shocks are computed. "Frozen" and "equilibrium" are meant for the vibration of molecules.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -127,7 +127,7 @@ impl<'a> ThermallyPerfectGas<'a> {
     ///
     /// # Errors
     /// [`InputError`] with the range of the data for a temperature outside it.
-    pub fn heat_capacity_at(&self, temperature: f64) -> Result<crate::number::Enclosure, InputError> {
+    pub fn heat_capacity_at(&self, temperature: f64) -> Result<Enclosure, InputError> {
         self.check_temperature(Parameter::FillTemperature, temperature)?;
         let index = self.heat_capacity.index_at(temperature);
         Ok(self.heat_capacity.value(index, Ball::from(temperature)).enclosure())
@@ -211,6 +211,23 @@ impl<'a> Species<'a> {
             return Ball::whole(0);
         }
         above.enthalpy_at(temperature, logarithm) - below.enthalpy_at(temperature, logarithm)
+    }
+
+    /// `c_p`/R with vibration frozen, and its slope, over a range of the temperature of the fill.
+    fn frozen_over(&self, fill_temperature: Enclosure) -> (Enclosure, Enclosure) {
+        let rigid = Enclosure::whole(self.shape.twice_frozen_heat_capacity()) / Enclosure::whole(2);
+        let Some(range) = self.range_at(fill_temperature.middle()) else { return (Enclosure::UNKNOWN, Enclosure::UNKNOWN) };
+        let polynomial = range.polynomial(Ball::whole(0)).map(Ball::enclosure);
+        let full = polynomial.value(0, fill_temperature);
+        let slope = polynomial.scaled_slope(0, fill_temperature) / fill_temperature;
+        if full.low() >= rigid.high() {
+            (rigid, Enclosure::whole(0))
+        } else if full.high() <= rigid.low() {
+            (full, slope)
+        } else {
+            // The lesser of both, which has a kink.
+            (Enclosure::ordered(full.low(), full.high().min(rigid.high())), slope.hull(Enclosure::whole(0)))
+        }
     }
 
     /// `c_p`/R with vibration frozen at a temperature of the fill.
@@ -307,6 +324,16 @@ impl ThermallyPerfectGas<'_> {
         }
         let frozen = sum(&|species| species.frozen(fill_temperature).0);
         Some(GasSlopes { full, frozen, molar_mass: sum(&|species| species.molar_mass.ball()) })
+    }
+
+    /// The frozen heat capacity and its slope with the temperature of the fill, 1/K, over a range of that temperature inside one polynomial.
+    pub(crate) fn frozen_over(&self, fill_temperature: Enclosure) -> (Enclosure, Enclosure) {
+        let zero = || Enclosure::whole(0);
+        self.portions.iter().fold((zero(), zero()), |(value, slope), portion| {
+            let fraction = Ball::from(portion.fraction).enclosure();
+            let (own, own_slope) = portion.species.frozen_over(fill_temperature);
+            (value + fraction * own, slope + fraction * own_slope)
+        })
     }
 
     /// d`c_p`/dT of the frozen heat capacity with the temperature of the fill, times T/R: of the species whose full heat capacity is the lesser.

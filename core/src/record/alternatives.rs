@@ -6,12 +6,17 @@ use alloc::vec::Vec;
 use super::reduce::figure;
 use super::report::{Alternative, HeatCapacityChoice, Relaxation};
 use super::shot::Shot;
-use crate::gas::{HeatCapacityModel, relaxation_times};
+use crate::gas::{HeatCapacityModel, ThermallyPerfectGas, relaxation_times};
 use crate::shock::Output;
 use crate::shot::Reduction;
 
-/// Mole fraction below which the vibration of a species does not matter to the states.
-const MATTERS: f64 = 1e-3;
+/// Mole fraction below which what a molecule does inside does not matter to the states.
+pub(super) const MATTERS: f64 = 1e-3;
+
+/// Mole fraction of a species by its name; air that leaked in brings a species in twice.
+pub(super) fn share(gas: &ThermallyPerfectGas<'_>, species: &str) -> f64 {
+    gas.portions().iter().filter(|portion| portion.species.name == species).map(|portion| portion.fraction.to_f64()).sum()
+}
 
 /// All choices at the same shock speed. For a gas without species there is one only.
 pub(super) fn alternatives(shot: &Shot, reduction: &Reduction<'_>) -> HeatCapacityChoice {
@@ -33,12 +38,9 @@ pub(super) fn alternatives(shot: &Shot, reduction: &Reduction<'_>) -> HeatCapaci
         times.map(Iterator::collect::<Vec<_>>).unwrap_or_default()
     };
     let (incident, reflected) = (at(Output::Temperature2, Output::Pressure2), at(Output::Temperature5, Output::Pressure5));
-    let share = |species: &str| -> f64 {
-        gas.portions().iter().filter(|portion| portion.species.name == species).map(|portion| portion.fraction.to_f64()).sum()
-    };
     let mut relaxation: Vec<Relaxation> = Vec::new();
-    for time in reflected.iter().filter(|time| share(time.species) >= MATTERS) {
-        // Air that leaked in brings a species in twice.
+    for time in reflected.iter().filter(|time| share(gas, time.species) >= MATTERS) {
+        // A species that comes twice is listed once.
         if relaxation.iter().all(|other| other.species != time.species) {
             let before = incident.iter().find(|other| other.species == time.species).map(|other| other.time);
             let species = time.species.to_string();
@@ -47,3 +49,7 @@ pub(super) fn alternatives(shot: &Shot, reduction: &Reduction<'_>) -> HeatCapaci
     }
     HeatCapacityChoice { chosen, beside: beside.to_vec(), relaxation }
 }
+
+#[cfg(test)]
+#[path = "alternatives_tests.rs"]
+mod tests;

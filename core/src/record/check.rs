@@ -1,8 +1,10 @@
 //! Doubts about a result: they become flags.
 
 use alloc::format;
+use alloc::vec;
 use alloc::vec::Vec;
 
+use super::alternatives::{MATTERS, share};
 use super::flag::Flag;
 use super::format::significant;
 use super::quantity::Absolute;
@@ -10,7 +12,7 @@ use super::reduce::{left_aside, station_name};
 use super::report::{ReportQuantity, States};
 use super::shot::Shot;
 use crate::gas::species::Shape;
-use crate::gas::{HeatCapacityModel, shortenings};
+use crate::gas::{HeatCapacityModel, ThermallyPerfectGas, shortenings};
 use crate::number::Rational;
 use crate::shock::{ThermalShock, Wave};
 use crate::shot::{EndWall, Fit, FitFlags, Outlier, Reduction, Solved};
@@ -137,7 +139,7 @@ fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>)
     let gas = shock.fill().gas();
     let present = || gas.portions().iter().filter(|portion| portion.fraction.is_positive()).map(|portion| portion.species);
     for (name, limit) in DISSOCIATION {
-        if temperature > limit && present().any(|species| species.name == name) {
+        if temperature > limit && share(gas, name) >= MATTERS {
             let text = format!(
                 "at {kelvin} K {name} dissociates (above about {limit} K), which the model of a gas of fixed composition leaves out"
             );
@@ -154,10 +156,29 @@ fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>)
             format!("the heat capacity is taken as that of the fill, but at {kelvin} K molecules vibrate: compare the other choices");
         flags.push(Flag::new("constant-heat-capacity", text));
     }
-    for remark in shortenings(gas) {
-        let text = format!("{remark}: then the relaxation times of the report are upper limits");
-        flags.push(Flag::new("relaxation-shortened", text));
+    flags.extend(shortened_relaxation(gas));
+}
+
+/// One flag for each species that shortens the relaxation of others.
+fn shortened_relaxation(gas: &ThermallyPerfectGas<'_>) -> Vec<Flag> {
+    // Air that leaked in brings a species in twice.
+    let mut pairs: Vec<(&str, Vec<&str>)> = Vec::new();
+    for remark in shortenings(gas).filter(|remark| share(gas, remark.species) >= MATTERS) {
+        match pairs.iter_mut().find(|(by, _)| *by == remark.by) {
+            Some((_, shortened)) if shortened.contains(&remark.species) => {}
+            Some((_, shortened)) => shortened.push(remark.species),
+            None => pairs.push((remark.by, vec![remark.species])),
+        }
     }
+    let flag = |(by, shortened): (&str, Vec<&str>)| {
+        let percent = significant(share(gas, by) * 100.0, 3);
+        let text = format!(
+            "{by} ({percent} % by mole) can shorten the vibrational relaxation of {} by a factor of 10 to 1000: then the relaxation times of this report are upper limits",
+            shortened.join(", ")
+        );
+        Flag::new("relaxation-shortened", text)
+    };
+    pairs.into_iter().map(flag).collect()
 }
 
 /// The temperature after a measured change of the pressure at the end wall.

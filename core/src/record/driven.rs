@@ -233,3 +233,7 @@ impl Shot {
         RecordError::new(ErrorKind::Value, "gas", "", wrong.to_string(), "type fewer digits")
     }
 }
+
+#[cfg(test)]
+#[path = "driven_tests.rs"]
+mod tests;

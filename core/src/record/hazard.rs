@@ -6,11 +6,12 @@ use alloc::string::String;
 use super::flag::Flag;
 use super::gas::{Component, GasRecord};
 use super::optional::Driver;
+use super::species::OwnSpecies;
 
 /// Fuels that are no hydrocarbons.
 const FUELS: [&str; 8] = ["H2", "D2", "HD", "CO", "NH3", "H", "D", "H2S"];
 /// What a fuel burns with.
-const OXIDISERS: [&str; 9] = ["O2", "O", "O3", "N2O", "NO2", "NO", "N2O4", "OH", "Air"];
+const OXIDISERS: [&str; 9] = ["O2", "O", "O3", "N2O", "NO2", "NO", "N2O4", "OH", super::driven::AIR];
 
 /// The cautions of a text report, in the order in which they are printed.
 pub(super) const CAUTIONS: [&str; 9] = [
@@ -25,19 +26,21 @@ pub(super) const CAUTIONS: [&str; 9] = [
     "For screening only: local codes, site rules and a licensed engineer decide. No number here authorises a shot.",
 ];
 
-/// The flag for a mixture that can burn, by itself or with a hydrogen driver.
-pub(super) fn can_burn(gas: &GasRecord, driver: Option<&Driver>) -> Option<Flag> {
+/// The flag for a mixture that can burn, by itself or with a hydrogen driver. What a species of the record's own can do is not known.
+pub(super) fn can_burn(gas: &GasRecord, own: &[OwnSpecies], driver: Option<&Driver>) -> Option<Flag> {
     let oxidiser = find(gas, |species| OXIDISERS.contains(&species))?;
     let fuel = find(gas, is_fuel);
+    let unknown = find(gas, |species| own.iter().any(|own| own.name == species));
     let driver_gas = driver.and_then(|driver| driver.gas.as_ref());
     let of_driver = driver_gas.and_then(|gas| find(gas, |species| matches!(species, "H2" | "D2" | "HD")));
-    let fuel = match (fuel, of_driver) {
-        (Some(species), _) => format!("it holds {species} and {oxidiser}"),
-        (None, Some(species)) => format!("it holds {oxidiser} and the driver holds {species}"),
-        (None, None) => return None,
+    let why = match (fuel, of_driver, unknown) {
+        (Some(species), ..) => format!("this mixture can burn: it holds {species} and {oxidiser}"),
+        (None, Some(species), _) => format!("this mixture can burn: it holds {oxidiser} and the driver holds {species}"),
+        (None, None, Some(species)) => format!("this mixture can burn if {species} is a fuel: it holds {oxidiser}"),
+        (None, None, None) => return None,
     };
     let text = format!(
-        "this mixture can burn: {fuel}. All pressures here, and every comparison with a rating, are for the unburnt gas; burning or detonation exceeds them several times"
+        "{why}. All pressures here, and every comparison with a rating, are for the unburnt gas; burning or detonation exceeds them several times"
     );
     Some(Flag::new("can-burn", text))
 }
@@ -51,4 +54,44 @@ fn find(gas: &GasRecord, wanted: impl Fn(&str) -> bool) -> Option<&String> {
 /// Hydrocarbons and their relatives have carbon and hydrogen in their formula.
 fn is_fuel(species: &str) -> bool {
     FUELS.contains(&species) || (species.starts_with('C') && species.contains('H'))
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::record::Shot;
+
+    fn caution(gas: &str, rest: &str) -> Option<alloc::string::String> {
+        let file = alloc::format!(
+            r#"{{ "record": "shot/1", "gas": {gas}, "heat_capacity": "equilibrium", {rest}
+            "fill": {{ "pressure": "10 kPa", "temperature": "295 K" }}, "shock_speed": "900 m/s" }}"#
+        );
+        let shot = Shot::read(file.as_bytes()).unwrap_or_else(|error| panic!("{error}"));
+        shot.flags.first().filter(|flag| flag.code == "can-burn").map(|flag| flag.text.clone())
+    }
+
+    const OWN: &str = r#""species": { "heptane": { "molar_mass": "100.2 g/mol", "shape": "other",
+        "ranges": [ { "from": "250 K", "to": "3000 K", "heat_capacity": [0, 0, 20, 0, 0, 0, 0], "enthalpy": 0 } ] } },"#;
+
+    #[test]
+    fn what_can_burn_is_said_first() {
+        for (gas, rest, said) in [
+            (r#"{ "CH4": "0.5 %", "O2": "1 %", "Ar": "balance" }"#, "", "this mixture can burn: it holds CH4 and O2"),
+            (r#"{ "CO": "1 %", "air": "balance" }"#, "", "it holds CO and air"),
+            (r#"{ "NH3": "1 %", "N2O": "1 %", "Ar": "balance" }"#, "", "it holds NH3 and N2O"),
+            (r#"{ "air": "balance" }"#, r#""driver": { "gas": { "H2": "balance" } },"#, "it holds air and the driver holds H2"),
+            (r#"{ "heptane": "1 %", "air": "balance" }"#, OWN, "can burn if heptane is a fuel: it holds air"),
+        ] {
+            let text = caution(gas, rest).expect(gas);
+            assert!(text.contains(said) && text.contains("are for the unburnt gas"), "{text}");
+        }
+        for (gas, rest) in [
+            (r#"{ "air": "balance" }"#, ""),
+            (r#"{ "CH4": "1 %", "Ar": "balance" }"#, ""),
+            (r#"{ "CO2": "10 %", "O2": "balance" }"#, ""),
+            (r#"{ "CH4": "0 %", "O2": "1 %", "Ar": "balance" }"#, ""),
+            (r#"{ "heptane": "1 %", "Ar": "balance" }"#, OWN),
+        ] {
+            assert_eq!(caution(gas, rest), None, "{gas}");
+        }
+    }
 }

@@ -165,7 +165,7 @@ impl HeatCapacityChoice {
 pub struct Alternative {
     /// The choice.
     pub heat_capacity: &'static str,
-    /// T2, K; `None` where the states leave the data.
+    /// T2, K; `None` where this choice has no answer: the states leave the data, or the wave is slower than sound.
     #[serde(rename = "2.temperature")]
     pub temperature_2: Option<ReportQuantity>,
     /// T5, K.

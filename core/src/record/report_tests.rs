@@ -24,6 +24,20 @@ fn state(pressure: f64, temperature: f64) -> ReportState {
     }
 }
 
+fn alternative(heat_capacity: &'static str, temperature: Option<f64>) -> Alternative {
+    let of = |value, unit| quantity(value, unit, Some(5.0), true);
+    Alternative {
+        heat_capacity,
+        temperature_2: temperature.map(|value| of(value / 2.0, "K")),
+        temperature: temperature.map(|value| of(value, "K")),
+        pressure: temperature.map(|value| of(value * 200.0, "Pa")),
+    }
+}
+
+fn relaxation(species: &str, incident: Option<f64>, reflected: Option<f64>) -> Relaxation {
+    Relaxation { species: species.into(), incident, reflected, factor: 5.0 }
+}
+
 /// Invented figures: only the form is looked at.
 fn report(shot: &Shot) -> Report {
     let Speed::Stations(stations) = &shot.speed else { panic!("stations") };
@@ -37,6 +51,15 @@ fn report(shot: &Shot) -> Report {
         states: States { fill: state(8000.0, 296.2), incident: state(86_000.0, 1060.0), reflected: state(372_000.0, 2090.0) },
         reflected: Reflected { speed: quantity(534.0, "m/s", Some(1.0), true), mach: quantity(2.0, "1", None, true) },
         step: quantity(364_000.0, "Pa", Some(800.0), true),
+        heat_capacity: HeatCapacityChoice {
+            chosen: "equilibrium",
+            beside: alloc::vec![
+                alternative("equilibrium", Some(2090.0)),
+                alternative("frozen", Some(2194.5)),
+                alternative("frozen then equilibrium", None)
+            ],
+            relaxation: alloc::vec![relaxation("O2", Some(2.1e-4), Some(3.0e-10)), relaxation("N2", None, Some(1.9e-3)),],
+        },
         fit: Some(Fit {
             stations: stations.iter().map(line).collect(),
             chi_squared: Some(1.5),
@@ -66,12 +89,23 @@ fn the_object_has_the_keys_in_their_order() {
     let (report, _) = example();
     let json: serde_json::Value = serde_json::from_str(&report.to_json().unwrap()).unwrap();
     let keys = |value: &serde_json::Value| value.as_object().unwrap().keys().cloned().collect::<Vec<_>>();
-    assert_eq!(keys(&json), ["incident", "states", "reflected", "step", "fit", "budget", "correlation", "flags", "made_by"]);
+    assert_eq!(
+        keys(&json),
+        ["incident", "states", "reflected", "step", "heat_capacity", "fit", "budget", "correlation", "flags", "made_by"]
+    );
     assert_eq!(keys(&json["incident"]), ["speed", "mach", "attenuation"]);
     assert_eq!(keys(&json["states"]), ["1", "2", "5"]);
     assert_eq!(keys(&json["states"]["5"]), ["pressure", "temperature", "density", "sound_speed", "gas_speed"]);
     assert_eq!(keys(&json["step"]), ["value", "unit", "proven", "standard_uncertainty", "expanded", "coverage_factor"]);
     assert_eq!(keys(&json["incident"]["speed"]), ["value", "unit", "standard_uncertainty", "expanded", "coverage_factor"]);
+    let choice = &json["heat_capacity"];
+    assert_eq!(keys(choice), ["chosen", "beside", "relaxation"]);
+    assert_eq!(choice["chosen"], "equilibrium");
+    assert_eq!(keys(&choice["beside"][0]), ["heat_capacity", "2.temperature", "5.temperature", "5.pressure"]);
+    assert_eq!(keys(&choice["beside"][0]["5.temperature"]), keys(&json["step"]));
+    assert!(choice["beside"][2]["5.temperature"].is_null());
+    assert_eq!(keys(&choice["relaxation"][0]), ["species", "2", "5", "factor"]);
+    assert!(choice["relaxation"][1]["2"].is_null());
     assert_eq!(keys(&json["fit"]), ["stations", "chi_squared", "degrees_of_freedom"]);
     assert_eq!(keys(&json["fit"]["stations"][0]), ["name", "residual", "standardised"]);
     assert_eq!(keys(&json["budget"][0]), ["input", "standard_uncertainty", "share"]);
@@ -118,6 +152,38 @@ fn the_text_says_what_a_referee_and_a_technician_need() {
     }
     let typed: Vec<usize> = shot.entries.iter().map(|entry| text.find(&entry.path).unwrap()).collect();
     assert!(typed.is_sorted(), "the echo left the order of the file");
+}
+
+#[test]
+fn the_choices_stand_side_by_side_with_the_times_that_tell_which_is_nearer() {
+    let (mut report, shot) = example();
+    let text = report.to_text(&shot);
+    let section = text.split("Choice of the heat capacity").nth(1).unwrap().split("Uncertainty budget").next().unwrap();
+    assert!(section.contains(&report.heat_capacity.to_text(&shot)));
+    let row = |start: &str| section.lines().find(|line| line.starts_with(start)).unwrap().split_whitespace().collect::<Vec<_>>().join(" ");
+    assert_eq!(row("equilibrium"), "equilibrium 1045 ± 10 K 2090 ± 10 K 418.000 ± 0.010 kPa chosen");
+    assert!(row("frozen ").ends_with("+5.00 %"), "{section}");
+    assert_eq!(row("frozen then"), "frozen then equilibrium no answer no answer no answer");
+    assert!(section.contains("No answer: "));
+    // Below a nanosecond the formula says nothing.
+    assert_eq!(row("O2"), "O2 210 us less than 1 ns 5");
+    assert_eq!(row("N2"), "N2 - 1.9 ms 5");
+    let words = section.split_whitespace().collect::<Vec<_>>().join(" ");
+    assert!(words.contains("An observation in state 5 that begins well after 1.9 ms sees it in equilibrium; between them some"), "{words}");
+    // With one answer for all there is nothing to compare.
+    report.heat_capacity.beside.clear();
+    assert!(!report.to_text(&shot).contains("Choice of the heat capacity"));
+    assert_eq!(report.heat_capacity.to_text(&shot), "");
+}
+
+#[test]
+fn uncertainties_without_a_unit_are_explained() {
+    let (mut report, shot) = example();
+    assert!(!report.to_text(&shot).contains("Composition:") && !report.to_text(&shot).contains("Gas data:"));
+    report.budget[0].input = "composition".into();
+    assert!(report.to_text(&shot).contains("Composition: mole fractions"));
+    report.budget[0].input = "gas data".into();
+    assert!(report.to_text(&shot).contains("Gas data: relative"));
 }
 
 #[test]

@@ -164,7 +164,7 @@ impl Shot {
         for key in ["tube", "driver"].into_iter().filter(|key| fields.get(key).is_some()) {
             flags.push(Flag::not_used(key));
         }
-        if let Some(flag) = hazard::can_burn(&gas, driver.as_ref()) {
+        if let Some(flag) = hazard::can_burn(&gas, &species, driver.as_ref()) {
             flags.insert(0, flag);
         }
         let entries = read::entries(&node, &reading);

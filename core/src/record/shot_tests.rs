@@ -191,7 +191,7 @@ fn mistakes_of_the_trade_are_refused() {
         &[
             ("-93.3 ± 0.02 kPa(g)", "-101.3 kPa(g)", "fill.pressure", "greater than zero"),
             (r#""Ar": "balance""#, r#""Ar": "98.4 %""#, "gas", "sum to 0.999"),
-            (r#""heat_capacity": "frozen then equilibrium","#, "", "heat_capacity", "missing"),
+            ("frozen then equilibrium", "frozen, then equilibrium", "heat_capacity", "write one of \"constant\""),
             // Stations swapped or measured from the diaphragm.
             ("0.8299(3) ms", "1.8299(3) ms", "stations", "stations S3 and S4 contradict each other"),
             ("850 ± 0.3 mm", "1850 ± 0.3 mm", "stations", "stations S3 and S1"),

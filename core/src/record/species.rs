@@ -113,3 +113,7 @@ fn coefficient(node: &Node, path: &str) -> Result<Coefficient, RecordError> {
         RecordError::new(ErrorKind::Value, path, typed, "this is not a decimal number", remedy)
     })
 }
+
+#[cfg(test)]
+#[path = "species_tests.rs"]
+mod tests;

@@ -24,11 +24,13 @@ pub(super) fn choices(page: &mut Page, choice: &HeatCapacityChoice, units: Displ
     let chosen = choice.beside.iter().find(|other| other.heat_capacity == choice.chosen);
     let chosen = chosen.and_then(|other| other.temperature.as_ref()).map(|temperature| temperature.value);
     for other in &choice.beside {
-        let shown =
-            |quantity: &Option<ReportQuantity>| quantity.as_ref().map_or("outside the data".to_string(), |quantity| units.show(quantity));
+        let shown = |quantity: &Option<ReportQuantity>| quantity.as_ref().map_or("no answer".to_string(), |quantity| units.show(quantity));
         let difference = match (chosen, &other.temperature) {
             _ if other.heat_capacity == choice.chosen => "chosen".to_string(),
-            (Some(chosen), Some(own)) => format!("{:+.2} %", 100.0 * (own.value / chosen - 1.0)),
+            (Some(chosen), Some(own)) => {
+                let percent = format!("{:+.2} %", 100.0 * (own.value / chosen - 1.0));
+                if percent == "-0.00 %" { "+0.00 %".to_string() } else { percent }
+            }
             _ => String::new(),
         };
         rows.push(row([
@@ -42,8 +44,11 @@ pub(super) fn choices(page: &mut Page, choice: &HeatCapacityChoice, units: Displ
     page.table(&rows);
     page.paragraph(
         "",
-        "All at the same shock speed. The spread of the choices is a question of the model: it is no uncertainty and is not part of U.",
+        "All at the same shock speed. The spread of the choices is a question of the model: it is no uncertainty and is not added to one.",
     );
+    if choice.beside.iter().any(|other| other.temperature.is_none()) {
+        page.paragraph("", "No answer: the states leave the data of the gas, or the wave is no shock with that heat capacity.");
+    }
     if choice.relaxation.is_empty() {
         return;
     }
@@ -62,16 +67,22 @@ fn nearer(choice: &HeatCapacityChoice) -> String {
     let times = || choice.relaxation.iter().filter_map(|relaxing| relaxing.reflected);
     let (quickest, slowest) = (times().fold(f64::INFINITY, f64::min), times().fold(0.0, f64::max));
     let whose = if choice.relaxation.len() == 1 { "its" } else { "their" };
+    let frozen = if quickest < SHORTEST {
+        "An observation in state 5".to_string()
+    } else {
+        format!("An observation in state 5 that is over well before {} sees {whose} vibration frozen, one", relaxation_time(quickest))
+    };
     let between = if quickest < slowest { "; between them some are still frozen and others are not" } else { "" };
     format!(
-        "An observation in state 5 that is over well before {} sees {whose} vibration frozen, one that begins well after {} sees it in equilibrium{between}. Where a time in state 2 is much longer than the gas spends there, \"frozen then equilibrium\" is nearer than \"equilibrium\". Times by the empirical formula of Millikan and White (1963); a molecule that is not listed has none by it.",
-        relaxation_time(quickest),
-        relaxation_time(slowest)
+        "{frozen} that begins well after {} sees it in equilibrium{between}. Where a time in state 2 is much longer than the gas spends there, \"frozen then equilibrium\" is nearer than \"equilibrium\". Times by the empirical formula of Millikan and White (1963); a molecule that is not listed has none by it.",
+        relaxation_time(slowest.max(SHORTEST))
     )
 }
 
-/// The formula was made for microseconds and longer: below a nanosecond its digits mean nothing.
+/// Below a nanosecond the digits of the formula, which was made for microseconds and longer, mean nothing, s.
+const SHORTEST: f64 = 1e-9;
+
 fn relaxation_time(seconds: f64) -> String {
-    let unit = [(1.0, "s"), (1e-3, "ms"), (1e-6, "us"), (1e-9, "ns")].into_iter().find(|(unit, _)| seconds >= *unit);
+    let unit = [(1.0, "s"), (1e-3, "ms"), (1e-6, "us"), (SHORTEST, "ns")].into_iter().find(|(unit, _)| seconds >= *unit);
     unit.map_or("less than 1 ns".to_string(), |(unit, symbol)| format!("{} {symbol}", significant(seconds / unit, 2)))
 }

@@ -189,7 +189,7 @@ impl Incident {
         let slopes = |[value, excess, pressure, temperature, molar_mass, wall_speed]: [Dual<Enclosure, 6>; 6]| {
             let (problem, z) = self.over_box([value, excess, pressure, temperature, molar_mass]);
             let over_box = Approach::new(&problem, z, wall_speed).evaluate(output, shock);
-            over_box.unwrap_or(Dual::constant(Enclosure::UNKNOWN))
+            over_box.unwrap_or(Dual::with_slopes(Enclosure::UNKNOWN, [Enclosure::UNKNOWN; 6]))
         };
         let [value, excess, pressure, temperature, molar_mass] = self.inputs();
         bounds([value, excess, pressure, temperature, molar_mass, wall_speed], slopes, |inputs| {

@@ -4,6 +4,9 @@
 //! the reason on standard error.
 
 mod failure;
+mod gas;
+mod gases;
+mod options;
 mod output;
 mod progress;
 mod reduce;
@@ -38,6 +41,7 @@ enum Task {
     Reduce(reduce::Arguments),
     States(states::Arguments),
     Table(table::Arguments),
+    Gases(gases::Arguments),
 }
 
 fn main() -> ExitCode {
@@ -45,6 +49,7 @@ fn main() -> ExitCode {
         Task::Reduce(arguments) => reduce::run(&arguments),
         Task::States(arguments) => states::run(&arguments),
         Task::Table(arguments) => table::run(&arguments),
+        Task::Gases(arguments) => gases::run(&arguments),
     };
     match done {
         Ok(()) => ExitCode::SUCCESS,

@@ -2,7 +2,7 @@
 
 mod common;
 
-use common::{ARGON, SENSOR, changed, endwall, reduce};
+use common::{ARGON, KINETICS, NITROGEN, SENSOR, changed, endwall, reduce};
 use endwall::record::Shot;
 use serde_json::Value;
 
@@ -22,9 +22,9 @@ fn keys(value: &Value) -> Vec<&str> {
 fn the_json_object_has_exactly_the_keys_of_the_format_in_their_order() {
     let quantity = ["value", "unit", "proven", "standard_uncertainty", "expanded", "coverage_factor"];
     let fitted = ["value", "unit", "standard_uncertainty", "expanded", "coverage_factor"];
-    for record in [ARGON, SENSOR] {
+    for record in [ARGON, SENSOR, KINETICS, NITROGEN] {
         let report = json(record);
-        let top = ["incident", "states", "reflected", "step", "fit", "budget", "correlation", "flags", "made_by"];
+        let top = ["incident", "states", "reflected", "step", "heat_capacity", "fit", "budget", "correlation", "flags", "made_by"];
         assert_eq!(keys(&report), top);
         assert_eq!(keys(&report["incident"]), ["speed", "mach", "attenuation"]);
         assert_eq!(keys(&report["incident"]["speed"]), fitted);
@@ -40,6 +40,14 @@ fn the_json_object_has_exactly_the_keys_of_the_format_in_their_order() {
         }
         assert_eq!(keys(&report["reflected"]), ["speed", "mach"]);
         assert_eq!(keys(&report["step"]), quantity);
+        assert_eq!(keys(&report["heat_capacity"]), ["chosen", "beside", "relaxation"]);
+        for other in report["heat_capacity"]["beside"].as_array().unwrap() {
+            assert_eq!(keys(other), ["heat_capacity", "2.temperature", "5.temperature", "5.pressure"]);
+            assert!(keys(other)[1..].iter().all(|name| keys(&other[*name]) == quantity));
+        }
+        for time in report["heat_capacity"]["relaxation"].as_array().unwrap() {
+            assert_eq!(keys(time), ["species", "2", "5", "factor"]);
+        }
         assert_eq!(keys(&report["fit"]), ["stations", "chi_squared", "degrees_of_freedom"]);
         assert_eq!(keys(&report["fit"]["stations"][0]), ["name", "residual", "standardised"]);
         for line in report["budget"].as_array().unwrap() {
@@ -58,7 +66,7 @@ fn the_json_object_has_exactly_the_keys_of_the_format_in_their_order() {
 
 #[test]
 fn printed_numbers_read_back_to_the_same_doubles() {
-    for record in [ARGON, SENSOR, BY_SPEED] {
+    for record in [ARGON, SENSOR, BY_SPEED, KINETICS, NITROGEN] {
         let printed = json(record);
         let report = Shot::read(record.as_bytes()).unwrap().reduce().unwrap();
         let same = |printed: &Value, wanted: f64| {
@@ -131,7 +139,7 @@ fn sections(report: &str) -> Vec<(String, String)> {
 
 #[test]
 fn the_text_keeps_arithmetic_and_measurement_apart() {
-    for record in [ARGON, SENSOR, BY_SPEED] {
+    for record in [ARGON, SENSOR, BY_SPEED, KINETICS, NITROGEN] {
         let text = reduce(record, &["--monte-carlo"]).good();
         assert!(text.contains("standard uncertainty"));
         let sections = sections(&text);
@@ -142,6 +150,63 @@ fn the_text_keeps_arithmetic_and_measurement_apart() {
         let words: Vec<&str> = text.split_whitespace().collect();
         assert!(words.join(" ").contains("No number here authorises a shot."));
     }
+}
+
+#[test]
+fn the_demo_of_a_mixture_says_what_a_chemist_must_know() {
+    let text = reduce(KINETICS, &[]).good();
+    let words = text.split_whitespace().collect::<Vec<_>>().join(" ");
+    for wanted in [
+        "! [can-burn] this mixture can burn: it holds CH4 and O2. All pressures here,",
+        "! [leak] 0.0250 % of the driven gas is taken as air that leaked in",
+        "! [pressure-change] after the pressure changed by 4.00 % the temperature is 21",
+        "[measured-agrees] measured.pressure_5",
+        "gas data: NASA/TP-2002-211556",
+        "Times by the empirical formula of Millikan and White (1963)",
+        "Composition: mole fractions",
+    ] {
+        assert!(words.contains(wanted), "{wanted}: {text}");
+    }
+    // The caution stands before every other flag.
+    assert!(text.find("[can-burn]") < text.find("[leak]") && text.find("[can-burn]").unwrap() < text.find("\nInput").unwrap());
+    let report = json(KINETICS);
+    assert_eq!(report["heat_capacity"]["chosen"], "equilibrium");
+    assert_eq!(report["heat_capacity"]["beside"][1]["5.temperature"], report["states"]["5"]["temperature"]);
+    let inputs: Vec<&str> = report["budget"].as_array().unwrap().iter().map(|line| line["input"].as_str().unwrap()).collect();
+    assert_eq!(inputs.iter().filter(|input| **input == "composition").count(), 1, "{inputs:?}");
+    assert_eq!(inputs.last(), Some(&"gas data"));
+    // The times were made up for 968 m/s at the wall and 0.9 %/m.
+    for (quantity, truth) in [(&report["incident"]["speed"], 968.0), (&report["incident"]["attenuation"], 0.009)] {
+        let of = |name: &str| quantity[name].as_f64().unwrap();
+        assert!((of("value") - truth).abs() < 3.0 * of("standard_uncertainty"), "{quantity}");
+    }
+    let silent = changed(KINETICS, "  \"heat_capacity\": \"equilibrium\",\n", "");
+    let flags = json(&silent)["flags"].to_string();
+    assert!(flags.contains("heat-capacity-not-chosen"), "{flags}");
+    let frozen = json(&changed(KINETICS, "\"equilibrium\"", "\"frozen then equilibrium\""));
+    assert_eq!(frozen["states"]["5"]["temperature"], report["heat_capacity"]["beside"][3]["5.temperature"]);
+}
+
+#[test]
+fn the_demo_of_frozen_nitrogen_shows_the_times_behind_its_choice() {
+    let report = json(NITROGEN);
+    assert_eq!(report["heat_capacity"]["chosen"], "frozen");
+    assert_eq!(report["flags"].to_string(), "[]");
+    // Frozen nitrogen is a gas of 7/2 R: the closed forms for γ 7/5 at this shock speed.
+    let of = |pointer: &str| report.pointer(pointer).unwrap()["value"].as_f64().unwrap();
+    let m2 = of("/incident/speed").powi(2) * 0.028_013_4 / (1.4 * 8.314_462_618_153_24 * 296.05);
+    let z = m2 - 1.0;
+    let t51 = (1.0 + 2.0 * 0.4 * z / 2.4) * (1.0 + 3.2 * z / 2.4) / m2;
+    assert!((of("/states/5/temperature") / (296.05 * t51) - 1.0).abs() < 1e-12);
+    let time = &report["heat_capacity"]["relaxation"][0];
+    assert!(time["species"] == "N2" && time["factor"] == 1.5 && time["5"].as_f64().unwrap() > 1e-3, "{time}");
+    assert!(reduce(NITROGEN, &[]).good().contains(" Torr (k=2)"));
+}
+
+#[test]
+fn a_monte_carlo_run_checks_a_mixture() {
+    let text = reduce(KINETICS, &["--monte-carlo", "200000"]).good();
+    assert!(text.contains("[monte-carlo-agrees]") && text.contains("seed 1"), "{text}");
 }
 
 #[test]
@@ -280,7 +345,7 @@ fn a_reader_that_goes_away_is_no_panic() {
 #[test]
 fn the_command_says_what_it_is() {
     assert_eq!(endwall(&["--version"], b"").good().trim(), concat!("endwall ", env!("CARGO_PKG_VERSION")));
-    for task in ["reduce", "states", "table"] {
+    for task in ["reduce", "states", "table", "gases"] {
         assert!(endwall(&["--help"], b"").good().contains(task));
         assert!(endwall(&[task, "--help"], b"").good().contains("Usage: endwall"));
     }

@@ -3,17 +3,21 @@
 use arbitrary::Arbitrary;
 
 /// The demo records, and short ones for the branches that those do not take.
-const GOOD: [&str; 5] = [
+const GOOD: [&str; 9] = [
     include_str!("../../../examples/records/argon-b0412.json"),
+    include_str!("../../../examples/records/kinetics-k0207.json"),
+    include_str!("../../../examples/records/nitrogen-n0703.json"),
     include_str!("../../../examples/records/sensor-step-c17.json"),
     include_str!("../seeds/mixture-moving-wall.json"),
     include_str!("../seeds/ratio-yielding-wall.json"),
     include_str!("../seeds/driver-and-tube.json"),
+    include_str!("../seeds/humid-air-leak.json"),
+    include_str!("../seeds/own-species.json"),
 ];
 
 /// Units of all dimensions, and some that are none.
-const UNITS: [&str; 20] = [
-    "kPa", "Pa", "bar(g)", "Torr", "psi(a)", "K", "degC", "degF", "m", "mm", "in", "s", "us", "m/s", "g/mol", "%", "ppm", "%/m", "", "Kpa",
+const UNITS: [&str; 21] = [
+    "Pa/min", "kPa", "Pa", "bar(g)", "Torr", "psi(a)", "K", "degC", "degF", "m", "mm", "in", "s", "us", "m/s", "g/mol", "%", "ppm", "%/m", "", "Kpa",
 ];
 
 /// What may follow a unit.

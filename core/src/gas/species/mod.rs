@@ -4,6 +4,7 @@ mod check;
 mod coefficient;
 pub mod table;
 
+pub(crate) use check::EXTENSION;
 pub use check::SpeciesError;
 pub use coefficient::Coefficient;
 

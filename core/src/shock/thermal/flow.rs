@@ -81,8 +81,23 @@ impl<S: Elementary> ThermalFlow<S> {
         compression: S,
         (reflected_compression, reflected_mean): (S, S),
     ) -> Self {
-        let (reflected, behind, closing_speed) = reflected_stage(setting, incident, ranges, compression);
-        let reflected_excess = reflected.temperature_excess(reflected_compression);
+        let (reflected, behind, _) = reflected_stage(setting, incident, ranges, compression);
+        let both = [
+            (compression, incident.temperature_excess(compression)),
+            (reflected_compression, reflected.temperature_excess(reflected_compression)),
+        ];
+        Self::from_parts(setting, incident, &reflected, ranges, both, (behind, reflected_mean))
+    }
+
+    /// From compressions, temperature excesses and what else was formed of them.
+    pub(super) fn from_parts(
+        setting: &Setting<S>,
+        incident: &GivenSpeed<S>,
+        reflected: &GivenSpeedChange<S>,
+        ranges: Ranges,
+        [(compression, excess), (reflected_compression, reflected_excess)]: [(S, S); 2],
+        (behind, reflected_mean): (S, S),
+    ) -> Self {
         let scale = setting.scale();
         Self {
             pressure: setting.pressure,
@@ -92,8 +107,8 @@ impl<S: Elementary> ThermalFlow<S> {
             m: incident.m,
             m_excess: incident.m_excess,
             compression,
-            excess: incident.temperature_excess(compression),
-            closing_speed,
+            excess,
+            closing_speed: setting.closing_speed(incident.m, compression),
             wall_speed: setting.wall_speed,
             k: reflected.k,
             reflected_compression,

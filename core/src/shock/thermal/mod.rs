@@ -9,6 +9,7 @@ mod setting;
 mod shock;
 mod slopes;
 mod stage;
+mod tolerance;
 pub use error::ThermalError;
 pub use flow::ThermalFlow;
 pub use plain::{PlainFill, PlainShock};

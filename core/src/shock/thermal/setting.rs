@@ -69,9 +69,9 @@ impl<S: Elementary> Setting<S> {
     /// Δ = (h(T2) − h2)/(R T2), h2 the enthalpy that state 2 carries.
     pub(super) fn lag(&self, ranges: Ranges, excess: S) -> S {
         self.lagging.map_or(S::whole(0), |first| {
-            let full = self.reflected.rise(first, self.temperature, excess, ranges.ahead);
-            let carried = self.incident.rise(ranges.first, self.temperature, excess, ranges.second);
-            (full - carried) / (S::whole(1) + excess)
+            let full = self.reflected.mean(first, self.temperature, excess, ranges.ahead);
+            let carried = self.incident.mean(ranges.first, self.temperature, excess, ranges.second);
+            (full - carried) * excess / (S::whole(1) + excess)
         })
     }
 }

@@ -1,11 +1,12 @@
 //! What is computed: the object that `--json` prints.
 
 use endwall::number::{Enclosure, Semifield};
-use endwall::record::{Flag, Incident, Reflected, ReportQuantity, ReportState, States};
+use endwall::record::{Flag, HeatCapacityChoice, Incident, Reflected, Report, ReportQuantity, ReportState, States};
 use endwall::shock::{Output, WallReflection};
 use serde::Serialize;
 
 use super::input::Input;
+use super::shock::Shock;
 use crate::failure::Failure;
 
 /// The answer, laid out like the report of a shot as far as it goes. Without measurements there are no uncertainties: they are null.
@@ -21,6 +22,8 @@ pub struct Answer {
     pub step: ReportQuantity,
     /// (p5 − p1)/(p2 − p1).
     pub reflected_pressure_coefficient: ReportQuantity,
+    /// The heat capacity that was chosen, and what the others would give at the same shock speed.
+    pub heat_capacity: HeatCapacityChoice,
     /// What the reader must know.
     pub flags: Vec<Flag>,
     /// How it came about.
@@ -31,14 +34,25 @@ pub struct Answer {
 #[derive(Serialize)]
 pub struct MadeBy {
     version: &'static str,
-    gas_data: &'static str,
+    gas_data: String,
 }
 
 impl Answer {
     /// Computes it.
     pub fn new(input: &Input) -> Result<Self, Failure> {
-        let shock = &input.incident;
-        let wall = input.reflection()?;
+        input.with_shock(|shock, gas_data| Ok(Self::of(input, shock, gas_data)))
+    }
+
+    fn of(input: &Input, shock: &Shock<'_>, gas_data: &str) -> Self {
+        let wall = match shock {
+            Shock::Constant(_, wall) => wall.as_ref(),
+            Shock::Thermal(_) => None,
+        };
+        // A wall of the other kind stands in `wall`.
+        let wall_speed = match shock {
+            Shock::Constant(..) => Enclosure::whole(0),
+            Shock::Thermal(shock) => shock.wall_speed(),
+        };
         let output = |output, unit| quantity(shock.nearest(output), shock.output(output), unit);
         let state = |values: [Output; 5]| {
             let [pressure, temperature, density, sound_speed, gas_speed] = values;
@@ -52,47 +66,65 @@ impl Answer {
         };
         let fill = shock.state_1();
         let at_rest = || quantity(0.0, Enclosure::whole(0), "m/s");
-        let speed = shock.nearest(Output::ShockSpeed);
-        Ok(Self {
+        let report = input.report(shock.nearest(Output::ShockSpeed));
+        Self {
             incident: Incident { speed: output(Output::ShockSpeed, "m/s"), mach: output(Output::Mach, "1"), attenuation: None },
             states: States {
                 fill: ReportState {
-                    pressure: quantity(shock.fill().pressure().nominal(), fill.pressure, "Pa"),
-                    temperature: quantity(shock.fill().temperature().nominal(), fill.temperature, "K"),
+                    pressure: quantity(input.pressure.nominal(), fill.pressure, "Pa"),
+                    temperature: quantity(input.temperature.nominal(), fill.temperature, "K"),
                     density: output(Output::Density1, "kg/m3"),
                     sound_speed: output(Output::SoundSpeed1, "m/s"),
                     gas_speed: at_rest(),
                 },
                 incident: state([Output::Pressure2, Output::Temperature2, Output::Density2, Output::SoundSpeed2, Output::GasSpeed2]),
-                reflected: match &wall {
+                reflected: match wall {
                     Some(wall) => behind(wall),
                     None => ReportState {
-                        gas_speed: at_rest(),
+                        gas_speed: middle(wall_speed, "m/s"),
                         ..state([Output::Pressure5, Output::Temperature5, Output::Density5, Output::SoundSpeed5, Output::GasSpeed2])
                     },
                 },
             },
-            reflected: match &wall {
+            reflected: match wall {
                 Some(wall) => Reflected { speed: middle(wall.front_speed, "m/s"), mach: middle(wall.mach, "1") },
                 None => Reflected { speed: output(Output::ReflectedSpeed, "m/s"), mach: output(Output::ReflectedMach, "1") },
             },
-            step: match &wall {
+            step: match wall {
                 Some(wall) => middle(wall.state.pressure - fill.pressure, "Pa"),
                 None => output(Output::Step, "Pa"),
             },
-            reflected_pressure_coefficient: match &wall {
+            reflected_pressure_coefficient: match wall {
                 Some(wall) => middle((wall.state.pressure - fill.pressure) / shock.output(Output::PressureRise), "1"),
                 None => output(Output::ReflectionCoefficient, "1"),
             },
-            flags: input.flags(speed),
-            made_by: MadeBy { version: env!("CARGO_PKG_VERSION"), gas_data: input.gas_data },
-        })
+            flags: flags(input, report.as_ref()),
+            heat_capacity: report.map_or_else(
+                || HeatCapacityChoice { chosen: input.shot.heat_capacity.name(), beside: Vec::new(), relaxation: Vec::new() },
+                |report| report.heat_capacity,
+            ),
+            made_by: MadeBy { version: env!("CARGO_PKG_VERSION"), gas_data: gas_data.into() },
+        }
     }
 
     /// The object as text.
     pub fn to_json(&self) -> Result<String, Failure> {
         serde_json::to_string_pretty(self).map_err(Failure::unformatted)
     }
+}
+
+/// Flags of a report that are about its model.
+const OF_MODEL: [&str; 6] = ["constant-heat-capacity", "ionisation", "dissociation", "relaxation-shortened", "real-gas", "wall-moves"];
+
+/// The flags of the record, and those of its model at the shock speed.
+fn flags(input: &Input, report: Option<&Report>) -> Vec<Flag> {
+    let own = |flag: &&Flag| flag.code != "missing-uncertainty";
+    let in_words = |flag: &Flag| {
+        // A record is not what was typed.
+        Flag::new(&flag.code, flag.text.replace("the record does not choose a heat capacity", "no --heat-capacity is given"))
+    };
+    let of_model = report.map_or(&[][..], |report| &report.flags).iter().filter(|flag| OF_MODEL.contains(&flag.code.as_str()));
+    input.shot.flags.iter().filter(own).map(in_words).chain(of_model.cloned()).collect()
 }
 
 /// The state at a wall that moves.

@@ -4,28 +4,31 @@ mod answer;
 mod entry;
 mod input;
 mod page;
+mod shock;
 
 use clap::Args;
 
 use crate::failure::Failure;
-use crate::output;
+use crate::options::CONFIRMED;
+use crate::{gas, output};
 use answer::Answer;
 use input::Input;
 
 /// Quick look at one shock without a file: states 1, 2 and 5
 ///
-/// Prints states 1, 2 and 5 for a gas of constant heat capacity, a fill, and one quantity that fixes the strength of the shock.
+/// Prints states 1, 2 and 5 for a gas, a fill, and one quantity that fixes the strength of the shock. For a gas whose heat capacity depends
+/// on temperature, what the other choices of heat capacity would give stands beside.
 ///
 /// Every quantity is taken as exact, digit by digit as typed, and the answer has no measurement uncertainty: for that, write a record and
-/// use `endwall reduce`. A range of values may be typed as "7.9..8.1 kPa"; then the answer is the range of every output.
+/// use `endwall reduce`. For a gas of constant heat capacity a range of values may be typed as "7.9..8.1 kPa"; then the answer is the range
+/// of every output.
 #[derive(Args)]
-#[command(override_usage = "endwall states --gas NAME --pressure PRESSURE --temperature TEMPERATURE STRENGTH [OPTIONS]\n       \
+#[command(override_usage = "endwall states --gas GAS --pressure PRESSURE --temperature TEMPERATURE STRENGTH [OPTIONS]\n       \
     endwall states --heat-capacity-ratio RATIO --molar-mass MASS --pressure PRESSURE --temperature TEMPERATURE STRENGTH [OPTIONS]")]
 pub struct Arguments {
-    /// Gas by name: argon, helium or neon (Ar, He, Ne), whose heat capacity is constant. Any other gas: see --heat-capacity-ratio
-    #[arg(long, value_name = "NAME", required_unless_present_all = ["heat_capacity_ratio", "molar_mass"], conflicts_with_all = ["heat_capacity_ratio", "molar_mass"])]
-    gas: Option<String>,
-    /// Heat capacity ratio of the gas, like 5/3 or 7/5; needs --molar-mass
+    #[command(flatten)]
+    gas: gas::Arguments,
+    /// Heat capacity ratio of a gas of constant heat capacity, like 5/3 or 7/5; needs --molar-mass
     #[arg(long, value_name = "RATIO", requires = "molar_mass", allow_hyphen_values = true)]
     heat_capacity_ratio: Option<String>,
     /// Molar mass of the gas, like "28.0134 g/mol"; needs --heat-capacity-ratio
@@ -47,7 +50,7 @@ pub struct Arguments {
     #[arg(long, value_name = "IMPEDANCE", allow_hyphen_values = true, conflicts_with = "wall_speed")]
     wall_impedance: Option<String>,
     /// Answers "yes, I mean it" to the question about a doubtful value
-    #[arg(long, value_name = "OPTION", value_parser = input::CONFIRMED.map(|(name, _)| name))]
+    #[arg(long, value_name = "OPTION", value_parser = CONFIRMED.map(|(name, _)| name))]
     confirm: Vec<String>,
     /// Digits of each number at most
     #[arg(long, value_name = "N", default_value_t = 10, value_parser = clap::value_parser!(u8).range(1..=17))]

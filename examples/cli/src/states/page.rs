@@ -3,7 +3,7 @@
 use std::fmt::Write;
 
 use endwall::number::Enclosure;
-use endwall::record::{ReportQuantity, ReportState, Unit};
+use endwall::record::{Flag, ReportQuantity, ReportState, Unit};
 
 use super::answer::Answer;
 use super::input::{Input, Wall};
@@ -25,31 +25,45 @@ struct Style {
 
 pub fn render(answer: &Answer, input: &Input, digits: usize) -> String {
     let Some(pascal) = Unit::find("Pa") else { return String::new() };
-    let gas = input.incident.fill().gas();
-    let fill = input.incident.fill();
-    let inputs = [gas.heat_capacity_ratio().known(), gas.molar_mass(), fill.pressure(), fill.temperature(), input.incident.entry().1];
-    let of_wall = input.wall.map(|wall| match wall {
-        Wall::Speed(known) | Wall::Impedance(known) => known,
-    });
-    let range = inputs.into_iter().chain(of_wall).any(|known| known.exact().is_none());
     // In the writer's unit where that is exact to the last digit or nearly: gauges are read in it.
     let typed = input.shot.fill.pressure.unit();
-    let style = Style { digits, range, pressure: if typed.has_offset() { pascal } else { typed } };
-    let mut page = String::from("Quick look at one shock: ideal gas of constant heat capacity, normal shock, reflected from ");
+    let style = Style { digits, range: input.has_range(), pressure: if typed.has_offset() { pascal } else { typed } };
+    let mut page = match &input.constant {
+        Some(_) => String::from("Quick look at one shock: ideal gas of constant heat capacity, normal shock, reflected from "),
+        None => {
+            format!("Quick look at one shock: ideal gas, heat capacity {}, normal shock, reflected from ", input.shot.heat_capacity.name())
+        }
+    };
     page.push_str(match input.wall {
         None => "a rigid end wall\n\n",
         Some(Wall::Speed(_)) => "a moving end wall\n\n",
         Some(Wall::Impedance(_)) => "a yielding end wall\n\n",
     });
+    let (first, others): (Vec<&Flag>, Vec<&Flag>) = answer.flags.iter().partition(|flag| flag.code == "can-burn");
+    for flag in first {
+        page.push_str(&noted(flag));
+        page.push('\n');
+    }
     page.push_str(&columns(&states(answer, &style)));
     page.push('\n');
     page.push_str(&columns(&waves(answer, &style)));
-    for flag in &answer.flags {
-        let _ = write!(page, "\n{}\n", paragraph(&format!("! [{}] {}", flag.code, flag.text)));
+    let choices = answer.heat_capacity.to_text(&input.shot);
+    if !choices.is_empty() {
+        page.push('\n');
+        page.push_str(&choices);
+    }
+    for flag in others {
+        page.push('\n');
+        page.push_str(&noted(flag));
     }
     let _ = write!(page, "\n{}\n", paragraph(&digits_statement(&style)));
     let _ = write!(page, "\n{}", paragraph(CAUTION));
     page
+}
+
+/// A flag as a paragraph.
+fn noted(flag: &Flag) -> String {
+    paragraph(&format!("! [{}] {}", flag.code, flag.text)) + "\n"
 }
 
 const CAUTION: &str = "Caution: for screening only; ratings are not checked here, and no number here authorises a shot.";

@@ -10,6 +10,11 @@ pub const ARGON: &str = include_str!("../../../records/argon-b0412.json");
 /// The demo record of a sensor calibration.
 pub const SENSOR: &str = include_str!("../../../records/sensor-step-c17.json");
 
+/// The demo record of a mixture that burns.
+pub const KINETICS: &str = include_str!("../../../records/kinetics-k0207.json");
+/// The demo record of nitrogen with its vibration frozen.
+pub const NITROGEN: &str = include_str!("../../../records/nitrogen-n0703.json");
+
 /// What a run left behind.
 #[derive(Debug)]
 pub struct Run {

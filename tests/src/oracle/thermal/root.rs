@@ -153,7 +153,7 @@ fn rough(law: &Law, piece: usize, origin: &Float, [mut low, mut high]: [(Float, 
         if value.repr().is_zero() || moved.repr().is_zero() || exponent(&moved) < exponent(&distance) - 60 {
             return [near, middle];
         }
-        before = middle.clone();
+        before.clone_from(&middle);
         let side = if is_negative(&value) == negative { -1 } else { 1 };
         if side < 0 {
             low = (middle, value);

@@ -1,8 +1,8 @@
 //! Incident and reflected shock: the jumps of pressure and density that the enthalpy allows, and the speeds that fit them.
 //!
-//! Across either shock (a ahead, b behind) h_b − h_a = ½ (p_b − p_a)(1/ρ_a + 1/ρ_b) and p = ρ R T. With P = p_b/p_a, τ = T_b/T_a and
-//! H = (h_b − h_a)/(R T_a) that is 2H = (P − 1)(1 + τ/P), which gives P for a temperature behind. The speed then has to fit:
-//! (ρ_a U)² (1/ρ_a − 1/ρ_b) = p_b − p_a for the incident shock of speed U, u2² = (p5 − p2)(1/ρ2 − 1/ρ5) for the reflected one.
+//! Across either shock (a ahead, b behind) hb − ha = ½ (pb − pa)(1/ρa + 1/ρb) and p = ρ R T. With P = pb/pa, τ = Tb/Ta and
+//! H = (hb − ha)/(R Ta) that is 2H = (P − 1)(1 + τ/P), which gives P for a temperature behind. The speed then has to fit:
+//! (ρa U)² (1/ρa − 1/ρb) = pb − pa for the incident shock of speed U, u2² = (p5 − p2)(1/ρ2 − 1/ρ5) for the reflected one.
 
 use super::super::real::{Float, Real, float};
 use super::super::shot::{State, molar_gas_constant};
