@@ -234,8 +234,8 @@ fn mach_for_temperature_5(case: &ThermalCase, wanted: &RBig) -> Input {
         }
         (old, old_miss, new) = (new, value, next);
     }
-    // Across the jump of a joint there may be none: as near as the steps came.
-    typed(&float(&new, 400))
+    // Across the jump of a joint there may be none: as near as the steps came, but not so near that the sides of the joint cannot be told apart.
+    typed(&(float(&new, 400) * float(&parse("1.00000000000000000001"), 400)))
 }
 
 #[test]

@@ -46,7 +46,8 @@ pub(super) fn approximate<S: Elementary + Into<f64>>(
         let mean = heat_capacity.mean(from, temperature, excess, to);
         let value = residual(stage, e, mean);
         let own: f64 = excess.into();
-        let mean_slope = if own.abs() > 1e-3 {
+        // Of two ranges the jump between them counts.
+        let mean_slope = if own.abs() > 1e-3 || from != to {
             (heat_capacity.value(to, behind) - mean) / excess
         } else {
             heat_capacity.scaled_slope(from, temperature) / two

@@ -112,12 +112,11 @@ impl<T: Stage<Ball>> Problem<'_, T> {
 
     /// The range next to that of a root whose temperature behind is not certainly inside its own; a joint belongs to the lower range.
     fn neighbour(&self, root: &Root) -> Option<usize> {
-        let behind = self.behind(root.compression).enclosure();
-        let [low, high] = self.heat_capacity.ends(root.to);
-        if behind.high() > high {
-            Some(root.to + 1).filter(|next| *next < self.heat_capacity.len())
-        } else if behind.low() <= low {
-            root.to.checked_sub(1)
+        let [over_low, over_high] = self.over_ends(root);
+        if root.to + 1 < self.heat_capacity.len() && !over_high.is_certainly_negative() {
+            Some(root.to + 1)
+        } else if root.to > 0 && !over_low.is_certainly_positive() {
+            Some(root.to - 1)
         } else {
             None
         }
@@ -125,9 +124,14 @@ impl<T: Stage<Ball>> Problem<'_, T> {
 
     /// True if the temperature behind is certainly outside the range of a root.
     fn is_outside(&self, root: &Root) -> bool {
-        let behind = self.behind(root.compression).enclosure();
-        let [low, high] = self.heat_capacity.ends(root.to);
-        behind.low() > high || behind.high() <= low
+        let [over_low, over_high] = self.over_ends(root);
+        over_high.is_certainly_positive() || over_low.is_certainly_negative()
+    }
+
+    /// The temperature behind less both ends of the range of a root: in balls, which tell sides apart that doubles do not.
+    fn over_ends(&self, root: &Root) -> [Ball; 2] {
+        let behind = self.behind(root.compression);
+        self.heat_capacity.ends(root.to).map(|end| behind - Ball::from(end))
     }
 
     /// Whether the residual, with the polynomial below the joint and with the one above, has the sign that belongs to its side of the root, wherever
