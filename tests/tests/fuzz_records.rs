@@ -134,7 +134,7 @@ fn below(random: &mut Random, bound: usize) -> usize {
 
 /// Mixtures take most of the time, so they are the lesser part.
 fn record(random: &mut Random) -> &'static str {
-    if random.below(5) == 0 { random.pick(&MIXTURES) } else { random.pick(&CONSTANT) }
+    if random.below(5) == 0 { *random.pick(&MIXTURES) } else { *random.pick(&CONSTANT) }
 }
 
 /// The stretch of digits that begins at or after a place.

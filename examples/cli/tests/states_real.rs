@@ -107,6 +107,39 @@ fn every_quantity_leads_to_the_same_shock() {
 }
 
 #[test]
+fn ranges_enclose_their_points() {
+    let with = |temperature: &str, speed: &str| {
+        let options =
+            ["states", "--gas", "N2", "--pressure", "7.9..8.1 kPa", "--temperature", temperature, "--shock-speed", speed, "--json"];
+        serde_json::from_str::<Value>(&endwall(&options, b"").good()).unwrap()
+    };
+    let range = with("295..297 K", "945..955 m/s");
+    let bounds = |answer: &Value, pointer: &str| [0, 1].map(|end| answer.pointer(pointer).unwrap()["proven"][end].as_f64().unwrap());
+    for pointer in ["/states/2/temperature", "/states/5/temperature", "/states/5/pressure", "/step", "/reflected/mach", "/incident/mach"] {
+        let [low, high] = bounds(&range, pointer);
+        let mut hull = [f64::INFINITY, f64::NEG_INFINITY];
+        for (temperature, speed) in
+            [("295 K", "945 m/s"), ("295 K", "955 m/s"), ("297 K", "945 m/s"), ("297 K", "955 m/s"), ("296 K", "950 m/s")]
+        {
+            let [inner_low, inner_high] = bounds(&with(temperature, speed), pointer);
+            assert!(low <= inner_low && inner_high <= high, "{pointer} {temperature} {speed}");
+            hull = [hull[0].min(inner_low), hull[1].max(inner_high)];
+        }
+        // Corners reach the ends, as these outputs are monotonic here: the range is hardly wider.
+        assert!(high - low < 1.1 * (hull[1] - hull[0]), "{pointer}: {low} {high} {hull:?}");
+    }
+    // What the other choices would give at one shock speed does not stand beside a range of them.
+    assert!(range["heat_capacity"]["beside"].as_array().unwrap().is_empty());
+    assert!(!range["flags"].to_string().contains("stand beside"));
+    states(&["--gas", "N2", "--reflected-temperature", "1400..1500 K"]).refused(&[
+        "--reflected-temperature",
+        "1400..1500 K",
+        "one exact value",
+    ]);
+    states(&["--gas", "N2", "--shock-speed", "955..945 m/s"]).refused(&["--shock-speed", "smaller number first"]);
+}
+
+#[test]
 fn a_wall_that_is_not_rigid() {
     let gas = ["--gas", "N2", "--heat-capacity", "frozen", "--mach", "2"];
     let pressure = |options: &[&str]| {

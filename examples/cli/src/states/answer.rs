@@ -22,7 +22,7 @@ pub struct Answer {
     pub step: ReportQuantity,
     /// (p5 − p1)/(p2 − p1).
     pub reflected_pressure_coefficient: ReportQuantity,
-    /// The heat capacity that was chosen, and what the others would give at the same shock speed.
+    /// The heat capacity that was chosen, and what the others would give at the same shock speed, if that is one number.
     pub heat_capacity: HeatCapacityChoice,
     /// What the reader must know.
     pub flags: Vec<Flag>,
@@ -99,7 +99,7 @@ impl Answer {
                 None => output(Output::ReflectionCoefficient, "1"),
             },
             flags: flags(input, report.as_ref()),
-            heat_capacity: report.map_or_else(
+            heat_capacity: report.filter(|_| !input.has_range()).map_or_else(
                 || HeatCapacityChoice { chosen: input.shot.heat_capacity.name(), beside: Vec::new(), relaxation: Vec::new() },
                 |report| report.heat_capacity,
             ),
@@ -119,9 +119,11 @@ const OF_MODEL: [&str; 6] = ["constant-heat-capacity", "ionisation", "dissociati
 /// The flags of the record, and those of its model at the shock speed.
 fn flags(input: &Input, report: Option<&Report>) -> Vec<Flag> {
     let own = |flag: &&Flag| flag.code != "missing-uncertainty";
+    // A record is not what was typed, and beside a range nothing stands.
+    let beside = if input.has_range() { "" } else { "; the other choices stand beside" };
     let in_words = |flag: &Flag| {
-        // A record is not what was typed.
-        Flag::new(&flag.code, flag.text.replace("the record does not choose a heat capacity", "no --heat-capacity is given"))
+        let text = flag.text.replace("the record does not choose a heat capacity", "no --heat-capacity is given");
+        Flag::new(&flag.code, text.replace("; the other choices stand beside", beside))
     };
     let of_model = report.map_or(&[][..], |report| &report.flags).iter().filter(|flag| OF_MODEL.contains(&flag.code.as_str()));
     input.shot.flags.iter().filter(own).map(in_words).chain(of_model.cloned()).collect()

@@ -128,20 +128,6 @@ impl<'a> Input<'a> {
         all.any(|known| known.exact().is_none())
     }
 
-    /// A range for which there is no answer.
-    pub fn no_range(&self) -> Failure {
-        let given = self.arguments.entry.given().map(|given| (given.option, given.typed));
-        let typed = [("pressure", Some(self.arguments.pressure.as_str())), ("temperature", Some(self.arguments.temperature.as_str()))]
-            .into_iter()
-            .chain([("wall-speed", self.arguments.wall_speed.as_deref()), ("wall-impedance", self.arguments.wall_impedance.as_deref())])
-            .filter_map(|(option, typed)| Some((option, typed?)))
-            .chain(given);
-        let (option, typed) = typed.into_iter().find(|(_, typed)| typed.contains("..")).unwrap_or(("gas", ""));
-        let wrong = "this range is not available for a gas whose heat capacity depends on temperature";
-        let remedy = "take a smaller one or single values, or write a record with an uncertainty and use endwall reduce";
-        Failure::option(option, wrong, typed, remedy)
-    }
-
     /// The report of a record with this shock speed, for the flags of the model and the other choices of heat capacity.
     ///
     /// `None` for a shock so weak that its speed is that of sound to the last digit: it has no limit of validity to flag.
@@ -175,7 +161,6 @@ impl<'a> Input<'a> {
     pub fn unproven(&self, error: ThermalError) -> Failure {
         match (error, self.arguments.entry.given()) {
             (ThermalError::Input(error), _) => self.refused(error),
-            _ if self.has_range() => self.no_range(),
             (other, Some(given)) => Failure::option(given.option, other, given.typed, "choose another strength of the shock"),
             (other, None) => Failure::plain(&other.to_string(), "choose another strength of the shock"),
         }

@@ -20,8 +20,8 @@ use input::Input;
 /// on temperature, what the other choices of heat capacity would give stands beside.
 ///
 /// Every quantity is taken as exact, digit by digit as typed, and the answer has no measurement uncertainty: for that, write a record and
-/// use `endwall reduce`. For a gas of constant heat capacity a range of values may be typed as "7.9..8.1 kPa"; then the answer is the range
-/// of every output.
+/// use `endwall reduce`. A range of values may be typed as "7.9..8.1 kPa"; then the answer is the range of every output. For a gas whose
+/// heat capacity depends on temperature, ranges are taken for the fill, the shock speed and the Mach number, with a rigid wall.
 #[derive(Args)]
 #[command(override_usage = "endwall states --gas GAS --pressure PRESSURE --temperature TEMPERATURE STRENGTH [OPTIONS]\n       \
     endwall states --heat-capacity-ratio RATIO --molar-mass MASS --pressure PRESSURE --temperature TEMPERATURE STRENGTH [OPTIONS]")]

@@ -62,10 +62,6 @@ impl Input<'_> {
                 Some(Wall::Impedance(impedance)) => shock.reflected_from_yielding_wall(impedance),
             };
             let shock = shock.map_err(|error| self.unproven(error))?;
-            let known = Output::ALL.iter().all(|output| shock.output(*output).is_proven());
-            if self.has_range() && !known {
-                return Err(self.no_range());
-            }
             compute(&Shock::Thermal(shock), &notes.source)
         });
         computed.map_err(|error| options::refused(error, &self.arguments.gas.typed()))?
