@@ -128,10 +128,10 @@ impl Checked {
     }
 }
 
-/// Whether T1 is within 1e-9 K of a joint of the data.
+/// Whether T1 is within 1e-4 K of a joint of the data.
 fn fill_at_joint(case: &ThermalCase) -> bool {
     let problem = case.problem(false);
-    let near = |joint: &RBig| (problem.temperature.to_f64().value() - joint.to_f64().value()).abs() < 1e-9;
+    let near = |joint: &RBig| (problem.temperature.to_f64().value() - joint.to_f64().value()).abs() < 1e-4;
     problem.gas.ranges().iter().skip(1).any(|range| near(&range.low))
 }
 

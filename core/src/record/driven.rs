@@ -1,7 +1,7 @@
 //! The driven gas of a record, ready to be computed: species found, air and leak put in, uncertainties of the composition as changes of the mixture.
 
 use alloc::format;
-use alloc::string::{String, ToString};
+use alloc::string::String;
 use alloc::vec::Vec;
 
 use super::error::{ErrorKind, RecordError};
@@ -76,7 +76,7 @@ impl Shot {
         if let Some((gas, notes)) = self.constant_gas(model)? {
             return compute(gas, notes);
         }
-        let GasRecord::Mixture(components) = &self.gas else { return Err(self.too_long()) };
+        let GasRecord::Mixture(components) = &self.gas else { return Err(too_long()) };
         let mixed = self.mixed(components)?;
         let portions: Vec<Portion<'_>> =
             mixed.portions.iter().map(|(species, fraction)| Portion { species, fraction: *fraction }).collect();
@@ -160,7 +160,7 @@ impl Shot {
 
     /// Dry air, or humid air by the humidity of the record, measured at the temperature of the fill and the ambient pressure.
     fn add_air(&self, mixed: &mut Mixed<'_>, fraction: Rational) -> Result<(), RecordError> {
-        let scaled = |part: &Portion<'static>| part.fraction.checked_mul(fraction).ok_or_else(|| self.too_long());
+        let scaled = |part: &Portion<'static>| part.fraction.checked_mul(fraction).ok_or_else(too_long);
         let Some(humidity) = &self.humidity else {
             for part in &DRY_AIR {
                 mixed.portions.push((*part.species, scaled(part)?));
@@ -205,19 +205,19 @@ impl Shot {
     fn add_leak(&self, mixed: &mut Mixed<'_>) -> Result<(), RecordError> {
         let Some(stated) = &self.leak else { return Ok(()) };
         let (fraction, standard) = stated.fraction(self.fill.absolute.value.to_f64());
-        if !(fraction < 0.5) {
+        if fraction.is_nan() || fraction >= 0.5 {
             let wrong = format!("{} % of the fill would be air that leaked in", significant(fraction * 100.0, 3));
             return Err(RecordError::new(ErrorKind::Value, "leak", "", wrong, "check the rate, its unit and the waiting time"));
         }
         // Nine decimals keep the products of fractions within exact integers.
         let air = Rational::ratio(libm::rint(fraction * 1e9) as u128, 1_000_000_000).unwrap_or(Rational::ZERO);
-        let rest = Rational::ONE.checked_sub(air).ok_or_else(|| self.too_long())?;
+        let rest = Rational::ONE.checked_sub(air).ok_or_else(too_long)?;
         for (_, own) in &mut mixed.portions {
-            *own = own.checked_mul(rest).ok_or_else(|| self.too_long())?;
+            *own = own.checked_mul(rest).ok_or_else(too_long)?;
         }
         let first = mixed.portions.len();
         for part in &DRY_AIR {
-            mixed.portions.push((*part.species, part.fraction.checked_mul(air).ok_or_else(|| self.too_long())?));
+            mixed.portions.push((*part.species, part.fraction.checked_mul(air).ok_or_else(too_long)?));
         }
         if standard > 0.0 {
             // The rest shrinks as a whole: one more unit of air takes one unit of the mixture.
@@ -227,11 +227,11 @@ impl Shot {
         mixed.notes.flags.push(Flag::new("leak", leak::text(fraction)));
         Ok(())
     }
+}
 
-    fn too_long(&self) -> RecordError {
-        let wrong = "the fractions have too many digits to be multiplied exactly";
-        RecordError::new(ErrorKind::Value, "gas", "", wrong.to_string(), "type fewer digits")
-    }
+fn too_long() -> RecordError {
+    let wrong = "the fractions have too many digits to be multiplied exactly";
+    RecordError::new(ErrorKind::Value, "gas", "", wrong, "type fewer digits")
 }
 
 #[cfg(test)]

@@ -1,5 +1,7 @@
 //! Gases of records as they come to the relations.
 
+use alloc::string::ToString;
+
 use super::*;
 use crate::record::Report;
 
@@ -22,8 +24,11 @@ fn refused(gas: &str, rest: &str) -> RecordError {
     Shot::read(record(gas, rest).as_bytes()).and_then(|shot| shot.reduce()).expect_err(gas)
 }
 
+type Portions = Vec<(String, f64)>;
+type Changes = Vec<(MixtureChange, f64)>;
+
 /// Species and fractions in order, and the changes.
-fn composition(gas: &str, rest: &str) -> (Vec<(String, f64)>, Vec<(MixtureChange, f64)>) {
+fn composition(gas: &str, rest: &str) -> (Portions, Changes) {
     let found = read(gas, rest).with_driven_gas(|gas, _| {
         let DrivenGas::ThermallyPerfect { gas, changes, .. } = gas else { panic!("constant") };
         let portions = gas.portions().iter().map(|portion| (portion.species.name.to_string(), portion.fraction.to_f64())).collect();

@@ -177,6 +177,20 @@ fn the_choices_stand_side_by_side_with_the_times_that_tell_which_is_nearer() {
 }
 
 #[test]
+fn what_can_burn_is_said_before_the_first_pressure() {
+    let (mut report, shot) = example();
+    report.flags.insert(0, Flag::new("can-burn", "this mixture can burn"));
+    let text = report.to_text(&shot);
+    assert_eq!(text.matches("[can-burn]").count(), 1);
+    assert!(text.find("[can-burn]").unwrap() < text.find("Pressure p5").unwrap());
+    assert!(text.contains("[not-used]") && !text.contains("none but"));
+    report.flags.truncate(1);
+    assert!(report.to_text(&shot).contains("none but the caution above"));
+    report.flags.clear();
+    assert!(report.to_text(&shot).contains("-----\nnone\n"));
+}
+
+#[test]
 fn uncertainties_without_a_unit_are_explained() {
     let (mut report, shot) = example();
     assert!(!report.to_text(&shot).contains("Composition:") && !report.to_text(&shot).contains("Gas data:"));

@@ -86,8 +86,14 @@ fn coverage_factor(k: f64) -> String {
     text.trim_end_matches('0').trim_end_matches('.').to_string()
 }
 
+/// The code of the caution that stands before the first pressure.
+const FIRST: &str = "can-burn";
+
 fn result(page: &mut Page, report: &Report, units: DisplayUnits) {
     page.heading("Result");
+    for flag in report.flags.iter().filter(|flag| flag.code == FIRST) {
+        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
+    }
     let state = &report.states.reflected;
     page.table(&[
         row(["Pressure p5", &units.show_with_factor(&state.pressure)]),
@@ -100,10 +106,11 @@ fn result(page: &mut Page, report: &Report, units: DisplayUnits) {
 
 fn flags(page: &mut Page, report: &Report) {
     page.heading("Flags");
-    if report.flags.is_empty() {
-        page.line("none");
+    let others = || report.flags.iter().filter(|flag| flag.code != FIRST);
+    if others().next().is_none() {
+        page.line(if report.flags.is_empty() { "none" } else { "none but the caution above" });
     }
-    for flag in &report.flags {
+    for flag in others() {
         page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
     }
 }

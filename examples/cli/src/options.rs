@@ -27,7 +27,7 @@ pub fn option_of(path: &str) -> &str {
 
 /// Reads a record that was made of options; `gas` is what was typed for the gas.
 pub fn read(record: &serde_json::Value, gas: &str) -> Result<Shot, Failure> {
-    let shot = Shot::read(record.to_string().as_bytes()).map_err(|error| refused(error, gas))?;
+    let shot = Shot::read(record.to_string().as_bytes()).map_err(|error| refused(&error, gas))?;
     let uncertain_entry =
         shot.entries.iter().find(|entry| entry.quantity.as_ref().is_some_and(|quantity| quantity.uncertainty().is_some()));
     match uncertain_entry {
@@ -37,7 +37,7 @@ pub fn read(record: &serde_json::Value, gas: &str) -> Result<Shot, Failure> {
 }
 
 /// An error of the reader of records, in the words of the command line.
-pub fn refused(error: RecordError, gas: &str) -> Failure {
+pub fn refused(error: &RecordError, gas: &str) -> Failure {
     let option = option_of(&error.path);
     let remedy = match error.kind {
         ErrorKind::Doubtful => format!("correct it, or state that it is right with --confirm {option}"),

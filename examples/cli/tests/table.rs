@@ -127,7 +127,7 @@ fn bad_ranges_are_refused() {
     table(&["--from", "2", "--to", "3", "--step", "1", "--digits", "16"]).refused(&["16", "15"]);
 }
 
-fn real(options: &[&str]) -> common::Run {
+fn by_species(options: &[&str]) -> common::Run {
     endwall(&[&["table"], options].concat(), b"")
 }
 
@@ -135,8 +135,8 @@ const NITROGEN: [&str; 4] = ["--gas", "N2", "--temperature", "295 K"];
 const SPEEDS: [&str; 6] = ["--from", "600 m/s", "--to", "1000 m/s", "--step", "100 m/s"];
 
 #[test]
-fn a_table_of_speeds_for_a_real_gas() {
-    let csv = real(&[&NITROGEN[..], &SPEEDS, &["--digits", "12", "--csv", "-"]].concat()).good();
+fn a_table_of_speeds_for_a_gas_by_its_species() {
+    let csv = by_species(&[&NITROGEN[..], &SPEEDS, &["--digits", "12", "--csv", "-"]].concat()).good();
     let rows = rows(&csv);
     assert_eq!(rows[0].join(","), "U_S/(m/s),M,p2/p1,T2/T1,rho2/rho1,u2/a1,M2,M_R,p5/p1,T5/T1,rho5/rho1,U_R/a1");
     assert_eq!(rows[1..].iter().map(|row| row[0].as_str()).collect::<Vec<_>>(), ["600", "700", "800", "900", "1000"]);
@@ -158,7 +158,7 @@ fn a_table_of_speeds_for_a_real_gas() {
     }
     // Equilibrium is below the constant heat capacity of the fill, and the same table by Mach number meets that of γ 7/5 there.
     let mach = ["--from", "2", "--to", "3", "--step", "1", "--csv", "-"];
-    let by_mach = |choice: &str| real(&[&NITROGEN[..], &["--heat-capacity", choice], &mach].concat()).good();
+    let by_mach = |choice: &str| by_species(&[&NITROGEN[..], &["--heat-capacity", choice], &mach].concat()).good();
     let cells = |csv: &str, row: usize| csv.lines().nth(row).unwrap().split(',').map(|cell| cell.parse().unwrap()).collect::<Vec<f64>>();
     let (frozen, ratio) = (cells(&by_mach("frozen"), 2), cells(&table(&mach).good(), 2));
     assert_eq!(frozen[1], 3.0);
@@ -168,26 +168,27 @@ fn a_table_of_speeds_for_a_real_gas() {
 }
 
 #[test]
-fn the_text_of_a_real_gas_says_its_model() {
-    let text = real(&[&NITROGEN[..], &SPEEDS].concat()).good();
+fn the_text_for_a_gas_by_its_species_says_its_model() {
+    let text = by_species(&[&NITROGEN[..], &SPEEDS].concat()).good();
     for wanted in ["N2 at 295 K, heat capacity equilibrium", "NASA/TP-2002-211556", "Arithmetic: "] {
         assert!(text.contains(wanted), "{wanted}: {text}");
     }
     assert!(!text.contains("can burn"));
-    let burning = real(&[&["--gas", "CH4 1 %, O2 2 %", "--gas", "Ar balance", "--temperature", "22 degC"], &SPEEDS[..]].concat()).good();
+    let burning =
+        by_species(&[&["--gas", "CH4 1 %, O2 2 %", "--gas", "Ar balance", "--temperature", "22 degC"], &SPEEDS[..]].concat()).good();
     assert!(burning.lines().nth(1).unwrap().starts_with("Caution: this mixture can burn"), "{burning}");
     // Atoms have their closed forms: γ 5/3.
-    let argon = real(&["--gas", "argon", "--temperature", "295 K", "--from", "3", "--to", "3", "--step", "1", "--csv", "-"]).good();
+    let argon = by_species(&["--gas", "argon", "--temperature", "295 K", "--from", "3", "--to", "3", "--step", "1", "--csv", "-"]).good();
     assert!(argon.lines().nth(1).unwrap().contains(",3,11.0000,3.66667,3.00000,"), "{argon}");
 }
 
 #[test]
-fn bad_tables_of_real_gases_are_refused() {
-    real(&[&["--gas", "N2"], &SPEEDS[..]].concat()).refused(&["--temperature"]);
-    real(&SPEEDS).refused(&["no gas is given", "--heat-capacity-ratio", "--gas"]);
+fn bad_tables_of_gases_by_species_are_refused() {
+    by_species(&[&["--gas", "N2"], &SPEEDS[..]].concat()).refused(&["--temperature"]);
+    by_species(&SPEEDS).refused(&["no gas is given", "--heat-capacity-ratio", "--gas"]);
     table(&SPEEDS).refused(&["--from", "600 m/s", "does not fix the sound speed", "--gas"]);
     table(&["--temperature", "295 K", "--from", "2", "--to", "3", "--step", "1"]).refused(&["--temperature"]);
-    let nitrogen = |from: &str, to: &str, step: &str| real(&[&NITROGEN[..], &["--from", from, "--to", to, "--step", step]].concat());
+    let nitrogen = |from: &str, to: &str, step: &str| by_species(&[&NITROGEN[..], &["--from", from, "--to", to, "--step", step]].concat());
     nitrogen("300 m/s", "900 m/s", "100 m/s").refused(&["--from", "300 m/s", "sound speed of the fill", "350.06"]);
     nitrogen("600 m/s", "9000 m/s", "100 m/s").refused(&["--to", "9000 m/s", "200 K to 20000 K", "end the table below "]);
     nitrogen("600 m/s", "900", "100 m/s").refused(&["--to", "900", "no unit"]);
@@ -197,11 +198,12 @@ fn bad_tables_of_real_gases_are_refused() {
     nitrogen("600 m/s", "900 m/s", "0 m/s").refused(&["--step", "0 m/s", "above zero"]);
     nitrogen("600 m/s", "900 m/s", "1e1 m/s").refused(&["--step", "1e1 m/s", "decimals is wanted"]);
     nitrogen("600 m/s", "100000 m/s", "10 m/s").refused(&["--to", "99999 m/s"]);
-    let with = |temperature: &str, options: &[&str]| real(&[&["--gas", "N2", "--temperature", temperature], &SPEEDS[..], options].concat());
+    let with =
+        |temperature: &str, options: &[&str]| by_species(&[&["--gas", "N2", "--temperature", temperature], &SPEEDS[..], options].concat());
     with("25 K", &[]).refused(&["--temperature", "was 25 degC meant?", "--confirm temperature"]);
     with("25 K", &["--confirm", "temperature"]).refused(&["--temperature", "25 K", "200 K to 20000 K"]);
     with("295 ± 1 K", &[]).refused(&["--temperature", "295 ± 1 K"]);
-    real(&[&["--gas", "n2", "--temperature", "295 K"], &SPEEDS[..]].concat()).refused(&["--gas", "was N2 meant?"]);
+    by_species(&[&["--gas", "n2", "--temperature", "295 K"], &SPEEDS[..]].concat()).refused(&["--gas", "was N2 meant?"]);
 }
 
 #[test]

@@ -6,7 +6,7 @@ use crate::gas::HeatCapacity;
 use crate::number::{Ball, Enclosure, Semifield};
 
 /// Newton steps with proof, at most.
-const STEPS: u32 = 5;
+const STEPS: u32 = 9;
 /// A compression that is known this well, relative, gives outputs of one or two units in the last place.
 const NARROW: f64 = 1e-21;
 

@@ -64,7 +64,7 @@ impl Input<'_> {
             let shock = shock.map_err(|error| self.unproven(error))?;
             compute(&Shock::Thermal(shock), &notes.source)
         });
-        computed.map_err(|error| options::refused(error, &self.arguments.gas.typed()))?
+        computed.map_err(|error| options::refused(&error, &self.arguments.gas.typed()))?
     }
 
     fn constant_shock(&self, ratio: Known, mass: Known) -> Result<Shock<'static>, Failure> {

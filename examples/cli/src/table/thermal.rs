@@ -51,7 +51,7 @@ pub fn table(arguments: &Arguments, mixture: &Mixture) -> Result<Table, Failure>
             rows(arguments, &range, |entry, value| Ok(Incident::new(&fill, entry, value)?), Incident::output)
         }
     });
-    let rows = computed.map_err(|error| options::refused(error, &typed))??;
+    let rows = computed.map_err(|error| options::refused(&error, &typed))??;
     let title =
         format!("Shock relations, {typed} at {temperature}, heat capacity {}; dimensionless but for U_S", shot.heat_capacity.name());
     let caution = shot.flags.iter().find(|flag| flag.code == "can-burn").map(|flag| format!("Caution: {}.", flag.text));
