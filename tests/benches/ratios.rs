@@ -135,6 +135,19 @@ fn main() {
         ],
         256,
     );
+    let fill = ways::thermal::fill();
+    let plain = fill.plain(|x| x);
+    let constant = ways::thermal::constant_fill();
+    table(
+        "T5 of air at a shock speed",
+        vec![
+            Row::repeated("plain Newton, heat capacity of T", move |turn| ways::thermal::plain(&plain, ways::thermal::speed(turn))),
+            Row::repeated("proven, heat capacity of T", move |turn| ways::thermal::proven(&fill, ways::thermal::speed(turn))),
+            Row::repeated("proven, constant heat capacity", move |turn| ways::thermal::constant(&constant, ways::thermal::speed(turn))),
+        ],
+        128,
+    );
+    println!("Newton steps of both shocks, at most: {}", ways::thermal::most_steps(&ways::thermal::fill()));
     table(
         "a record, five stations",
         vec![

@@ -2,7 +2,7 @@
 
 use super::error::{InputError, Parameter, Rule};
 use super::heat_capacity::HeatCapacity;
-use super::species::{Species, SpeciesRange};
+use super::species::{Coefficient, Species, SpeciesRange};
 use crate::number::{Ball, Elementary, Enclosure, Rational, Semifield};
 
 /// With which heat capacity the states behind the shocks are computed. "Frozen" and "equilibrium" are meant for the vibration of molecules.
@@ -172,7 +172,7 @@ fn mixed(portions: &[Portion<'_>], weight: impl Fn(usize) -> Ball) -> Result<Hea
         let coefficients = core::array::from_fn(|at| {
             sum(&|species| {
                 let own = species.range_above(start).and_then(|range| range.heat_capacity.get(at).copied());
-                own.map_or(Ball::UNKNOWN, |own| own.ball())
+                own.map_or(Ball::UNKNOWN, Coefficient::ball)
             })
         });
         let jump = if all.is_some() {

@@ -151,8 +151,10 @@ impl Shot {
         named(name).copied().ok_or_else(|| {
             let mut known: Vec<&str> = table::ALL.iter().map(|species| species.name).collect();
             known.push(AIR);
-            let alike =
-                known.iter().find(|known| known.eq_ignore_ascii_case(name)).map_or(String::new(), |alike| format!("was {alike} meant? "));
+            let alike = known
+                .iter()
+                .find(|known| known.eq_ignore_ascii_case(name.trim()))
+                .map_or(String::new(), |alike| format!("was {alike} meant? "));
             let remedy = format!("{alike}built in are {}; others are described under \"species\"", known.join(", "));
             RecordError::new(ErrorKind::Value, &format!("gas.{name}"), "", "this species is unknown", remedy)
         })

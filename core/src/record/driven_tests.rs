@@ -47,7 +47,7 @@ fn flag<'r>(report: &'r Report, code: &str) -> &'r str {
 
 #[test]
 fn an_unknown_species_is_named_with_what_is_known() {
-    for (typed, meant) in [("co2", "was CO2 meant?"), ("AR", "was Ar meant?"), ("Air", "was air meant?")] {
+    for (typed, meant) in [("co2", "was CO2 meant?"), ("AR", "was Ar meant?"), ("Air", "was air meant?"), (" N2", "was N2 meant?")] {
         let error = refused(&format!("{{ \"{typed}\": \"1 %\", \"N2\": \"balance\" }}"), "");
         assert_eq!((error.path.as_str(), error.wrong.as_str()), (&*format!("gas.{typed}"), "this species is unknown"));
         assert!(error.remedy.starts_with(meant) && error.remedy.contains("SF6") && error.remedy.contains("\"species\""), "{error}");

@@ -169,7 +169,12 @@ fn the_choices_stand_side_by_side_with_the_times_that_tell_which_is_nearer() {
     assert_eq!(row("O2"), "O2 210 us less than 1 ns 5");
     assert_eq!(row("N2"), "N2 - 1.9 ms 5");
     let words = section.split_whitespace().collect::<Vec<_>>().join(" ");
-    assert!(words.contains("An observation in state 5 that begins well after 1.9 ms sees it in equilibrium; between them some"), "{words}");
+    assert!(words.contains("An observation of state 5 that begins well after 1.9 ms sees vibration in equilibrium. Where"), "{words}");
+    report.heat_capacity.relaxation[0].reflected = Some(4.8e-6);
+    let words = report.heat_capacity.to_text(&shot).split_whitespace().collect::<Vec<_>>().join(" ");
+    let sentence =
+        "An observation of state 5 that is over well before 4.8 us sees vibration frozen, one that begins well after 1.9 ms sees";
+    assert!(words.contains(sentence) && words.contains("; between them some molecules have relaxed"), "{words}");
     // With one answer for all there is nothing to compare.
     report.heat_capacity.beside.clear();
     assert!(!report.to_text(&shot).contains("Choice of the heat capacity"));

@@ -66,15 +66,15 @@ pub(super) fn choices(page: &mut Page, choice: &HeatCapacityChoice, units: Displ
 fn nearer(choice: &HeatCapacityChoice) -> String {
     let times = || choice.relaxation.iter().filter_map(|relaxing| relaxing.reflected);
     let (quickest, slowest) = (times().fold(f64::INFINITY, f64::min), times().fold(0.0, f64::max));
-    let whose = if choice.relaxation.len() == 1 { "its" } else { "their" };
     let frozen = if quickest < SHORTEST {
-        "An observation in state 5".to_string()
+        String::new()
     } else {
-        format!("An observation in state 5 that is over well before {} sees {whose} vibration frozen, one", relaxation_time(quickest))
+        format!("is over well before {} sees vibration frozen, one that ", relaxation_time(quickest))
     };
-    let between = if quickest < slowest { "; between them some are still frozen and others are not" } else { "" };
+    let between =
+        if quickest >= SHORTEST && quickest < slowest { "; between them some molecules have relaxed and others have not" } else { "" };
     format!(
-        "{frozen} that begins well after {} sees it in equilibrium{between}. Where a time in state 2 is much longer than the gas spends there, \"frozen then equilibrium\" is nearer than \"equilibrium\". Times by the empirical formula of Millikan and White (1963); a molecule that is not listed has none by it.",
+        "An observation of state 5 that {frozen}begins well after {} sees vibration in equilibrium{between}. Where a time in state 2 is much longer than the gas spends there, \"frozen then equilibrium\" is nearer than \"equilibrium\". Times by the empirical formula of Millikan and White (1963); a molecule that is not listed has none by it.",
         relaxation_time(slowest.max(SHORTEST))
     )
 }

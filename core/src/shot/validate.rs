@@ -247,9 +247,9 @@ mod tests {
     }
 
     /// Linear and Monte Carlo uncertainties agree, so the slopes are right, the implicit ones among them.
-    fn agrees(gas: DrivenGas<'_>, wall: EndWall) {
+    fn agrees(gas: &DrivenGas<'_>, wall: EndWall) {
         let shot = Shot {
-            gas,
+            gas: *gas,
             pressure: Measured::new(10e3, 20.0),
             temperature: Measured::new(296.0, 2.0),
             speed: SpeedSource::Given(Measured::new(800.0, 3.0)),
@@ -281,7 +281,7 @@ mod tests {
             EndWall::Moving(Measured::new(900.0, 4.0)),
             EndWall::Yielding(Measured::new(SOFT, 90.0)),
         ] {
-            agrees(gas, wall);
+            agrees(&gas, wall);
         }
     }
 
@@ -302,10 +302,10 @@ mod tests {
         ];
         for model in HeatCapacityModel::ALL {
             for change in &changes {
-                agrees(DrivenGas::ThermallyPerfect { gas, model, changes: core::slice::from_ref(change) }, EndWall::Rigid);
+                agrees(&DrivenGas::ThermallyPerfect { gas, model, changes: core::slice::from_ref(change) }, EndWall::Rigid);
             }
             for wall in [EndWall::Moving(Measured::new(80.0, 4.0)), EndWall::Yielding(Measured::new(SOFT, 90.0))] {
-                agrees(DrivenGas::ThermallyPerfect { gas, model, changes: &changes }, wall);
+                agrees(&DrivenGas::ThermallyPerfect { gas, model, changes: &changes }, wall);
             }
         }
     }

@@ -7,6 +7,7 @@ pub mod interval;
 pub mod inverse;
 pub mod iterate;
 pub mod record;
+pub mod thermal;
 pub mod timing;
 
 use endwall::gas::{Gamma, HeatCapacityRatio, SmallRatio};

@@ -6,6 +6,7 @@
 mod algebraic;
 mod elementary;
 mod reductions;
+mod thermal;
 
 pub use reductions::add_reduction;
 
@@ -78,7 +79,7 @@ impl Part {
 }
 
 /// Every part. The hashes are recorded from the library: other tests say that its results are right, these that they are the same.
-pub const PARTS: [Part; 5] = [
+pub const PARTS: [Part; 6] = [
     Part { name: "nine ratios", case: algebraic::ratios, few: (20, 0x2283_d7d5_fd86_27ff), many: (6_000, 0x4f1f_3301_06e3_623f) },
     Part { name: "outputs of a shock", case: algebraic::outputs, few: (5, 0x787d_cfa7_3dd5_b917), many: (1_000, 0xc83f_9038_fcc1_ff05) },
     Part { name: "inverse problems", case: algebraic::inverses, few: (2, 0xeb73_28d8_ce9f_3815), many: (700, 0x5c0b_5969_3e5f_c4cd) },
@@ -88,6 +89,7 @@ pub const PARTS: [Part; 5] = [
         few: (5, 0xfab5_3098_7a11_b5d4),
         many: (4_000, 0x08d3_9f40_af47_e15b),
     },
+    Part { name: "thermally perfect gases", case: thermal::shocks, few: (2, 0xfeb7_803d_897d_c631), many: (1_200, 0x0d79_2099_5f51_9e71) },
     Part { name: "reductions", case: reductions::reduction, few: (1, 0x131a_c2eb_831c_72cf), many: (300, 0xf544_c2bf_1799_d787) },
 ];
 

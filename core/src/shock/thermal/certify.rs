@@ -59,7 +59,8 @@ impl<T: Stage<Ball>> Problem<'_, T> {
                 return Some(Root { compression: found, mean, to });
             }
             wanted = 4.0 * (found.nearest() - e).abs() + 4.0 * found.radius();
-            if !(wanted < 0.1 * e.abs()) {
+            // A reach that is not a number ends here too.
+            if wanted >= 0.1 * e.abs() || wanted.is_nan() {
                 return None;
             }
             e = found.nearest();

@@ -101,7 +101,7 @@ impl<S: Elementary + Into<f64>> PlainShock<S> {
         let ranges = Ranges { first, second, ahead, fifth: 0 };
         let (reflected, behind, closing_speed) = reflected_stage(setting, incident, ranges, compression);
         let closing: f64 = closing_speed.into();
-        if !(closing > 0.0) {
+        if closing <= 0.0 || closing.is_nan() {
             return None;
         }
         let start = reflected.with_constant(setting.reflected.value(ahead, behind));

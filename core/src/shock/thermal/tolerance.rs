@@ -25,7 +25,7 @@ impl ThermalFill<'_> {
     /// is a heat capacity for which the shock is unique, up to 2 % beyond its range (the check of a species asks for that), so that its root
     /// is the answer wherever the answer lies in its range.
     pub(super) fn range(&self, entry: Entry, value: Known, output: Output) -> Enclosure {
-        let over = |variables: [Variable; INPUTS]| self.over_box(entry, variables, output).unwrap_or(unknown(Enclosure::UNKNOWN));
+        let over = |variables: [Variable; INPUTS]| self.over_box(entry, &variables, output).unwrap_or(unknown(Enclosure::UNKNOWN));
         let point = |[value, pressure, temperature]: [Known; INPUTS]| {
             let fill = self.at(pressure, temperature);
             fill.and_then(|fill| ThermalShock::new(&fill, entry, value).ok()).map_or(Enclosure::UNKNOWN, |shock| shock.output(output))
@@ -37,8 +37,8 @@ impl ThermalFill<'_> {
     }
 
     /// One part of the box.
-    fn over_box(&self, entry: Entry, inputs: [Variable; INPUTS], output: Output) -> Option<Variable> {
-        let [value, pressure, temperature] = inputs;
+    fn over_box(&self, entry: Entry, inputs: &[Variable; INPUTS], output: Output) -> Option<Variable> {
+        let [value, pressure, temperature] = *inputs;
         let fill = self.over_fill(pressure, temperature)?;
         let middle = |input: Variable| Ball::from(input.value().middle());
         let centre_fill = self.at(Known::from(pressure.value().middle()), Known::from(temperature.value().middle()))?;
@@ -205,7 +205,7 @@ impl Part {
         let known = Mean {
             temperature: centre.temperature.enclosure(),
             excess: centre.stage.temperature_excess(root.compression).enclosure(),
-            mean: root.mean.enclosure(),
+            value: root.mean.enclosure(),
         };
         let along = |e: Enclosure| {
             let fixed = Variable::constant(e);
@@ -225,7 +225,7 @@ impl Part {
         let mut reach = 1.25 * size(value / slope(at)) + at.high() * 1e-15;
         for _ in 0..STEPS {
             // A reach that is not a number fails here.
-            if !(reach < 0.5 * at.low() && at.high() + reach < 1.0) {
+            if reach >= 0.5 * at.low() || at.high() + reach >= 1.0 || reach.is_nan() {
                 return None;
             }
             let around = Enclosure::new(at.low() - reach, at.high() + reach)?;
@@ -252,7 +252,7 @@ impl Part {
 struct Mean {
     temperature: Enclosure,
     excess: Enclosure,
-    mean: Enclosure,
+    value: Enclosure,
 }
 
 /// Pieces into which the temperatures between both ends are cut, for the range of T dc/dT.
@@ -283,7 +283,7 @@ impl Mean {
         } else {
             ((steepness - jumps) / t, steepness * (one / (one + x)).hull(one) / Enclosure::whole(2) - jumps / x)
         };
-        let value = self.mean + by_temperature * (t - self.temperature) + by_excess * (x - self.excess);
+        let value = self.value + by_temperature * (t - self.temperature) + by_excess * (x - self.excess);
         let meet =
             |a: Enclosure, b: Enclosure| a.intersection(b).filter(|both| both.is_proven()).unwrap_or(if b.is_proven() { b } else { a });
         let mut slopes = own.slopes();

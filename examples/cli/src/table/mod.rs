@@ -30,13 +30,13 @@ pub struct Arguments {
     #[arg(long, value_name = "TEMPERATURE", requires = "gas", allow_hyphen_values = true)]
     temperature: Option<String>,
     /// First Mach number, above 1; with --gas also a shock speed with its unit, like "600 m/s"
-    #[arg(long, value_name = "MACH", allow_hyphen_values = true)]
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
     from: String,
     /// Last Mach number or shock speed at most
-    #[arg(long, value_name = "MACH", allow_hyphen_values = true)]
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
     to: String,
     /// Step of the Mach number or of the shock speed; decimals are added exactly
-    #[arg(long, value_name = "MACH", allow_hyphen_values = true)]
+    #[arg(long, value_name = "VALUE", allow_hyphen_values = true)]
     step: String,
     /// Write comma-separated values with a header line to FILE, or to standard output with -
     #[arg(long, value_name = "FILE")]
