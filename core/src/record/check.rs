@@ -12,7 +12,7 @@ use super::reduce::{left_aside, station_name};
 use super::report::{ReportQuantity, States};
 use super::shot::Shot;
 use crate::gas::species::Shape;
-use crate::gas::{HeatCapacityModel, ThermallyPerfectGas, shortenings};
+use crate::gas::{HeatCapacityModel, ThermallyPerfectGas, departure_from_ideal, shortenings};
 use crate::number::Rational;
 use crate::shock::{ThermalShock, Wave};
 use crate::shot::{EndWall, Fit, FitFlags, Outlier, Reduction, Solved};
@@ -25,6 +25,8 @@ const MONATOMIC: f64 = 1.6;
 const DISSOCIATION: [(&str, f64); 3] = [("O2", 2500.0), ("CO2", 2500.0), ("N2", 4500.0)];
 /// Noble gases ionise above about this temperature, K (common practice, no source).
 const IONISATION: f64 = 8000.0;
+/// A departure of the fill from an ideal gas that is worth a flag (common practice, no source).
+const DEPARTURE: f64 = 0.005;
 /// Above about this pressure the gas is no ideal gas, Pa (common practice, no source).
 const REAL_GAS: f64 = 50.0e5;
 
@@ -161,6 +163,14 @@ fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>)
 
 /// One flag for each species that shortens the relaxation of others.
 fn shortened_relaxation(gas: &ThermallyPerfectGas<'_>) -> Vec<Flag> {
+    let departure = departure_from_ideal(gas, shock.fill().temperature().nominal(), shock.fill().pressure().nominal());
+    if departure.abs() > DEPARTURE {
+        let text = format!(
+            "the fill departs from an ideal gas by {} % (second virial coefficient, estimated): its density, and with it every state, is off by about that",
+            significant(departure * 100.0, 2)
+        );
+        flags.push(Flag::new("real-gas-fill", text));
+    }
     // Air that leaked in brings a species in twice.
     let mut pairs: Vec<(&str, Vec<&str>)> = Vec::new();
     for remark in shortenings(gas).filter(|remark| share(gas, remark.species) >= MATTERS) {
