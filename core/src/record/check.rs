@@ -140,6 +140,14 @@ fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>)
     let kelvin = significant(temperature, 4);
     let gas = shock.fill().gas();
     let present = || gas.portions().iter().filter(|portion| portion.fraction.is_positive()).map(|portion| portion.species);
+    let departure = departure_from_ideal(gas, shock.fill().temperature().nominal(), shock.fill().pressure().nominal());
+    if departure.abs() > DEPARTURE {
+        let text = format!(
+            "the fill departs from an ideal gas by {} % (second virial coefficient, estimated): its density, and with it every state, is off by about that",
+            significant(departure * 100.0, 2)
+        );
+        flags.push(Flag::new("real-gas-fill", text));
+    }
     for (name, limit) in DISSOCIATION {
         if temperature > limit && share(gas, name) >= MATTERS {
             let text = format!(
@@ -163,14 +171,6 @@ fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>)
 
 /// One flag for each species that shortens the relaxation of others.
 fn shortened_relaxation(gas: &ThermallyPerfectGas<'_>) -> Vec<Flag> {
-    let departure = departure_from_ideal(gas, shock.fill().temperature().nominal(), shock.fill().pressure().nominal());
-    if departure.abs() > DEPARTURE {
-        let text = format!(
-            "the fill departs from an ideal gas by {} % (second virial coefficient, estimated): its density, and with it every state, is off by about that",
-            significant(departure * 100.0, 2)
-        );
-        flags.push(Flag::new("real-gas-fill", text));
-    }
     // Air that leaked in brings a species in twice.
     let mut pairs: Vec<(&str, Vec<&str>)> = Vec::new();
     for remark in shortenings(gas).filter(|remark| share(gas, remark.species) >= MATTERS) {
