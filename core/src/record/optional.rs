@@ -7,7 +7,7 @@ use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::gas::{self, GasRecord};
 use super::quantity::{Absolute, Mark, Quantity};
-use super::read::{Fields, Reading};
+use super::read::{self, Fields, Reading};
 use super::tree::Node;
 use super::unit::Dimension;
 
@@ -50,14 +50,28 @@ pub struct Tube {
     /// Length of the driver.
     pub driver_length: Option<Quantity>,
     /// Inner diameter of the driven section.
-    pub driven_diameter: Option<Quantity>,
+    pub driven_bore: Option<Quantity>,
     /// Inner diameter of the driver.
-    pub driver_diameter: Option<Quantity>,
-    /// Rated pressure: as typed (marked), and absolute.
-    pub rating: Option<(Quantity, Absolute)>,
+    pub driver_bore: Option<Quantity>,
+    /// Distances of stations from the end wall.
+    pub stations: Vec<Quantity>,
+    /// Marked ratings of the parts.
+    pub ratings: Vec<Rating>,
     /// Pressure at which the diaphragm bursts: as typed (marked), and absolute.
     pub burst_pressure: Option<(Quantity, Absolute)>,
 }
+
+/// The marked rating of a part of the tube.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Rating {
+    /// `driven`, `driver`, `window` or `sensor`.
+    pub part: &'static str,
+    /// As typed, and absolute in Pa.
+    pub pressure: (Quantity, Absolute),
+}
+
+/// The parts that have ratings.
+const PARTS: [&str; 4] = ["driven", "driver", "window", "sensor"];
 
 /// The driver.
 #[derive(Clone, Debug, PartialEq)]
@@ -264,7 +278,7 @@ pub(super) fn wall(fields: Fields, reading: &mut Reading) -> Result<Option<Wall>
 
 type Pressure = Option<(Quantity, Absolute)>;
 
-fn pressure(inner: Fields, key: &str, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Pressure, RecordError> {
+pub(super) fn pressure(inner: Fields, key: &str, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Pressure, RecordError> {
     let Some(typed) = inner.quantity(reading, key, Dimension::Pressure)? else { return Ok(None) };
     let absolute = absolute(&typed, &inner.path_of(key), ambient)?;
     Ok(Some((typed, absolute)))
@@ -317,8 +331,8 @@ fn pressure_change(measured: Fields, reading: &mut Reading) -> Result<Option<Qua
 pub(super) fn tube(fields: Fields, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Option<Tube>, RecordError> {
     let Some(node) = fields.get("tube") else { return Ok(None) };
     let inner = Fields::new(node, "tube")?;
-    let lengths = ["driven_length", "driver_length", "driven_diameter", "driver_diameter"];
-    inner.allow(&["driven_length", "driver_length", "driven_diameter", "driver_diameter", "rating", "burst_pressure"])?;
+    let lengths = ["driven_length", "driver_length", "driven_bore", "driver_bore"];
+    inner.allow(&["driven_length", "driver_length", "driven_bore", "driver_bore", "stations", "ratings", "burst_pressure"])?;
     let mut found = Vec::new();
     for key in lengths {
         let length = inner.quantity(reading, key, Dimension::Length)?;
@@ -338,11 +352,30 @@ pub(super) fn tube(fields: Fields, ambient: Option<&Quantity>, reading: &mut Rea
     Ok(Some(Tube {
         driven_length: next(),
         driver_length: next(),
-        driven_diameter: next(),
-        driver_diameter: next(),
-        rating: marked_pressure(inner, "rating", ambient, reading)?,
+        driven_bore: next(),
+        driver_bore: next(),
+        stations: tube_stations(inner, reading)?,
+        ratings: ratings(inner, ambient, reading)?,
         burst_pressure: marked_pressure(inner, "burst_pressure", ambient, reading)?,
     }))
+}
+
+fn tube_stations(tube: Fields, reading: &mut Reading) -> Result<Vec<Quantity>, RecordError> {
+    let nodes = tube.list("stations")?.unwrap_or(&[]);
+    nodes.iter().enumerate().map(|(at, node)| read::quantity(reading, node, &format!("tube.stations[{at}]"), Dimension::Length)).collect()
+}
+
+fn ratings(tube: Fields, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Vec<Rating>, RecordError> {
+    let Some(node) = tube.get("ratings") else { return Ok(Vec::new()) };
+    let inner = Fields::new(node, "tube.ratings")?;
+    inner.allow(&PARTS)?;
+    let mut found = Vec::new();
+    for part in PARTS {
+        if let Some(pressure) = marked_pressure(inner, part, ambient, reading)? {
+            found.push(Rating { part, pressure });
+        }
+    }
+    Ok(found)
 }
 
 pub(super) fn driver(

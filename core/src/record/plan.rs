@@ -141,7 +141,7 @@ impl Plan {
         let efficiency = efficiency(fields, &mut reading)?;
         let tolerance = tolerance(fields, &mut reading)?;
         optional::free_text(fields)?;
-        if let Some(flag) = hazard::can_burn(&gas, driver.as_ref()) {
+        if let Some(flag) = hazard::can_burn(&gas, &species, driver.as_ref()) {
             flags.insert(0, flag);
         }
         let entries = read::entries(&node, &reading);

@@ -79,8 +79,15 @@ impl Plan {
         Ok(Planned { fill_pressure, shock_speed, shot })
     }
 
-    fn thermal<'a>(&self, gas: ThermallyPerfectGas<'a>, entry: Entry, value: Known, pressure: Known) -> Result<ThermalShock<'a>, RecordError> {
-        let fill = ThermalFill::new(gas, self.heat_capacity, pressure, self.temperature.value()).map_err(|error| self.refused(&error.into()))?;
+    fn thermal<'a>(
+        &self,
+        gas: ThermallyPerfectGas<'a>,
+        entry: Entry,
+        value: Known,
+        pressure: Known,
+    ) -> Result<ThermalShock<'a>, RecordError> {
+        let fill =
+            ThermalFill::new(gas, self.heat_capacity, pressure, self.temperature.value()).map_err(|error| self.refused(&error.into()))?;
         ThermalShock::new(&fill, entry, value).map_err(|error| self.refused(&error))
     }
 

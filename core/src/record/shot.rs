@@ -11,6 +11,7 @@ use super::gas::{self, GasRecord};
 use super::hazard;
 use super::leak::{self, Leak};
 use super::optional::{self, Driver, Measured, Survey, Tube, Wall};
+use super::plan::Plan;
 use super::quantity::{Absolute, Mark, Quantity};
 use super::read::{self, Entry, Fields, Reading};
 use super::species::{self, OwnSpecies};
@@ -132,7 +133,7 @@ impl Shot {
     pub fn read(file: &[u8]) -> Result<Self, RecordError> {
         let node = tree::parse(file)?;
         let fields = Fields::new(&node, "")?;
-        kind(fields)?;
+        kind(fields, "shot/1", "a shot has \"record\": \"shot/1\"")?;
         fields.allow(&FIELDS)?;
         let mut reading = Reading::new();
         reading.confirm = confirm(fields, &node)?;
@@ -192,21 +193,43 @@ impl Shot {
             input_digest: input_digest(file),
         })
     }
+
+    /// A shot that a plan leads to, with nothing measured.
+    pub(super) fn planned(plan: &Plan, pressure: Quantity, speed: Quantity) -> Self {
+        let absolute = Absolute { value: pressure.value(), standard_uncertainty: pressure.standard_uncertainty() };
+        Self {
+            name: plan.name.clone(),
+            gas: plan.gas.clone(),
+            heat_capacity: plan.heat_capacity,
+            species: plan.species.clone(),
+            fill: Fill { pressure, absolute, temperature: plan.temperature.clone() },
+            speed: Speed::Given(speed),
+            attenuation: None,
+            clock: None,
+            survey: None,
+            ambient: plan.ambient.clone(),
+            humidity: None,
+            leak: None,
+            wall: None,
+            measured: None,
+            tube: plan.tube.clone(),
+            driver: plan.driver.clone(),
+            confirmed: plan.confirmed.clone(),
+            flags: plan.flags.clone(),
+            entries: plan.entries.clone(),
+            input_digest: plan.input_digest.clone(),
+        }
+    }
 }
 
-fn kind(fields: Fields) -> Result<(), RecordError> {
-    fields.required("record", "\"shot/1\"")?;
+/// Refuses a record of another kind than the wanted one.
+pub(super) fn kind(fields: Fields, wanted: &str, remedy: &str) -> Result<(), RecordError> {
+    fields.required("record", &format!("\"{wanted}\""))?;
     match fields.text("record")? {
-        Some("shot/1") => Ok(()),
+        Some(kind) if kind == wanted => Ok(()),
         other => {
             let typed = other.unwrap_or("");
-            Err(RecordError::new(
-                ErrorKind::Value,
-                "record",
-                typed,
-                "this kind of record is not read here",
-                "a shot has \"record\": \"shot/1\"",
-            ))
+            Err(RecordError::new(ErrorKind::Value, "record", typed, "this kind of record is not read here", remedy))
         }
     }
 }
@@ -215,7 +238,7 @@ fn kind(fields: Fields) -> Result<(), RecordError> {
 const MOST_CONFIRMED: usize = 50;
 
 /// The confirmed paths; each must exist, or a typo would confirm nothing.
-fn confirm(fields: Fields, node: &Node) -> Result<Vec<String>, RecordError> {
+pub(super) fn confirm(fields: Fields, node: &Node) -> Result<Vec<String>, RecordError> {
     let mut leaves = Vec::new();
     read::leaves(node, "", &mut |path, _| leaves.push(path.to_string()));
     let mut paths = Vec::new();
@@ -251,7 +274,7 @@ fn confirm(fields: Fields, node: &Node) -> Result<Vec<String>, RecordError> {
     Ok(paths)
 }
 
-fn confirmations(reading: &Reading, entries: &[Entry], flags: &mut Vec<Flag>) {
+pub(super) fn confirmations(reading: &Reading, entries: &[Entry], flags: &mut Vec<Flag>) {
     for path in &reading.confirm {
         let typed = entries.iter().find(|entry| entry.path == *path).map_or("", |entry| entry.typed.as_str());
         let value = if typed.is_empty() { String::new() } else { format!(" \"{}\"", super::error::printable(typed)) };

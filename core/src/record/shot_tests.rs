@@ -26,7 +26,7 @@ const TIMED: &str = r#"{
   "ambient": "101.30 ± 0.05 kPa", "humidity": "45 ± 3 %", "leak": { "rate": "0.5 Pa/min", "waiting": "120 s" },
   "wall": { "impedance": "39.5 MPa s/m" },
   "measured": { "pressure_2": "90 ± 2 kPa", "pressure_5": "3.2 bar(g)", "rise": "312 kPa" },
-  "tube": { "driven_length": "4.2 m", "driver_length": "2.0 m", "driven_diameter": "76 mm", "rating": "60 bar(g)" },
+  "tube": { "driven_length": "4.2 m", "driver_length": "2.0 m", "driven_bore": "76 mm", "ratings": { "driven": "60 bar(g)" } },
   "driver": { "gas": { "He": "balance" }, "pressure": "22.0 bar(a)", "temperature": "296 K" },
   "date": "2031-04-12", "operator": "duty", "instruments": { "timer": "T7" }, "notes": ["first", "second"]
 }"#;
@@ -84,7 +84,7 @@ fn every_field_is_read_and_every_unused_one_is_said() {
     assert!(matches!(&shot.wall, Some(Wall::Impedance(z)) if z.value() == exact("39.5e6")));
     let measured = shot.measured.as_ref().unwrap();
     assert_eq!(measured.pressure_5.as_ref().unwrap().1.value, exact("421300"));
-    assert_eq!(shot.tube.as_ref().unwrap().rating.as_ref().unwrap().1.value, exact("6101300"));
+    assert_eq!(shot.tube.as_ref().unwrap().ratings[0].pressure.1.value, exact("6101300"));
     assert!(matches!(shot.driver.as_ref().unwrap().gas, Some(GasRecord::Mixture(_))));
     let unused: Vec<&str> =
         shot.flags.iter().filter(|flag| flag.code == "not-used").map(|flag| flag.text.split(' ').next().unwrap()).collect();
@@ -146,7 +146,12 @@ fn fields_are_checked_with_their_path() {
             (r#""shock_speed""#, r#""survey": "0 ± 0.5 K", "shock_speed""#, "survey", "K is the unit of a temperature"),
             (r#""shock_speed""#, r#""humidity": "145 %", "shock_speed""#, "humidity", "between 0 and 100 %"),
             (r#""shock_speed""#, r#""measured": { "rise": "3 bar(g)" }, "shock_speed""#, "measured.rise", "difference"),
-            (r#""shock_speed""#, r#""tube": { "rating": "60 bar" }, "shock_speed""#, "tube.rating", "bar(g) or bar(a)"),
+            (
+                r#""shock_speed""#,
+                r#""tube": { "ratings": { "driven": "60 bar" } }, "shock_speed""#,
+                "tube.ratings.driven",
+                "bar(g) or bar(a)",
+            ),
             (r#""shock_speed""#, r#""tube": { "driven_length": "0 m" }, "shock_speed""#, "tube.driven_length", "greater than zero"),
             (r#""shock_speed""#, r#""driver": { "pressure": "22 bar" }, "shock_speed""#, "driver.pressure", "marked"),
         ],

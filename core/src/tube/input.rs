@@ -50,6 +50,14 @@ pub enum TubeInput {
     TemperatureRatio,
     /// Viscosity.
     Viscosity,
+    /// Mach number of the incident shock.
+    Mach,
+    /// Mach number of the wall layer in the frame of the reflected shock.
+    WallLayerMach,
+    /// Pressure ratio p5/p2.
+    ReflectedOverIncidentPressure,
+    /// Heat-capacity ratio of the driven gas, as an exact ratio of integers.
+    HeatCapacityRatio,
     /// Absolute pressure on the end flange.
     LoadPressure,
     /// Absolute pressure of the driver fill.
@@ -87,6 +95,10 @@ impl TubeInput {
             Self::DensityRatio => "density ratio ρ2/ρ1",
             Self::TemperatureRatio => "temperature ratio T2/T1",
             Self::Viscosity => "viscosity",
+            Self::Mach => "Mach number",
+            Self::WallLayerMach => "Mach number of the wall layer",
+            Self::ReflectedOverIncidentPressure => "pressure ratio p5/p2",
+            Self::HeatCapacityRatio => "heat-capacity ratio",
             Self::LoadPressure => "pressure on the end flange",
             Self::DriverPressure => "driver pressure",
             Self::AmbientPressure => "ambient pressure",
@@ -103,7 +115,14 @@ impl TubeInput {
             Self::FillDensity => " kg/m³",
             Self::Viscosity => " Pa s",
             Self::LoadPressure | Self::DriverPressure | Self::AmbientPressure | Self::Rating | Self::UpperEnd => " Pa",
-            Self::PressureRatio | Self::DensityRatio | Self::TemperatureRatio | Self::DriverHeatCapacityRatio => "",
+            Self::PressureRatio
+            | Self::DensityRatio
+            | Self::TemperatureRatio
+            | Self::DriverHeatCapacityRatio
+            | Self::Mach
+            | Self::WallLayerMach
+            | Self::ReflectedOverIncidentPressure
+            | Self::HeatCapacityRatio => "",
             _ => " m/s",
         }
     }
@@ -163,7 +182,8 @@ impl fmt::Display for TubeInputError {
             Rule::Above(limit) => write!(f, "{name} {value}{unit} must be greater than {limit}{unit}"),
             Rule::Below(limit) => write!(f, "{name} {value}{unit} must be less than {limit}{unit}"),
             Rule::Between(low, high) => write!(f, "{name} {value}{unit} must lie between {low}{unit} and {high}{unit}"),
-            // No other rule is used on this floor.
+            Rule::Digits => write!(f, "{name} {value}{unit} is no exact ratio of integers below 2⁵³: give it as one"),
+            // No other rule is used here.
             _ => write!(f, "{name} {value}{unit} is not a finite number"),
         }
     }

@@ -267,10 +267,8 @@ impl Tube {
             }
         }
         // Beyond e^650 the head's way through the fan is not computed.
-        TubeInput::DriverLength.positive_ball(self.head_leaves_fan().time).map_err(|_| {
-            let length = self.lengths.driver.nearest();
-            TubeInput::DriverLength.refuse(length, Rule::Finite)
-        })
+        let leaves = TubeInput::DriverLength.positive_ball(self.head_leaves_fan().time);
+        leaves.map_err(|_| TubeInput::GasSpeed2.refuse(speeds.gas_speed.nearest(), Rule::Below(limit.nearest())))
     }
 }
 

@@ -267,7 +267,7 @@ fn doubts_about_a_result_are_flags_and_no_failure() {
     flagged(&changed(ARGON, "0.060 ± 0.0003 m", "0.460 ± 0.0003 m").replace("2079.26", "1661.26"), "far-station");
     flagged(&changed(ARGON, "8.000 ± 0.020 kPa", "8.000 kPa"), "missing-uncertainty");
     flagged(&changed(BY_SPEED, "950 ± 1 m/s", "950 m/s"), "missing-uncertainty");
-    flagged(&changed(SENSOR, "\"C-17\",", "\"C-17\", \"tube\": { \"driven_diameter\": \"60 mm\" },"), "not-used");
+    flagged(&changed(SENSOR, "\"C-17\",", "\"C-17\", \"tube\": { \"driven_bore\": \"60 mm\" },"), "not-used");
     flagged(&slowing(-0.03), "attenuation-negative");
     flagged(&slowing(0.09), "attenuation-large");
     let question = changed(BY_SPEED, "296.2 ± 0.5 K", "80 ± 0.5 K");
