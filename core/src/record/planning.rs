@@ -1,10 +1,12 @@
 //! From a wanted state to what the operator sets.
 
 use alloc::string::String;
+use alloc::vec::Vec;
 
 use super::error::{ErrorKind, RecordError};
 use super::plan::{Plan, Target};
-use super::report::Report;
+use super::plan_report::{PlanReport, PlannedFill, computed};
+use super::report::ReportQuantity;
 use super::shot::Shot;
 use crate::gas::{Fill, Gas, HeatCapacityRatio, ThermallyPerfectGas};
 use crate::number::{Enclosure, Known};
@@ -110,13 +112,39 @@ impl Plan {
     }
 }
 
-/// The report of a planned shot.
-impl Planned {
-    /// The states with the tolerances of the laboratory as uncertainties.
+impl Plan {
+    /// The whole plan: fill and shock, states with the tolerances of the laboratory as uncertainties, and, as far as driver and tube are given, driver
+    /// pressure, waves, uniform time, loads and ratings.
     ///
     /// # Errors
-    /// As for [`Shot::reduce`].
-    pub fn report(&self) -> Result<Report, RecordError> {
-        self.shot.reduce()
+    /// As for [`Plan::solve`], and for a driver that cannot drive this shock.
+    pub fn report(&self) -> Result<PlanReport, RecordError> {
+        let planned = self.solve()?;
+        let report = planned.shot.reduce()?;
+        let p1 = ReportQuantity { proven: None, ..report.states.fill.pressure.clone() };
+        let (nominal, enclosure) = planned.fill_pressure;
+        let p1 = ReportQuantity { proven: computed(nominal, "Pa", Some(enclosure)).proven, ..p1 };
+        let speed = report.incident.speed.value;
+        let farthest = self.tube.iter().flat_map(|tube| &tube.stations).map(|station| station.value().to_f64()).fold(0.0, f64::max);
+        let first_station_speed =
+            self.attenuation.as_ref().filter(|_| farthest > 0.0).map(|attenuation| speed * (1.0 + attenuation.value().to_f64() * farthest));
+        let mut flags = report.flags.clone();
+        flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube")));
+        Ok(PlanReport {
+            limits: Vec::new(),
+            fill: PlannedFill { p1, p4: None, p4_band: None },
+            incident: report.incident,
+            states: report.states,
+            reflected: report.reflected,
+            step: report.step,
+            heat_capacity: report.heat_capacity,
+            first_station_speed,
+            test_time: None,
+            waves: Vec::new(),
+            end_load: None,
+            stored_energy: None,
+            flags,
+            made_by: report.made_by,
+        })
     }
 }

@@ -51,7 +51,10 @@ pub(super) struct DisplayUnits {
 
 /// The unit of the pressures of a shot.
 pub(super) fn pressure_unit(shot: &Shot) -> Option<Unit> {
-    let typed = shot.fill.pressure.unit();
+    displayed(shot.fill.pressure.unit())
+}
+
+fn displayed(typed: Unit) -> Option<Unit> {
     let metric = matches!(typed.symbol(), "Pa" | "hPa" | "kPa" | "MPa");
     if metric { Unit::find("kPa") } else { Some(typed) }
 }
@@ -59,6 +62,16 @@ pub(super) fn pressure_unit(shot: &Shot) -> Option<Unit> {
 impl DisplayUnits {
     pub(super) fn of(shot: &Shot) -> Self {
         Self { pressure: pressure_unit(shot) }
+    }
+
+    /// With pressures in the unit of a typed one.
+    pub(super) fn like(typed: Unit) -> Self {
+        Self { pressure: displayed(typed) }
+    }
+
+    /// A pressure without uncertainty, Pa.
+    pub(super) fn pressure(self, value: f64) -> String {
+        value_with_uncertainty(value, None, self.pressure)
     }
 
     /// value ± U in display units.
@@ -180,18 +193,20 @@ fn chi_squared(value: Option<f64>) -> String {
 /// One quantity of a state.
 type Of = fn(&ReportState) -> &ReportQuantity;
 
+/// The quantities of a state in the order of the tables.
+pub(super) const QUANTITIES: [(&str, Of); 5] = [
+    ("pressure", |state| &state.pressure),
+    ("temperature", |state| &state.temperature),
+    ("density", |state| &state.density),
+    ("sound speed", |state| &state.sound_speed),
+    ("gas speed", |state| &state.gas_speed),
+];
+
 fn states(page: &mut Page, report: &Report, units: DisplayUnits) {
     page.heading("States");
     let columns: [&ReportState; 3] = [&report.states.fill, &report.states.incident, &report.states.reflected];
-    let quantities: [(&str, Of); 5] = [
-        ("pressure", |state| &state.pressure),
-        ("temperature", |state| &state.temperature),
-        ("density", |state| &state.density),
-        ("sound speed", |state| &state.sound_speed),
-        ("gas speed", |state| &state.gas_speed),
-    ];
     let mut rows = alloc::vec![row(["value ± U (k)", "1 fill", "2 incident", "5 reflected"])];
-    for (name, of) in quantities {
+    for (name, of) in QUANTITIES {
         let [one, two, five] = columns.map(|state| units.show_with_factor(of(state)));
         rows.push(row([name, &one, &two, &five]));
     }

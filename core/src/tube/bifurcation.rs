@@ -114,7 +114,7 @@ impl Bifurcation {
         let gamma = Gamma::from_excess(heat_capacity_ratio.excess().ball());
         let jump = Jump::from_mach_excess(gamma, excess);
         let wall_layer = jump.reflected_speed(excess + Ball::from(1.0));
-        Self::compare(gamma, wall_layer, jump.reflected_over_incident_pressure())
+        Ok(Self::compare(gamma, wall_layer, jump.reflected_over_incident_pressure()))
     }
 
     /// The criterion for any gas: γ of the wall layer (at T1), `M_bl` = `U_R`/a1 and p5/p2.
@@ -132,10 +132,10 @@ impl Bifurcation {
         if !(ratio - Ball::from(1.0)).is_certainly_positive() {
             return Err(TubeInput::ReflectedOverIncidentPressure.refuse(ratio.nearest(), Rule::Above(1.0)));
         }
-        Self::compare(Gamma::from_excess(heat_capacity_ratio.excess().ball()), mach, ratio)
+        Ok(Self::compare(Gamma::from_excess(heat_capacity_ratio.excess().ball()), mach, ratio))
     }
 
-    fn compare(gamma: Gamma<Ball>, mach: Ball, reflected_over_incident_pressure: Ball) -> Result<Self, TubeInputError> {
+    fn compare(gamma: Gamma<Ball>, mach: Ball, reflected_over_incident_pressure: Ball) -> Self {
         let square = mach * mach;
         let over_one = mach - Ball::from(1.0);
         let stagnation = if over_one.is_certainly_positive() {
@@ -144,15 +144,12 @@ impl Bifurcation {
             isentropic(gamma, square)
         } else {
             // Around 1 each form holds on its side, and the hull of both on either.
-            let hull = pitot(gamma, square).enclosure().hull(isentropic(gamma, square).enclosure());
-            Ball::around(hull)
+            Ball::around(pitot(gamma, square).enclosure().hull(isentropic(gamma, square).enclosure()))
         };
         let logarithm = stagnation - reflected_over_incident_pressure.ln();
         let margin = -(logarithm * logarithm.expm1_ratio());
+        // Over a tolerance so wide that the ball leaves the domain of a logarithm nothing is known, and the answer says so.
         let bounds = margin.enclosure();
-        if !bounds.is_proven() {
-            return Err(TubeInput::WallLayerMach.refuse(mach.nearest(), Rule::Finite));
-        }
         let verdict = if bounds.low() > 0.0 {
             Verdict::Bifurcates
         } else if bounds.high() <= 0.0 {
@@ -161,7 +158,7 @@ impl Bifurcation {
             Verdict::Undecided
         };
         let stagnation_over_reflected = logarithm.exp().enclosure();
-        Ok(Self { wall_layer_mach: mach.enclosure(), stagnation_over_reflected, margin: bounds, verdict })
+        Self { wall_layer_mach: mach.enclosure(), stagnation_over_reflected, margin: bounds, verdict }
     }
 }
 

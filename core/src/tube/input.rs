@@ -46,8 +46,6 @@ pub enum TubeInput {
     PressureRatio,
     /// Density ratio ρ2/ρ1.
     DensityRatio,
-    /// Temperature ratio T2/T1.
-    TemperatureRatio,
     /// Viscosity.
     Viscosity,
     /// Mach number of the incident shock.
@@ -93,7 +91,6 @@ impl TubeInput {
             Self::FillDensity => "density of the driven fill",
             Self::PressureRatio => "pressure ratio p2/p1",
             Self::DensityRatio => "density ratio ρ2/ρ1",
-            Self::TemperatureRatio => "temperature ratio T2/T1",
             Self::Viscosity => "viscosity",
             Self::Mach => "Mach number",
             Self::WallLayerMach => "Mach number of the wall layer",
@@ -117,7 +114,6 @@ impl TubeInput {
             Self::LoadPressure | Self::DriverPressure | Self::AmbientPressure | Self::Rating | Self::UpperEnd => " Pa",
             Self::PressureRatio
             | Self::DensityRatio
-            | Self::TemperatureRatio
             | Self::DriverHeatCapacityRatio
             | Self::Mach
             | Self::WallLayerMach

@@ -12,7 +12,7 @@ pub use bifurcation::{Bifurcation, BifurcationBand, BifurcationError, Verdict, b
 pub use boundary_layer::{BoundaryLayer, Separation, TestTimeBand, laminar_separation, turbulent_separation};
 pub use event::{Event, Wave, WaveName};
 pub use input::{TubeInput, TubeInputError};
-pub use load::{EndLoad, RatingCheck, StoredEnergy, brode_energy, check_rating, end_load, stored_energy};
+pub use load::{EndLoad, RatingCheck, StoredEnergy, check_rating, end_load, stored_energy};
 pub use test_time::{Limit, TestTime};
 pub use viscosity::{LennardJones, ViscosityError, collision_integral, lennard_jones, mixture_viscosity, wilke};
 pub use wave_diagram::WaveDiagram;

@@ -122,9 +122,13 @@ impl WaveDiagram {
         let a4 = tube.speeds.sound_speed_4;
         let head_at = |time: Ball| Event { position: -(a4 * time), time };
         let tail_at = |time: Ball| Event { position: (tube.speeds.gas_speed - tube.speeds.sound_speed_3()) * time, time };
-        let until = |end: Event<Ball>, at: &dyn Fn(Ball) -> Event<Ball>| if is_certainly_before(horizon, end) { at(horizon.time) } else { end };
+        let until =
+            |end: Event<Ball>, at: &dyn Fn(Ball) -> Event<Ball>| if is_certainly_before(horizon, end) { at(horizon.time) } else { end };
         let after = |earlier: Event<Ball>| !is_certainly_before(horizon, earlier);
-        let in_driver_gas = |time: Ball| Event { position: leaves.position + (tube.speeds.gas_speed + tube.speeds.sound_speed_3()) * (time - leaves.time), time };
+        let in_driver_gas = |time: Ball| Event {
+            position: leaves.position + (tube.speeds.gas_speed + tube.speeds.sound_speed_3()) * (time - leaves.time),
+            time,
+        };
         let in_fan = |_: Ball| tube.head_in_fan((horizon.time / start_of_return.time).ln());
         let end_in_driver_gas = match through {
             Some(after) => after.change,
@@ -150,7 +154,11 @@ impl WaveDiagram {
             returned,
             through.and_then(|after| line(WaveName::TransmittedShock, meeting, after.change)),
             through.and_then(|after| line(WaveName::ExpansionToContact, after.change, after.at_contact)),
-            if overtaken || !(head_first || through.is_some()) { None } else { line(WaveName::ExpansionToEndWall, last, arrival(last, a5)) },
+            if overtaken || !(head_first || through.is_some()) {
+                None
+            } else {
+                line(WaveName::ExpansionToEndWall, last, arrival(last, a5))
+            },
         ]
     }
 
@@ -294,7 +302,10 @@ mod tests {
                 };
                 let found = (wave.to.position - wave.from.position) / (wave.to.time - wave.from.time);
                 let margin = Enclosure::new(-1e-9, 1e-9).unwrap();
-                assert!((found + margin).contains(speed) && found.width() < 1e-9 * speed.abs() + 1e-8, "{driver} {wave:?} {found:?} {speed}");
+                assert!(
+                    (found + margin).contains(speed) && found.width() < 1e-9 * speed.abs() + 1e-8,
+                    "{driver} {wave:?} {found:?} {speed}"
+                );
                 assert!(wave.from.time.certainly_less(wave.to.time), "{wave:?}");
             }
         }

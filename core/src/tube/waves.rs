@@ -3,7 +3,7 @@
 use super::event::Event;
 use super::input::{TubeInput, TubeInputError};
 use crate::gas::{Gamma, Rule};
-use crate::number::{Ball, Elementary};
+use crate::number::{Ball, Elementary, Semifield};
 
 /// Speeds (m/s) of the waves and gases of an ideal tube: a diaphragm that opens at once, a driver of the bore of the driven section, whose gas has
 /// constant heat capacity.

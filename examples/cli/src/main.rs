@@ -1,13 +1,15 @@
-//! The `endwall` command: reduces record files, looks at single shocks, prints tables.
+//! The `endwall` command: reduces record files, plans shots, looks at single shocks, prints tables.
 //!
 //! Exit codes: 0 for a result, with or without flags; 2 where the input is refused, 1 for any other failure such as a full disk, both with
 //! the reason on standard error.
 
 mod failure;
+mod file;
 mod gas;
 mod gases;
 mod options;
 mod output;
+mod plan;
 mod progress;
 mod reduce;
 mod states;
@@ -39,6 +41,7 @@ struct Arguments {
 #[expect(clippy::large_enum_variant, reason = "there is one of them")]
 enum Task {
     Reduce(reduce::Arguments),
+    Plan(plan::Arguments),
     States(states::Arguments),
     Table(table::Arguments),
     Gases(gases::Arguments),
@@ -47,6 +50,7 @@ enum Task {
 fn main() -> ExitCode {
     let done = match Arguments::parse().task {
         Task::Reduce(arguments) => reduce::run(&arguments),
+        Task::Plan(arguments) => plan::run(&arguments),
         Task::States(arguments) => states::run(&arguments),
         Task::Table(arguments) => table::run(&arguments),
         Task::Gases(arguments) => gases::run(&arguments),

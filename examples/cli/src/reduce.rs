@@ -1,18 +1,14 @@
 //! `endwall reduce`: a record file to its report.
 
-use std::fs::File;
-use std::io::{Read, stdin};
-use std::path::{Path, PathBuf};
+use std::path::PathBuf;
 
 use clap::Args;
 use endwall::record::Shot;
 
 use crate::failure::Failure;
+use crate::file;
 use crate::output;
 use crate::progress::Bar;
-
-/// No record is longer than this; the rest of a longer file, or of an endless one, is never read.
-const LARGEST_FILE: usize = 1 << 20;
 
 /// Reduce a shot: from its record file to the states, their uncertainties and the budget
 ///
@@ -41,9 +37,9 @@ fn trials(typed: &str) -> Result<u64, &'static str> {
 
 /// Runs it.
 pub fn run(arguments: &Arguments) -> Result<(), Failure> {
-    let name = if is_standard_input(&arguments.file) { "standard input".into() } else { arguments.file.to_string_lossy() };
+    let name = file::name(&arguments.file);
     let refused = |error| Failure::record(&name, &error);
-    let shot = Shot::read(&read(&arguments.file, &name)?).map_err(refused)?;
+    let shot = Shot::read(&file::read(&arguments.file)?).map_err(refused)?;
     let mut report = shot.reduce().map_err(refused)?;
     if let Some(most) = arguments.monte_carlo {
         let mut bar = Bar::new("Monte Carlo trials");
@@ -56,23 +52,4 @@ pub fn run(arguments: &Arguments) -> Result<(), Failure> {
     }
     let text = if arguments.json { report.to_json().map_err(refused)? } else { report.to_text(&shot) };
     output::print(&text)
-}
-
-fn is_standard_input(file: &Path) -> bool {
-    file.as_os_str() == "-"
-}
-
-fn read(file: &Path, name: &str) -> Result<Vec<u8>, Failure> {
-    let mut bytes = Vec::new();
-    let enough = LARGEST_FILE as u64 + 1;
-    let read = if is_standard_input(file) {
-        stdin().lock().take(enough).read_to_end(&mut bytes)
-    } else {
-        File::open(file).and_then(|opened| opened.take(enough).read_to_end(&mut bytes))
-    };
-    match read {
-        Err(error) => Err(Failure::unread(name, &error)),
-        Ok(length) if length > LARGEST_FILE => Err(Failure::too_long(name, LARGEST_FILE)),
-        Ok(_) => Ok(bytes),
-    }
 }

@@ -1,0 +1,144 @@
+//! The text form of a plan.
+
+use alloc::format;
+use alloc::string::{String, ToString};
+
+use super::format::significant;
+use super::hazard::CAUTIONS;
+use super::page::{Page, row};
+use super::plan::{Plan, Target};
+use super::plan_report::PlanReport;
+use super::text::DisplayUnits;
+use super::text_choices::choices;
+
+pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
+    let mut page = Page::default();
+    let units = units(plan);
+    let name = if plan.name.is_empty() { "without a name" } else { plan.name.as_str() };
+    page.line(&format!("Plan {name}: what to set for a wanted state at the end wall"));
+    limits(&mut page, report, units);
+    set(&mut page, report, units);
+    page.heading("Flags");
+    for flag in &report.flags {
+        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
+    }
+    if report.flags.is_empty() {
+        page.line("none");
+    }
+    states(&mut page, report, units);
+    if !report.heat_capacity.beside.is_empty() {
+        page.heading("Choice of the heat capacity");
+        choices(&mut page, &report.heat_capacity, units);
+    }
+    waves(&mut page, report);
+    page.heading("Before anybody acts on these numbers");
+    for caution in CAUTIONS.iter().filter(|caution| report.limits.is_empty() || !caution.starts_with("Ratings are not checked")) {
+        page.paragraph("- ", caution);
+    }
+    page.heading("Made by");
+    page.line(&format!("endwall {}; gas data: {}", report.made_by.version, report.made_by.gas_data));
+    page.line(&format!("record file {}", report.made_by.input_digest));
+    page.text
+}
+
+/// Pressures in the unit of the target.
+fn units(plan: &Plan) -> DisplayUnits {
+    DisplayUnits::like(match &plan.target {
+        Target::State { pressure, .. } => pressure.0.unit(),
+        Target::Step { step, .. } => step.unit(),
+    })
+}
+
+/// Exceeded ratings come before every pressure that is to be set.
+fn limits(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
+    page.heading("Ratings");
+    if report.limits.is_empty() {
+        page.line("ratings not checked: the record gives none");
+    } else {
+        let mut rows = alloc::vec![row(["part", "load", "upper end", "rating", ""])];
+        for line in &report.limits {
+            let verdict = if line.exceeded { "EXCEEDED: do not fire" } else { "within" };
+            rows.push(row([&line.part, &line.load, &units.pressure(line.pressure), &units.pressure(line.rating), verdict]));
+        }
+        page.table(&rows);
+        page.paragraph("", "Pressures and ratings are absolute. A rating is a gauge value at room temperature as marked on the part; whether it holds for a sudden load is for the person who rated it to say.");
+    }
+    for flag in report.flags.iter().filter(|flag| flag.code == "can-burn") {
+        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
+    }
+}
+
+fn set(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
+    page.heading("Set");
+    let mut rows = alloc::vec![row(["Driven fill p1", &units.show(&report.fill.p1)])];
+    if let Some(p4) = &report.fill.p4 {
+        rows.push(row(["Driver pressure p4", &units.show(p4)]));
+    }
+    if let Some([low, high]) = report.fill.p4_band {
+        rows.push(row(["  for the scatter of the efficiency", &format!("{} to {}", units.pressure(low), units.pressure(high))]));
+    }
+    page.table(&rows);
+    page.paragraph(
+        "",
+        "Pressures are absolute. Numbers are those of the ideal model; a laboratory's own efficiency and attenuation make them its own.",
+    );
+    page.heading("Wanted and expected");
+    let mut rows = alloc::vec![
+        row(["Temperature T5", &units.show(&report.states.reflected.temperature)]),
+        row(["Pressure p5", &units.show(&report.states.reflected.pressure)]),
+        row(["Step p5 - p1", &units.show(&report.step)]),
+        row(["Shock speed at the end wall", &units.show(&report.incident.speed)]),
+        row(["Mach number", &units.show(&report.incident.mach)]),
+    ];
+    if let Some(speed) = report.first_station_speed {
+        rows.push(row(["Shock speed at the first station", &format!("{} m/s", significant(speed, 5))]));
+    }
+    if let Some(time) = &report.test_time {
+        rows.push(row([
+            "Uniform time at the end wall",
+            &format!("{} ms, ended when {}", significant(time.end_wall.value * 1e3, 3), time.cause),
+        ]));
+        if let Some(length) = time.shortest_driver {
+            rows.push(row(["Shortest driver that does not limit it", &format!("{} m", significant(length, 3))]));
+        }
+    }
+    if let Some(load) = report.end_load {
+        rows.push(row([
+            "Load on the end wall",
+            &format!("{} kN at rest; suddenly applied it can act as twice that", significant(load / 1e3, 3)),
+        ]));
+    }
+    if let Some(energy) = report.stored_energy {
+        rows.push(row(["Stored energy of the driver", &format!("{} kJ", significant(energy / 1e3, 3))]));
+    }
+    page.table(&rows);
+}
+
+fn states(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
+    page.heading("States");
+    let states = &report.states;
+    let mut rows = alloc::vec![row(["", "1 fill", "2 incident", "5 reflected"])];
+    for (name, of) in super::text::QUANTITIES {
+        let [one, two, five] = [&states.fill, &states.incident, &states.reflected].map(|state| units.show(of(state)));
+        rows.push(row([name, &one, &two, &five]));
+    }
+    page.table(&rows);
+    page.paragraph("", "Behind ± stands the expanded uncertainty (k=2) that follows from the uncertainty of the fill temperature and the tolerances of the record, if any.");
+}
+
+fn waves(page: &mut Page, report: &PlanReport) {
+    if report.waves.is_empty() {
+        return;
+    }
+    page.heading("Waves");
+    let mut rows = alloc::vec![row(["wave", "from x", "t", "to x", "t"])];
+    for wave in &report.waves {
+        let [x0, t0] = wave.from;
+        let [x1, t1] = wave.to;
+        let metres = |x: f64| format!("{x:.3} m");
+        let milliseconds = |t: f64| format!("{:.3} ms", t * 1e3);
+        rows.push(row([&wave.name, &metres(x0), &milliseconds(t0), &metres(x1), &milliseconds(t1)]));
+    }
+    page.table(&rows);
+    page.line(&"x from the diaphragm toward the end wall, t from its opening; ideal tube.".to_string());
+}
