@@ -24,7 +24,7 @@
 //! | [`number`] | the kinds of number and their traits, exact decimals, certified roots; the only place that knows rounding |
 //! | [`gas`] | heat capacity, mixtures, fills; the only place that knows what a gas is |
 //! | [`shock`] | stationary, incident and reflected shock, moving wall, inverses |
-//! | [`tube`] | wave diagram and test time, boundary layer, bifurcation, loads |
+//! | [`tube`] | driver, contact surface and tailoring, wave diagram and test time, boundary layer, bifurcation, loads |
 //! | [`shot`] | arrival times to shock speed, reduction, uncertainty budget, Monte Carlo |
 //! | `record` | (feature `record`) quantities with units, record files, reports |
 //!

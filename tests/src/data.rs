@@ -73,6 +73,8 @@ tables! {
     jcgm_100_results;
     /// Heat capacity and enthalpy of ideal gases from property libraries.
     heat_capacity_library;
+    /// Viscosity of dilute gases and the collision integral from property libraries.
+    viscosity_library;
 }
 
 impl Table {

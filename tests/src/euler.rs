@@ -36,11 +36,11 @@ pub struct Plateau {
     pub incident_speed: f64,
 }
 
-/// A tube of unit length with gas at rest, an inflow at its left end and a closed right end.
+/// A tube of unit length with a closed right end; its left end is closed too, or gas flows in there.
 #[derive(Clone, Debug)]
 struct Tube {
     heat_capacity_ratio: f64,
-    inflow: Primitive,
+    inflow: Option<Primitive>,
     cells: Vec<Conserved>,
     width: f64,
 }
@@ -57,7 +57,7 @@ const COURANT: f64 = 0.45;
 /// `behind` must be the state behind a shock that runs into `ahead`; the incident speed in the result tells.
 #[must_use]
 pub fn reflect(heat_capacity_ratio: f64, ahead: Primitive, behind: Primitive, cells: usize) -> Plateau {
-    let mut tube = Tube::new(heat_capacity_ratio, ahead, behind, cells);
+    let mut tube = Tube::new(heat_capacity_ratio, ahead, behind, START, cells);
     let mut time = 0.0;
     let (mut incoming, mut outgoing) = (Vec::new(), Vec::new());
     let incident_level = 0.5 * (ahead.pressure + behind.pressure);
@@ -86,12 +86,32 @@ pub fn reflect(heat_capacity_ratio: f64, ahead: Primitive, behind: Primitive, ce
     }
 }
 
+/// Times and pressures at the right end of a tube that is closed at both ends, after a diaphragm at `diaphragm` between two states of one gas opens
+/// at once; in a tube of unit length, up to a time.
+#[must_use]
+pub fn end_wall_pressure(
+    heat_capacity_ratio: f64,
+    [left, right]: [Primitive; 2],
+    diaphragm: f64,
+    cells: usize,
+    until: f64,
+) -> Vec<(f64, f64)> {
+    let mut tube = Tube::new(heat_capacity_ratio, right, left, diaphragm, cells);
+    tube.inflow = None;
+    let (mut time, mut history) = (0.0, Vec::new());
+    while time < until {
+        time += tube.step();
+        history.push((time, tube.primitive(cells - 1).pressure));
+    }
+    history
+}
+
 impl Tube {
-    fn new(heat_capacity_ratio: f64, ahead: Primitive, behind: Primitive, count: usize) -> Self {
+    fn new(heat_capacity_ratio: f64, ahead: Primitive, behind: Primitive, start: f64, count: usize) -> Self {
         let width = 1.0 / count as f64;
-        let mut tube = Self { heat_capacity_ratio, inflow: behind, cells: Vec::with_capacity(count), width };
+        let mut tube = Self { heat_capacity_ratio, inflow: Some(behind), cells: Vec::with_capacity(count), width };
         for place in 0..count {
-            let state = if tube.centre(place) < START { behind } else { ahead };
+            let state = if tube.centre(place) < start { behind } else { ahead };
             tube.cells.push(conserved(heat_capacity_ratio, state));
         }
         tube
@@ -141,16 +161,17 @@ impl Tube {
         }
     }
 
-    /// Primitive variables with two inflow cells on the left and two mirrored cells behind the wall.
+    /// Primitive variables with two inflow cells on the left, or two mirrored ones, and two mirrored cells behind the wall.
     fn with_ghosts(&self) -> Vec<[f64; 3]> {
         let list = |state: Primitive| [state.density, state.velocity, state.pressure];
         let count = self.cells.len();
-        let mut states = vec![list(self.inflow); 2];
-        states.extend((0..count).map(|place| list(self.primitive(place))));
-        for place in [count - 1, count - 2] {
+        let mirrored = |place: usize| {
             let [density, velocity, pressure] = list(self.primitive(place));
-            states.push([density, -velocity, pressure]);
-        }
+            [density, -velocity, pressure]
+        };
+        let mut states = self.inflow.map_or_else(|| vec![mirrored(1), mirrored(0)], |inflow| vec![list(inflow); 2]);
+        states.extend((0..count).map(|place| list(self.primitive(place))));
+        states.extend([count - 1, count - 2].map(mirrored));
         states
     }
 

@@ -105,3 +105,19 @@ pub const HARMONIC: f64 = 0.02;
 /// Shock into a thermally perfect gas in plain doubles, relative, in units of 2^-52 times 1 + 1/(M − 1): some dozens of roundings in polynomials
 /// of alternating signs.
 pub const PLAIN_THERMAL: f64 = 100.0;
+
+/// Viscosity of dilute gases at 300 K, relative: what the library states of its parameters, which were fitted near there. Largest seen: 2.5 % (SF6).
+pub const VISCOSITY_AT_300: f64 = 0.03;
+
+/// The same from 250 K to 1000 K: the older data behind the parameters are low at high temperatures. Largest seen: 6.3 % (argon at 1000 K).
+pub const VISCOSITY: f64 = 0.07;
+
+/// The same for water, whose molecules are polar, which the potential ignores. Largest seen: 10.1 %.
+pub const VISCOSITY_OF_WATER: f64 = 0.11;
+
+/// Collision integral against another fit, relative: its authors state an accuracy of 0.16 % at worst. Largest seen: 0.159 %.
+pub const COLLISION_INTEGRAL: f64 = 0.0017;
+
+/// Arrival of a wave at the end wall in a finite-volume run, relative, times the number of cells: the kink in the pressure is smeared over a few cells,
+/// and found from two levels behind it. Largest seen on 500 to 1500 cells: ARRIVAL_SEEN.
+pub const EULER_ARRIVAL_TIMES_CELLS: f64 = 8.0;

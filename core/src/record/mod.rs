@@ -21,6 +21,7 @@ mod page;
 mod plan;
 mod plan_report;
 mod plan_text;
+mod plan_tube;
 mod planning;
 mod quantity;
 mod quantity_text;

@@ -20,7 +20,6 @@ use crate::gas::HeatCapacityModel;
 
 /// What the shot is to reach.
 #[derive(Clone, Debug, PartialEq)]
-#[expect(clippy::large_enum_variant, reason = "a record holds one of these")]
 pub enum Target {
     /// T5 (K) and p5, as typed and absolute (Pa): the fill pressure follows.
     State {

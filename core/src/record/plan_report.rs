@@ -1,7 +1,7 @@
 //! The report of a plan as data: the object that `endwall plan FILE --json` prints.
 
 use alloc::format;
-use alloc::string::{String, ToString};
+use alloc::string::String;
 use alloc::vec::Vec;
 
 use serde::Serialize;
@@ -119,9 +119,4 @@ pub(super) fn computed(value: f64, unit: &'static str, proven: Option<crate::num
         expanded: None,
         coverage_factor: None,
     }
-}
-
-/// A name for a wave as the diagram has it.
-pub(super) fn wave(name: &str, from: [f64; 2], to: [f64; 2]) -> PlannedWave {
-    PlannedWave { name: name.to_string(), from, to }
 }

@@ -1,7 +1,7 @@
 //! The text form of a plan.
 
 use alloc::format;
-use alloc::string::{String, ToString};
+use alloc::string::String;
 
 use super::format::significant;
 use super::hazard::CAUTIONS;
@@ -140,5 +140,5 @@ fn waves(page: &mut Page, report: &PlanReport) {
         rows.push(row([&wave.name, &metres(x0), &milliseconds(t0), &metres(x1), &milliseconds(t1)]));
     }
     page.table(&rows);
-    page.line(&"x from the diaphragm toward the end wall, t from its opening; ideal tube.".to_string());
+    page.line("x from the diaphragm toward the end wall, t from its opening; ideal tube.");
 }

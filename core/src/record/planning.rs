@@ -1,7 +1,6 @@
 //! From a wanted state to what the operator sets.
 
 use alloc::string::String;
-use alloc::vec::Vec;
 
 use super::error::{ErrorKind, RecordError};
 use super::plan::{Plan, Target};
@@ -11,7 +10,8 @@ use super::shot::Shot;
 use crate::gas::{Fill, Gas, HeatCapacityRatio, ThermallyPerfectGas};
 use crate::number::{Enclosure, Known};
 use crate::shock::{Entry, Incident, Output, ThermalError, ThermalFill, ThermalShock};
-use crate::shot::DrivenGas;
+use crate::shot::{DrivenGas, Solved};
+use crate::tube::TestGas;
 
 /// The fill and the shock that reach a target.
 #[derive(Clone, Debug, PartialEq)]
@@ -60,7 +60,7 @@ impl Plan {
                     (shock.output(Output::ReflectedPressureRatio), (shock.nearest(Output::ShockSpeed), shock.output(Output::ShockSpeed)))
                 }
                 DrivenGas::ThermallyPerfect { gas, .. } => {
-                    let shock = self.thermal(gas, entry, value.into(), pressure.into())?;
+                    let shock = self.thermal(&gas, entry, value.into(), pressure.into())?;
                     (shock.output(Output::ReflectedPressureRatio), (shock.nearest(Output::ShockSpeed), shock.output(Output::ShockSpeed)))
                 }
             };
@@ -83,13 +83,13 @@ impl Plan {
 
     fn thermal<'a>(
         &self,
-        gas: ThermallyPerfectGas<'a>,
+        gas: &ThermallyPerfectGas<'a>,
         entry: Entry,
         value: Known,
         pressure: Known,
     ) -> Result<ThermalShock<'a>, RecordError> {
         let fill =
-            ThermalFill::new(gas, self.heat_capacity, pressure, self.temperature.value()).map_err(|error| self.refused(&error.into()))?;
+            ThermalFill::new(*gas, self.heat_capacity, pressure, self.temperature.value()).map_err(|error| self.refused(&error.into()))?;
         ThermalShock::new(&fill, entry, value).map_err(|error| self.refused(&error))
     }
 
@@ -128,21 +128,28 @@ impl Plan {
         let farthest = self.tube.iter().flat_map(|tube| &tube.stations).map(|station| station.value().to_f64()).fold(0.0, f64::max);
         let first_station_speed =
             self.attenuation.as_ref().filter(|_| farthest > 0.0).map(|attenuation| speed * (1.0 + attenuation.value().to_f64() * farthest));
-        let mut flags = report.flags.clone();
+        let p5 = &report.states.reflected.pressure;
+        let upper = (p5.value, p5.value + p5.expanded.unwrap_or(0.0));
+        let part = planned.shot.with_reduction(|reduction, _| match reduction.solved() {
+            Solved::Constant(incident, _) => self.tube_part(TestGas::from(incident.fill()), speed, upper),
+            Solved::Thermal(shock) => self.tube_part(TestGas::from(shock.fill()), speed, upper),
+        })??;
+        let mut flags = part.flags;
+        flags.extend(report.flags.iter().cloned());
         flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube")));
         Ok(PlanReport {
-            limits: Vec::new(),
-            fill: PlannedFill { p1, p4: None, p4_band: None },
+            limits: part.limits,
+            fill: PlannedFill { p1, p4: part.p4, p4_band: part.p4_band },
             incident: report.incident,
             states: report.states,
             reflected: report.reflected,
             step: report.step,
             heat_capacity: report.heat_capacity,
             first_station_speed,
-            test_time: None,
-            waves: Vec::new(),
-            end_load: None,
-            stored_energy: None,
+            test_time: part.time,
+            waves: part.waves,
+            end_load: part.end_load,
+            stored_energy: part.stored_energy,
             flags,
             made_by: report.made_by,
         })

@@ -260,7 +260,7 @@ impl Incident {
     }
 
     /// An output at a point, as a ball.
-    pub(super) fn ball(&self, output: Output) -> Ball {
+    pub(crate) fn ball(&self, output: Output) -> Ball {
         self.ball_flow(self.z()).evaluate(output)
     }
 

@@ -130,7 +130,7 @@ impl BoundaryLayer {
 
     /// Laminar limit of the separation, m: `l_m` = d² ρ1 `U_S`/(41.8 (p2/p1) μ(T1)).
     ///
-    /// From the momentum of the layer of a wall that moves under gas at rest (B. C. Sakiadis, AIChE J. 7 (1961) 26, from memory): to about 27 %.
+    /// From the momentum of the layer of a wall that moves under gas at rest (B. C. Sakiadis, `AIChE` J. 7 (1961) 26, from memory): to about 27 %.
     pub fn laminar_limit(&self) -> f64 {
         self.diameter * self.diameter * self.fill_density * self.incident_shock / (41.8 * self.pressure_ratio * self.viscosity_1)
     }
@@ -219,9 +219,9 @@ mod tests {
     /// integration starts at a point of the closed form.
     #[test]
     fn separations_solve_their_equations() {
-        let laws: [(fn(f64) -> Separation, fn(f64) -> f64); 2] =
-            [(laminar_separation, |t| 1.0 - libm::sqrt(t)), (turbulent_separation, |t| 1.0 - libm::pow(t, 0.8))];
-        for (law, slope) in laws {
+        let laws = [(laminar_separation as fn(f64) -> Separation, 0.5), (turbulent_separation, 0.8)];
+        for (law, exponent) in laws {
+            let slope = |t: f64| 1.0 - libm::pow(t, exponent);
             for start in [1e-3, 0.05, 0.3, 2.0] {
                 let (mut x, mut t) = (start, law(start).value);
                 let h = start / 400.0;

@@ -285,7 +285,7 @@ impl<'a> ThermalShock<'a> {
     }
 
     /// One output as a ball, of the solution that the f64 iteration found.
-    fn ball(&self, output: Output) -> Ball {
+    pub(crate) fn ball(&self, output: Output) -> Ball {
         self.flows.iter().flatten().next().map_or(Ball::UNKNOWN, |flow| flow.evaluate(output))
     }
 

@@ -1,0 +1,214 @@
+//! What driver and tube add to a plan: driver pressure, waves, uniform time, loads and ratings.
+
+use alloc::format;
+use alloc::string::ToString;
+use alloc::vec::Vec;
+
+use super::error::{ErrorKind, RecordError};
+use super::flag::Flag;
+use super::gas::{Component, GasRecord};
+use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
+use super::plan::Plan;
+use super::plan_report::{LimitLine, PlannedTime, PlannedWave, computed};
+use super::report::ReportQuantity;
+use crate::gas::species::named;
+use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas};
+use crate::number::{Ball, Rational};
+use crate::shock::Entry;
+use crate::tube::{
+    BehindShock, Contact, ContactReturn, Drive, Driver, DriverError, Efficiency, Lengths, TestGas, Tube, WaveDiagram, end_load,
+    stored_energy,
+};
+
+/// What is found.
+#[derive(Default)]
+pub(super) struct TubePart {
+    pub p4: Option<ReportQuantity>,
+    pub p4_band: Option<[f64; 2]>,
+    pub time: Option<PlannedTime>,
+    pub waves: Vec<PlannedWave>,
+    pub end_load: Option<f64>,
+    pub stored_energy: Option<f64>,
+    pub limits: Vec<LimitLine>,
+    pub flags: Vec<Flag>,
+}
+
+/// Pressures that act on the tube, Pa, absolute, each with its name.
+struct Loads {
+    /// p5, with its expanded uncertainty.
+    reflected: f64,
+    /// The end wall after a shock came back from the contact surface.
+    over_tailored: Option<f64>,
+    /// The driver, at the upper end of its band.
+    driver: Option<f64>,
+}
+
+impl Plan {
+    /// All of it, for a shock of this speed (m/s) whose p5 has this upper end (Pa).
+    pub(super) fn tube_part(&self, gas: TestGas<'_>, speed: f64, p5: (f64, f64)) -> Result<TubePart, RecordError> {
+        let mut part = TubePart::default();
+        let mut over_tailored = None;
+        let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| self.no_driver(&error))?;
+        if let Some(record) = &self.driver {
+            let driver = self.driver(record)?;
+            let drive = driver.for_shock(&behind).map_err(|error| self.no_driver(&error))?;
+            self.driver_pressure(&mut part, &driver, &drive, gas, &behind)?;
+            let contact = Contact::new(&behind, &drive);
+            let met = contact.interaction();
+            over_tailored = met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|pressure| *pressure > p5.0);
+            self.diagram(&mut part, &driver, &behind, &contact)?;
+        }
+        if let Some(tube) = &self.tube {
+            let driver = part.p4_band.map(|[_, high]| high).or(part.p4.as_ref().map(|p4| p4.value));
+            self.loads(&mut part, tube, &Loads { reflected: p5.1, over_tailored, driver });
+        }
+        Ok(part)
+    }
+
+    /// The driver of the record: its gas with the heat capacity at its temperature.
+    fn driver(&self, record: &DriverRecord) -> Result<Driver, RecordError> {
+        let missing = |path: &str, example: &str| {
+            let remedy = format!("add it, like {example}");
+            RecordError::new(ErrorKind::Field, path, "", "a driver needs its gas and its temperature", remedy)
+        };
+        let temperature = record.temperature.as_ref().ok_or_else(|| missing("driver.temperature", "\"temperature\": \"295 K\""))?.value();
+        let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
+        let driver = Driver::new(driver_gas(gas, temperature)?, temperature).map_err(|error| self.no_driver(&error))?;
+        let bores = self.tube.as_ref().and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
+        let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
+        match ratio {
+            None => Ok(driver),
+            Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| self.no_driver(&error)),
+        }
+    }
+
+    fn driver_pressure(
+        &self,
+        part: &mut TubePart,
+        driver: &Driver,
+        drive: &Drive,
+        gas: TestGas<'_>,
+        behind: &BehindShock<'_>,
+    ) -> Result<(), RecordError> {
+        let Some(stated) = &self.efficiency else {
+            part.p4 = Some(computed(drive.pressure.middle(), "Pa", Some(drive.pressure)));
+            let text = "no efficiency is given: p4 is that of an ideal tube; real tubes need more (a Mach number 5 to 15 % low is common practice)";
+            part.flags.push(Flag::new("ideal-driver", text));
+            return Ok(());
+        };
+        let efficiency = Efficiency::new(stated.value().to_f64(), stated.standard_uncertainty().unwrap_or(0.0));
+        let efficiency = efficiency.map_err(|error| self.no_driver(&error))?;
+        let band = driver.pressure_for_mach(gas, behind.mach().nearest(), efficiency).map_err(|error| self.no_driver(&error))?;
+        part.p4 = Some(computed(band.pressure, "Pa", None));
+        part.p4_band = (band.high > band.low).then_some([band.low, band.high]);
+        Ok(())
+    }
+
+    fn diagram(&self, part: &mut TubePart, driver: &Driver, behind: &BehindShock<'_>, contact: &Contact<'_>) -> Result<(), RecordError> {
+        let lengths =
+            self.tube.as_ref().and_then(|tube| Some((tube.driven_length.as_ref()?.value(), tube.driver_length.as_ref()?.value())));
+        let Some((driven, driver_length)) = lengths else { return Ok(()) };
+        let speeds = match driver.speeds(behind) {
+            Ok(speeds) => speeds,
+            Err(error) => {
+                part.flags.push(Flag::new("no-wave-diagram", format!("no wave diagram: {error}")));
+                return Ok(());
+            }
+        };
+        let contact = contact.contact_return().unwrap_or_else(|_| {
+            let text = "the wave that comes back from the contact surface is taken as a sound wave: the heat capacity of the test gas depends on temperature; a returned shock would be faster";
+            part.flags.push(Flag::new("returned-wave", text));
+            ContactReturn::Wave { speed: speeds.sound_speed_5 }
+        });
+        let lengths = Lengths { driven: Ball::from(driven), driver: Ball::from(driver_length) };
+        let refused = |error: crate::tube::TubeInputError| {
+            RecordError::new(ErrorKind::Value, "tube", "", format!("{error}"), "check the lengths of the tube")
+        };
+        let diagram = WaveDiagram::new(Tube { speeds, lengths, contact }).map_err(refused)?;
+        let time = diagram.test_time(0.0).map_err(refused)?;
+        part.time = Some(PlannedTime {
+            end_wall: computed(time.duration.middle(), "s", Some(time.duration)),
+            cause: time.limit.name().to_string(),
+            shortest_driver: diagram.shortest_driver(0.0).ok().filter(|length| length.is_proven()).map(|length| length.middle()),
+        });
+        let text = "ideal tube: the diaphragm opens at once, without boundary layers; both shorten the uniform time. A disturbance counts from its first wave";
+        part.flags.push(Flag::new("ideal-waves", text));
+        for wave in diagram.waves().into_iter().flatten() {
+            let at = |event: crate::tube::Event| [event.position.middle(), event.time.middle()];
+            part.waves.push(PlannedWave { name: wave.name.name().to_string(), from: at(wave.from), to: at(wave.to) });
+        }
+        Ok(())
+    }
+
+    fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads) {
+        let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map_or(101_325.0, |ambient| ambient.value.to_f64());
+        if let Some(bore) = &tube.driven_bore {
+            let worst = loads.over_tailored.map_or(loads.reflected, |pressure| pressure.max(loads.reflected));
+            part.end_load = end_load(worst, ambient, bore.value()).ok().map(|load| load.steady.high());
+        }
+        if let (Some(p4), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
+            let area = core::f64::consts::PI / 4.0 * bore.value().to_f64() * bore.value().to_f64();
+            let driver = self.driver.as_ref().and_then(|record| self.driver(record).ok());
+            part.stored_energy = driver.and_then(|driver| {
+                let energy = stored_energy(driver.gas().heat_capacity_ratio(), p4, ambient, area * length.value().to_f64()).ok()?;
+                Some(energy.brode.high())
+            });
+        }
+        for rating in &tube.ratings {
+            let limit = rating.pressure.1.value.to_f64();
+            let mut line = |load: &str, pressure: f64| {
+                let exceeded = pressure > limit;
+                part.limits.push(LimitLine { part: rating.part.to_string(), load: load.to_string(), pressure, rating: limit, exceeded });
+            };
+            if rating.part == "driver" {
+                if let Some(p4) = loads.driver {
+                    line("p4, also where the diaphragm does not burst", p4);
+                }
+                continue;
+            }
+            line("p5", loads.reflected);
+            if let Some(pressure) = loads.over_tailored {
+                line("end wall after a shock came back from the contact surface", pressure);
+            }
+        }
+        part.limits.sort_by_key(|line| !line.exceeded);
+        if part.limits.iter().any(|line| line.exceeded) {
+            part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
+        }
+    }
+
+    fn no_driver(&self, error: &DriverError) -> RecordError {
+        let remedy = match error {
+            DriverError::TooFast { .. } | DriverError::PressureBeyondRange { .. } => {
+                "take a lighter driver gas, a hotter driver or a larger driver bore, or a weaker shock"
+            }
+            _ => "check gas, temperature and bore of the driver",
+        };
+        RecordError::new(ErrorKind::Value, "driver", "", format!("{error}"), remedy)
+    }
+}
+
+/// A driver gas of constant heat capacity: as typed, the exact one of atoms, or that of the species at the temperature of the driver.
+fn driver_gas(gas: &GasRecord, temperature: Rational) -> Result<Gas, RecordError> {
+    let refused = |wrong: alloc::string::String| {
+        RecordError::new(ErrorKind::Value, "driver.gas", "", wrong, "give species that are built in, or heat_capacity_ratio and molar_mass")
+    };
+    let built = |ratio: Rational, mass: Rational| {
+        let ratio = HeatCapacityRatio::new(ratio).map_err(|error| refused(format!("{error}")))?;
+        Gas::new(ratio, mass).map_err(|error| refused(format!("{error}")))
+    };
+    if let Ok(constant) = gas.constant(HeatCapacityModel::Constant) {
+        return built(constant.heat_capacity_ratio, constant.molar_mass);
+    }
+    let GasRecord::Mixture(components) = gas else { return Err(refused("this is no gas".to_string())) };
+    let portion = |component: &Component| {
+        let species = named(&component.species).ok_or_else(|| refused(format!("{} is not built in", component.species)))?;
+        Ok(Portion { species, fraction: component.fraction })
+    };
+    let portions: Vec<Portion<'_>> = components.iter().map(portion).collect::<Result<_, RecordError>>()?;
+    let mixture = ThermallyPerfectGas::new(&portions).map_err(|error| refused(format!("{error}")))?;
+    let c = mixture.heat_capacity_at(temperature.to_f64()).map_err(|error| refused(format!("{error}")))?.middle();
+    // γ to twelve digits: the driver is a model anyhow, and its γ must be an exact number.
+    let ratio = Rational::ratio(libm::rint(c / (c - 1.0) * 1e12) as u128, 1_000_000_000_000).unwrap_or(Rational::ONE);
+    built(ratio, Rational::from(mixture.molar_mass().nearest()))
+}
