@@ -66,10 +66,19 @@ impl Counted {
     /// A value about which nothing is known; its enclosure is everything.
     const UNKNOWN: Self = Self { head: 1.0, tail: 0.0, tail_count: u32::MAX, error_count: u32::MAX, low: 0, high: 0 };
 
-    /// The exact double `x`, where 2^low ≤ x ≤ 2^high; `None` elsewhere.
+    /// The exact double `x`, where 2^low ≤ x ≤ 2^high; `None` elsewhere, and for bounds beyond 2^±950, outside of which products are not exact.
+    ///
+    /// ```
+    /// use endwall::number::Counted;
+    /// assert!(Counted::exactly(1.5, 0, 1).is_some());
+    /// assert!(Counted::exactly(1.5, 1, 2).is_none());
+    /// assert!(Counted::exactly(1.0, 0, i32::MAX).is_none());
+    /// assert!(Counted::exactly(0.0, -1023, 0).is_none());
+    /// ```
     #[inline(always)]
     pub fn exactly(x: f64, low: i32, high: i32) -> Option<Self> {
-        Self::is_within(x, low, high).then_some(Self::inside(x, low, high))
+        let usable = -WIDEST <= low && low <= high && high <= WIDEST;
+        (usable && Self::is_within(x, low, high)).then_some(Self::inside(x, low, high))
     }
 
     /// 2^low ≤ x ≤ 2^high.

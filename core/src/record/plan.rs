@@ -252,3 +252,7 @@ fn tolerance(fields: Fields, reading: &mut Reading) -> Result<Tolerance, RecordE
     };
     Ok(Tolerance { fill: one("fill")?, speed: one("speed")? })
 }
+
+#[cfg(test)]
+#[path = "plan_tests.rs"]
+mod tests;

@@ -13,7 +13,7 @@ use super::plan_report::{LimitLine, PlannedTime, PlannedWave, computed};
 use super::report::ReportQuantity;
 use crate::gas::species::named;
 use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas};
-use crate::number::{Ball, Rational};
+use crate::number::{Ball, Enclosure, Rational};
 use crate::shock::Entry;
 use crate::tube::{
     BehindShock, Contact, ContactReturn, Drive, Driver, DriverError, Efficiency, Lengths, TestGas, Tube, WaveDiagram, end_load,
@@ -48,10 +48,10 @@ impl Plan {
     pub(super) fn tube_part(&self, gas: TestGas<'_>, speed: f64, p5: (f64, f64)) -> Result<TubePart, RecordError> {
         let mut part = TubePart::default();
         let mut over_tailored = None;
-        let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| self.no_driver(&error))?;
+        let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| no_driver(&error))?;
         if let Some(record) = &self.driver {
             let driver = self.driver(record)?;
-            let drive = driver.for_shock(&behind).map_err(|error| self.no_driver(&error))?;
+            let drive = driver.for_shock(&behind).map_err(|error| no_driver(&error))?;
             self.driver_pressure(&mut part, &driver, &drive, gas, &behind)?;
             let contact = Contact::new(&behind, &drive);
             let met = contact.interaction();
@@ -73,12 +73,12 @@ impl Plan {
         };
         let temperature = record.temperature.as_ref().ok_or_else(|| missing("driver.temperature", "\"temperature\": \"295 K\""))?.value();
         let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
-        let driver = Driver::new(driver_gas(gas, temperature)?, temperature).map_err(|error| self.no_driver(&error))?;
+        let driver = Driver::new(driver_gas(gas, temperature)?, temperature).map_err(|error| no_driver(&error))?;
         let bores = self.tube.as_ref().and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
         let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
         match ratio {
             None => Ok(driver),
-            Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| self.no_driver(&error)),
+            Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| no_driver(&error)),
         }
     }
 
@@ -97,8 +97,8 @@ impl Plan {
             return Ok(());
         };
         let efficiency = Efficiency::new(stated.value().to_f64(), stated.standard_uncertainty().unwrap_or(0.0));
-        let efficiency = efficiency.map_err(|error| self.no_driver(&error))?;
-        let band = driver.pressure_for_mach(gas, behind.mach().nearest(), efficiency).map_err(|error| self.no_driver(&error))?;
+        let efficiency = efficiency.map_err(|error| no_driver(&error))?;
+        let band = driver.pressure_for_mach(gas, behind.mach().nearest(), efficiency).map_err(|error| no_driver(&error))?;
         part.p4 = Some(computed(band.pressure, "Pa", None));
         part.p4_band = (band.high > band.low).then_some([band.low, band.high]);
         Ok(())
@@ -129,7 +129,7 @@ impl Plan {
         part.time = Some(PlannedTime {
             end_wall: computed(time.duration.middle(), "s", Some(time.duration)),
             cause: time.limit.name().to_string(),
-            shortest_driver: diagram.shortest_driver(0.0).ok().filter(|length| length.is_proven()).map(|length| length.middle()),
+            shortest_driver: diagram.shortest_driver(0.0).ok().filter(|length| length.is_proven()).map(Enclosure::middle),
         });
         let text = "ideal tube: the diaphragm opens at once, without boundary layers; both shorten the uniform time. A disturbance counts from its first wave";
         part.flags.push(Flag::new("ideal-waves", text));
@@ -176,16 +176,17 @@ impl Plan {
             part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
         }
     }
+}
 
-    fn no_driver(&self, error: &DriverError) -> RecordError {
-        let remedy = match error {
-            DriverError::TooFast { .. } | DriverError::PressureBeyondRange { .. } => {
-                "take a lighter driver gas, a hotter driver or a larger driver bore, or a weaker shock"
-            }
-            _ => "check gas, temperature and bore of the driver",
-        };
-        RecordError::new(ErrorKind::Value, "driver", "", format!("{error}"), remedy)
-    }
+/// The refusal of a driver, with the options.
+fn no_driver(error: &DriverError) -> RecordError {
+    let remedy = match error {
+        DriverError::TooFast { .. } | DriverError::PressureBeyondRange { .. } => {
+            "take a lighter driver gas, a hotter driver or a larger driver bore, or a weaker shock"
+        }
+        _ => "check gas, temperature and bore of the driver",
+    };
+    RecordError::new(ErrorKind::Value, "driver", "", format!("{error}"), remedy)
 }
 
 /// A driver gas of constant heat capacity: as typed, the exact one of atoms, or that of the species at the temperature of the driver.

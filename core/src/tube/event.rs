@@ -43,10 +43,10 @@ pub enum WaveName {
     ReturnedWave,
     /// The shock that a tailored contact surface lets through.
     TransmittedShock,
-    /// From the transmitted shock back to the contact surface.
-    ExpansionToContact,
-    /// The last part of the way of the expansion, behind the reflected shock to the end wall.
-    ExpansionToEndWall,
+    /// From where the transmitted shock met the head or the tail back to the contact surface: an expansion by the head, a weak compression by the tail.
+    DisturbanceToContact,
+    /// The last part of that way, or of the head's, behind the reflected shock to the end wall.
+    DisturbanceToEndWall,
 }
 
 impl WaveName {
@@ -63,8 +63,8 @@ impl WaveName {
             Self::ReflectedShock => "reflected shock",
             Self::ReturnedWave => "wave returned from the contact surface",
             Self::TransmittedShock => "transmitted shock",
-            Self::ExpansionToContact => "expansion to the contact surface",
-            Self::ExpansionToEndWall => "expansion to the end wall",
+            Self::DisturbanceToContact => "disturbance to the contact surface",
+            Self::DisturbanceToEndWall => "disturbance to the end wall",
         }
     }
 }

@@ -44,11 +44,11 @@ impl<'a> TestGas<'a> {
         Ok(match self {
             Self::Constant(fill) => {
                 let shock = Incident::new(fill, entry, value)?;
-                BehindShock::new(self, |output| shock.ball(output), |output| shock.output(output))
+                BehindShock::of_constant(self, &shock)
             }
             Self::Thermal(fill) => {
                 let shock = ThermalShock::new(fill, entry, value)?;
-                BehindShock::new(self, |output| shock.ball(output), |output| shock.output(output))
+                BehindShock::of_thermal(self, &shock)
             }
         })
     }
@@ -89,13 +89,27 @@ pub struct BehindShock<'a> {
 }
 
 impl<'a> BehindShock<'a> {
-    fn new(gas: TestGas<'a>, at_a_point: impl Fn(Output) -> Ball, enclosed: impl Fn(Output) -> Enclosure) -> Self {
+    fn of_constant(gas: TestGas<'a>, shock: &Incident) -> Self {
+        let fill = shock.fill();
+        let inputs =
+            [shock.entry().1, fill.pressure(), fill.temperature(), fill.gas().molar_mass(), fill.gas().heat_capacity_ratio().known()];
+        if inputs.iter().all(|input| input.exact().is_some()) {
+            Self::new(gas, |output| shock.ball(output))
+        } else {
+            Self::new(gas, |output| Ball::around(shock.output(output)))
+        }
+    }
+
+    fn of_thermal(gas: TestGas<'a>, shock: &ThermalShock) -> Self {
         // At a point the ball has more digits than the enclosure; for a tolerance, or for two answers at a joint, only the enclosure holds all.
-        let ball = |output| {
-            let (ball, bounds) = (at_a_point(output), enclosed(output));
+        Self::new(gas, |output| {
+            let (ball, bounds) = (shock.ball(output), shock.output(output));
             let own = ball.enclosure();
             if own.encloses(bounds) && own.width_in_ulp() <= 2 { ball } else { Ball::around(bounds) }
-        };
+        })
+    }
+
+    fn new(gas: TestGas<'a>, ball: impl Fn(Output) -> Ball) -> Self {
         let gas_speed = ball(Output::GasSpeed2);
         let (pressure, rise) = (ball(Output::Pressure2), ball(Output::PressureRise));
         let step = ball(Output::Step);
@@ -169,12 +183,12 @@ impl<'a> BehindShock<'a> {
 
 impl<'a> From<&'a Incident> for BehindShock<'a> {
     fn from(shock: &'a Incident) -> Self {
-        Self::new(TestGas::Constant(shock.fill()), |output| shock.ball(output), |output| shock.output(output))
+        Self::of_constant(TestGas::Constant(shock.fill()), shock)
     }
 }
 
 impl<'a> From<&'a ThermalShock<'a>> for BehindShock<'a> {
     fn from(shock: &'a ThermalShock<'a>) -> Self {
-        Self::new(TestGas::Thermal(shock.fill()), |output| shock.ball(output), |output| shock.output(output))
+        Self::of_thermal(TestGas::Thermal(shock.fill()), shock)
     }
 }

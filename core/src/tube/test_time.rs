@@ -13,7 +13,8 @@ pub enum Limit {
     ContactReturn,
     /// The head of the expansion, reflected from the driver's end wall: a longer driver gives more time.
     ExpansionHead,
-    /// The tail of the expansion, met by the shock that a tailored contact surface lets through: a longer driver gives no more time.
+    /// The tail of the expansion, met by the shock that a tailored contact surface lets through: a longer driver gives no more uniform time. The
+    /// pressure rises slowly from then on (by 1 % where a test ran it); the fall that the head brings comes later.
     FanTail,
     /// There is no such time: the head overtakes the incident shock before that reaches the end wall.
     IncidentOvertaken,

@@ -153,16 +153,16 @@ impl WaveDiagram {
             if overtaken { None } else { line(WaveName::ReflectedShock, wall, shock_meets) },
             returned,
             through.and_then(|after| line(WaveName::TransmittedShock, meeting, after.change)),
-            through.and_then(|after| line(WaveName::ExpansionToContact, after.change, after.at_contact)),
+            through.and_then(|after| line(WaveName::DisturbanceToContact, after.change, after.at_contact)),
             if overtaken || !(head_first || through.is_some()) {
                 None
             } else {
-                line(WaveName::ExpansionToEndWall, last, arrival(last, a5))
+                line(WaveName::DisturbanceToEndWall, last, arrival(last, a5))
             },
         ]
     }
 
-    /// What follows a tailored contact surface: the transmitted shock meets the reflected head or the fan's tail, and a wave comes back.
+    /// What follows a tailored contact surface: the transmitted shock meets the reflected head or the fan's tail, and a weak wave comes back.
     fn after_tailored_contact(&self, meeting: Event<Ball>, leaves: Event<Ball>) -> Option<AfterContact> {
         let ContactReturn::Tailored { transmitted_shock, sound_speed } = self.tube.contact else { return None };
         let by_tail = self.tube.tail_delay(transmitted_shock);
@@ -179,7 +179,7 @@ impl WaveDiagram {
 struct AfterContact {
     /// The transmitted shock meets the expansion.
     change: Event<Ball>,
-    /// The expansion comes back to the contact surface.
+    /// What that sends back comes to the contact surface.
     at_contact: Event<Ball>,
 }
 
@@ -297,8 +297,8 @@ mod tests {
                     WaveName::ReflectedShock => -400.0,
                     WaveName::ReturnedWave => returned,
                     WaveName::TransmittedShock => -600.0,
-                    WaveName::ExpansionToContact => 1200.0,
-                    WaveName::ExpansionToEndWall => A5,
+                    WaveName::DisturbanceToContact => 1200.0,
+                    WaveName::DisturbanceToEndWall => A5,
                 };
                 let found = (wave.to.position - wave.from.position) / (wave.to.time - wave.from.time);
                 let margin = Enclosure::new(-1e-9, 1e-9).unwrap();

@@ -348,24 +348,12 @@ impl<'a> ThermalShock<'a> {
 
     /// State 2, behind the incident shock.
     pub fn state_2(&self) -> State {
-        State {
-            pressure: self.output(Output::Pressure2),
-            temperature: self.output(Output::Temperature2),
-            density: self.output(Output::Density2),
-            sound_speed: self.output(Output::SoundSpeed2),
-            gas_speed: self.output(Output::GasSpeed2),
-        }
+        State::behind_incident_shock(|output| self.output(output))
     }
 
     /// State 5, behind the reflected shock; the gas moves with the wall.
     pub fn state_5(&self) -> State {
-        State {
-            pressure: self.output(Output::Pressure5),
-            temperature: self.output(Output::Temperature5),
-            density: self.output(Output::Density5),
-            sound_speed: self.output(Output::SoundSpeed5),
-            gas_speed: self.wall_speed(),
-        }
+        State::behind_reflected_shock(|output| self.output(output), self.wall_speed())
     }
 }
 
