@@ -43,7 +43,8 @@ pub enum WaveName {
     ReturnedWave,
     /// The shock that a tailored contact surface lets through.
     TransmittedShock,
-    /// From where the transmitted shock met the head or the tail back to the contact surface: an expansion by the head, a weak compression by the tail.
+    /// From where the transmitted shock met the head or the tail back to the contact surface: an expansion by the head, a weak compression by
+    /// the tail.
     DisturbanceToContact,
     /// The last part of that way, or of the head's, behind the reflected shock to the end wall.
     DisturbanceToEndWall,

@@ -6,7 +6,6 @@ use super::proven_root::{Side, increasing};
 use super::test_gas::{BehindShock, TestGas};
 use crate::gas::{Gas, InputError, Parameter, Rule};
 use crate::number::{Elementary, Enclosure, Known};
-use crate::shock::Entry;
 use core::cell::Cell;
 
 /// M − 1 from which the search begins.
@@ -18,7 +17,7 @@ impl Driver {
     /// The root of ln(p4(M)/p1) = ln(p4/p1), with p4(M) of [`Driver::for_shock`]. It is the only one: p2 and u2 rise with M (in a thermally perfect gas by
     /// the criterion of its species), and p4 with both. The enclosure lies between doubles at which the sign is proven: at most 2 ulp for exact inputs.
     /// For a tolerance of p4 it is the hull over it; tolerances of the fill and of the driver are refused. Then `Incident::new` with
-    /// [`Entry::MachExcess`] gives the states, for the enclosure or for a double in it.
+    /// [`Entry::MachExcess`](crate::shock::Entry::MachExcess) gives the states, for the enclosure or for a double in it.
     ///
     /// # Errors
     /// [`DriverError::Driver`] for a driver pressure that is not above that of the fill; [`DriverError::Gas`] where the shock takes a thermally perfect gas
@@ -92,7 +91,7 @@ pub(super) fn mach_excess_where<'a>(
 ) -> Result<Enclosure, DriverError> {
     // Where the data of the test gas end nothing is known; if the search stops there, the error says so.
     let end_of_data = Cell::new(None);
-    let over = |excess: f64| match gas.behind(Entry::MachExcess, excess) {
+    let over = |excess: f64| match gas.behind_mach_excess(excess) {
         Ok(behind) => quantity(&behind),
         Err(DriverError::Gas(error)) if matches!(error.rule, Rule::HeatsBeyondData(..)) => {
             end_of_data.set(Some(error));

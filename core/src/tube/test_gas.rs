@@ -3,7 +3,7 @@
 use super::driver_error::DriverError;
 use crate::gas::{Fill, Gamma};
 use crate::number::{Ball, Enclosure, Known, Semifield};
-use crate::shock::{Entry, Incident, Output, ThermalFill, ThermalShock};
+use crate::shock::{Entry, Flow, Incident, Jump, Output, ThermalFill, ThermalShock};
 
 /// A fill of the driven tube.
 #[derive(Clone, Copy, Debug)]
@@ -51,6 +51,16 @@ impl<'a> TestGas<'a> {
                 BehindShock::of_thermal(self, &shock)
             }
         })
+    }
+
+    /// The same for M − 1 in a search: the direct relations in balls, without the integers by which [`Incident`] decides last bits.
+    pub(super) fn behind_mach_excess(self, excess: f64) -> Result<BehindShock<'a>, DriverError> {
+        let Self::Constant(fill) = self else { return self.behind(Entry::MachExcess, excess) };
+        let gas = fill.gas();
+        let gamma = Gamma::from_excess(gas.heat_capacity_ratio().excess().ball());
+        let jump = Jump::from_mach_excess(gamma, Ball::from(excess));
+        let flow = Flow::new(jump, gamma, fill.pressure().ball(), fill.temperature().ball(), gas.molar_mass().ball());
+        Ok(BehindShock::new(self, |output| flow.evaluate(output)))
     }
 }
 

@@ -130,11 +130,17 @@ impl Tube {
             ContactReturn::Tailored { transmitted_shock, sound_speed: behind } => {
                 let to_contact = self.station_duration(self.contact_distance(), sound_speed, from_end_wall);
                 let late = |delay: Ball| to_contact + delay + transmitted_shock * delay / behind;
-                let by_head = late(self.head_in_driver_gas_delay(transmitted_shock));
-                let by_tail = late(self.tail_delay(transmitted_shock));
-                let through = earlier((Limit::ExpansionHead, by_head), (Limit::FanTail, by_tail));
-                // A head that is first at the contact surface meets the reflected shock there or nearer to the end wall.
-                if (to_contact - by_head).is_certainly_negative() { through } else { earlier(head, through) }
+                let behind_reflected_shock = self.head_in_driver_gas_delay(transmitted_shock);
+                let by_tail = (Limit::FanTail, late(self.tail_delay(transmitted_shock)));
+                let through = earlier((Limit::ExpansionHead, late(behind_reflected_shock)), by_tail);
+                // The head comes to the contact surface before or after the reflected shock; at once with it, both ways are the same.
+                if behind_reflected_shock.is_certainly_positive() {
+                    through
+                } else if behind_reflected_shock.is_certainly_negative() {
+                    head
+                } else {
+                    (Limit::ExpansionHead, Ball::around(head.1.enclosure().hull(through.1.enclosure())))
+                }
             }
         }
     }

@@ -102,8 +102,9 @@ impl LennardJones {
     /// > μ = (5/16)·√(π m k T)/(π σ² Ω(2,2)*(kT/ε)), m = W/`N_A`.
     ///
     /// Against reference correlations the listed parameters are within 3 % at 300 K and 7 % from 250 K to 1000 K (the older data to which they were
-    /// fitted are low at high temperatures), water within 11 % (its molecules are polar, which this potential ignores). Plain f64. Source: S. Chapman and T. G. Cowling, The Mathematical Theory of Non-uniform
-    /// Gases.
+    /// fitted are low at high temperatures), water within 11 % (its molecules are polar, which this potential ignores). Plain f64.
+    ///
+    /// Source: S. Chapman and T. G. Cowling, The Mathematical Theory of Non-uniform Gases (from memory).
     ///
     /// # Errors
     /// [`ViscosityError::Temperature`] unless T* lies between 0.3 and 100 (for helium up to 1022 K).
@@ -197,6 +198,17 @@ mod tests {
         // A component of no amount changes nothing, whatever it is.
         let with_none = mixture_viscosity(&[part(&table::N2, 1.0), part(&table::C2H4, 0.0)], 400.0).unwrap();
         assert_eq!(with_none, mixture_viscosity(&[part(&table::N2, 1.0)], 400.0).unwrap());
+    }
+
+    /// By algebra Wilke's factors satisfy φij/φji = (μi/μj)(Wj/Wi).
+    #[test]
+    fn factors_of_a_pair_belong_together() {
+        for (one, other) in [((2.0e-5, 0.004), (2.3e-5, 0.040)), ((0.9e-5, 0.002), (1.8e-5, 0.028))] {
+            let expected = one.0 / other.0 * other.1 / one.1;
+            assert!((wilke(one, other) / wilke(other, one) / expected - 1.0).abs() < 1e-14);
+        }
+        // For equal molar masses and viscosities in the ratio 1 to 4: (1 + 1/2)²/4.
+        assert!((wilke((1.0, 1.0), (4.0, 1.0)) - 0.5625).abs() < 1e-15);
     }
 
     #[test]

@@ -201,7 +201,7 @@ impl<S: Elementary> Tube<S> {
         self.driver_for_fan_exit(self.speeds.overtaking_speed() * self.wall_time() / self.speeds.sound_speed_2.doubled())
     }
 
-    /// The shortest driver whose length does not limit the time at a station, m; in closed form.
+    /// The shortest driver whose length does not limit the uniform time at a station, m; in closed form.
     ///
     /// Where the contact surface returns a wave of speed c: (d − y)(1/`U_R` + 1/a5) = (`d_m` − y)(1/`U_R` + 1/c) gives the distance d at which the
     /// head may meet the reflected shock, and 2a2·`t_f` = (u2 + a2 + `U_R`)d/`U_R` + (u2 + a2 − `U_S`)`t_w`. Where it is tailored: the head leaves the
