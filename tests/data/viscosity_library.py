@@ -39,7 +39,7 @@ def main() -> None:
     with open("tests/data/viscosity_library.csv", "w") as out:
         out.write("# title: Viscosity of dilute gases (Pa s) and the collision integral (2,2)* of the Lennard-Jones potential, from general-purpose property libraries\n")
         out.write(f"# source: `correlation`: reference correlations in CoolProp {CoolProp.__version__} at 0.001 mol/m3; `atlas`: fits of the VDI Heat Atlas in chemicals {chemicals.__version__}; `fit of 2014`: S. U. Kim, C. W. Monroe, J. Comput. Phys. 273 (2014) 358, in the same, with the reduced temperature in the column of temperatures; made by viscosity_library.py\n")
-        out.write("# digits: six\n")
+        out.write("# digits: six significant\n")
         out.write("# status: [CALC] with the libraries; the data inside them were not re-read\n")
         out.write("# licence: facts and numbers; both libraries are under the MIT licence\n")
         out.write("# tolerance: see VISCOSITY in tolerances.rs: parameters of a two-parameter potential, fitted to older data\n")
