@@ -1,4 +1,4 @@
-//! Constants of the series for logarithm and exponential, as pairs of doubles good to 2⁻¹⁰⁶ of their value. A test derives each of them again from
+//! Constants of the series for logarithm and exponential, as pairs of doubles good to 2⁻¹⁰⁶ of their value; a tail of zero says that the head is exact. A test derives each of them again from
 //! whole numbers.
 
 /// head + tail from the bits of both.

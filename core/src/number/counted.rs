@@ -47,7 +47,7 @@ const WIDEST: i32 = 950;
 /// let enclosure = third.enclosure();
 /// assert!(enclosure.low() < enclosure.high());
 /// assert_eq!(enclosure.low().next_up(), enclosure.high());
-/// assert!(third.error_count() <= 4);
+/// assert!(third.error_count() <= 10); // in units of 2⁻¹⁰⁶ of the value
 /// ```
 #[derive(Clone, Copy, Debug)]
 pub struct Counted {

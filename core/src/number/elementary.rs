@@ -15,10 +15,10 @@ const SMALL: f64 = power_of_two(-110);
 /// The exponential's argument is halved this often before its series; each halving costs one squaring and one bit.
 const HALVINGS: i32 = 6;
 
-/// A constant of the table, good to 2⁻¹⁰⁶ of its value.
+/// A constant of the table, good to 2⁻¹⁰⁶ of its value; exact where nothing is left for the tail.
 #[inline(always)]
 fn constant((head, tail): (f64, f64)) -> Ball {
-    Ball::pair(head, tail, head.abs() * power_of_two(-106))
+    Ball::pair(head, tail, if tail == 0.0 { 0.0 } else { head.abs() * power_of_two(-106) })
 }
 
 /// eʳ for |r| ≤ 0.36: (Taylor series at r/2⁶)^(2⁶).
