@@ -148,6 +148,14 @@ fn composition(shock: &ThermalShock<'_>, states: &States, flags: &mut Vec<Flag>)
         );
         flags.push(Flag::new("real-gas-fill", text));
     }
+    let (coldest, hottest) = gas.range();
+    if temperature > hottest || states.reflected.temperature.value < coldest {
+        let text = format!(
+            "{kelvin} K lies outside the data of this gas, {coldest} K to {hottest} K: \"{}\" does not need them, but nothing is known of the gas there",
+            shock.fill().model().name()
+        );
+        flags.push(Flag::new("beyond-data", text));
+    }
     for (name, limit) in DISSOCIATION {
         if temperature > limit && share(gas, name) >= MATTERS {
             let text = format!(

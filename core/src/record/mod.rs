@@ -3,6 +3,21 @@
 //! A record is JSON that a person types; a [`Shot`] is what it says, with every typed number exact and in SI units.
 //! [`Shot::read`] never guesses: whatever is unknown, missing, impossible or doubtful is a [`RecordError`] with the full
 //! path, the text as typed and the remedy.
+//!
+//! # Shots, `shot/1`
+//!
+//! Needed: `record`, `gas`, `fill` (`pressure`, `temperature`), and `stations` or `shock_speed`. Optional: `name`, `heat_capacity` (`constant`,
+//! `equilibrium`, `frozen`, `frozen then equilibrium`), `species` (polynomials of your own), `attenuation`, `clock`, `survey`, `ambient`, `humidity`, `leak`
+//! (a fraction, or `rate` and `waiting`), `wall` (`speed` or `impedance`), `measured` (`pressure_2`, `pressure_5`, `rise`, `pressure_change`), `tube`,
+//! `driver`, `confirm`, and for the audit `date`, `operator`, `instruments`, `notes`. See [`Shot::read`], [`Shot::reduce`] and [`Report`].
+//!
+//! # Plans, `plan/1`
+//!
+//! Needed: `record`, `gas`, `temperature` (of the fill) and `target`: `temperature` with `pressure`, or `step` with `fill_pressure`, or
+//! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`), `tube` (`driven_length`,
+//! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
+//! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory
+//! sets), `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
 
 mod alternatives;
 mod check;
