@@ -10,7 +10,7 @@ use super::flag::Flag;
 use super::gas::{self, GasRecord};
 use super::hazard;
 use super::optional::{self, Driver, Tube};
-use super::quantity::{Absolute, Quantity};
+use super::quantity::{Absolute, Mark, Quantity};
 use super::read::{self, Entry, Fields, Reading};
 use super::shot::{self, Shot};
 use super::species::{self, OwnSpecies};
@@ -192,6 +192,10 @@ fn target(fields: Fields, ambient: Option<&Quantity>, reading: &mut Reading) -> 
     let overpressure = inner.quantity(reading, "reflected_overpressure", Dimension::Pressure)?;
     let fill_pressure = optional::pressure(inner, "fill_pressure", ambient, reading)?;
     let positive = |path: &str, quantity: &Quantity| {
+        if quantity.mark() != Mark::Unmarked {
+            let wrong = "a difference of pressures is neither gauge nor absolute";
+            return Err(RecordError::new(ErrorKind::Value, path, quantity.typed(), wrong, "leave the mark out"));
+        }
         if quantity.value().is_positive() {
             return Ok(());
         }
@@ -233,6 +237,10 @@ fn efficiency(fields: Fields, reading: &mut Reading) -> Result<Option<Quantity>,
     let value = efficiency.value().to_f64();
     if !(0.3..=1.2).contains(&value) {
         let wrong = "measured over ideal Mach number of past shots: mostly 0.85 to 1";
+        return Err(RecordError::new(ErrorKind::Value, "efficiency", efficiency.typed(), wrong, "write it like \"0.93 ± 0.02\""));
+    }
+    if efficiency.standard_uncertainty().is_some_and(|standard| standard > value / 5.0) {
+        let wrong = "the standard uncertainty is more than a fifth of the efficiency";
         return Err(RecordError::new(ErrorKind::Value, "efficiency", efficiency.typed(), wrong, "write it like \"0.93 ± 0.02\""));
     }
     Ok(Some(efficiency))

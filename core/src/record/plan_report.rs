@@ -19,7 +19,7 @@ pub struct PlannedFill {
     pub p1: ReportQuantity,
     /// Driver pressure, Pa, absolute; `None` without a driver.
     pub p4: Option<ReportQuantity>,
-    /// Lower and upper end of the driver pressure for the scatter of the efficiency, Pa; `None` without a stated scatter.
+    /// Lower and upper end of the driver pressure for twice the standard uncertainty of the efficiency, Pa; `None` without a stated one.
     pub p4_band: Option<[f64; 2]>,
 }
 
@@ -43,6 +43,9 @@ pub struct PlannedWave {
     pub from: [f64; 2],
     /// Where and when it ends.
     pub to: [f64; 2],
+    /// Points on the way of a wave that is no straight line, for a drawing; not in the JSON object.
+    #[serde(skip)]
+    pub between: Vec<[f64; 2]>,
 }
 
 /// A pressure compared with a marked rating.

@@ -1,7 +1,7 @@
 //! The text form of a plan.
 
 use alloc::format;
-use alloc::string::String;
+use alloc::string::{String, ToString};
 
 use super::format::significant;
 use super::hazard::CAUTIONS;
@@ -17,13 +17,15 @@ pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
     let name = if plan.name.is_empty() { "without a name" } else { plan.name.as_str() };
     page.line(&format!("Plan {name}: what to set for a wanted state at the end wall"));
     limits(&mut page, report, units);
-    set(&mut page, report, units);
+    set(&mut page, report, plan, units);
+    expected(&mut page, report, units);
     page.heading("Flags");
-    for flag in &report.flags {
-        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
+    let mut others = report.flags.iter().filter(|flag| !FIRST.contains(&flag.code.as_str())).peekable();
+    if others.peek().is_none() {
+        page.line(if report.flags.is_empty() { "none" } else { "none but those above" });
     }
-    if report.flags.is_empty() {
-        page.line("none");
+    for flag in others {
+        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
     }
     states(&mut page, report, units);
     if !report.heat_capacity.beside.is_empty() {
@@ -49,9 +51,15 @@ fn units(plan: &Plan) -> DisplayUnits {
     })
 }
 
+/// Cautions that stand before every pressure.
+const FIRST: [&str; 2] = ["rating-exceeded", "can-burn"];
+
 /// Exceeded ratings come before every pressure that is to be set.
 fn limits(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     page.heading("Ratings");
+    for flag in report.flags.iter().filter(|flag| FIRST.contains(&flag.code.as_str())) {
+        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
+    }
     if report.limits.is_empty() {
         page.line("ratings not checked: the record gives none");
     } else {
@@ -63,25 +71,31 @@ fn limits(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
         page.table(&rows);
         page.paragraph("", "Pressures and ratings are absolute. A rating is a gauge value at room temperature as marked on the part; whether it holds for a sudden load is for the person who rated it to say.");
     }
-    for flag in report.flags.iter().filter(|flag| flag.code == "can-burn") {
-        page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
-    }
 }
 
-fn set(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
+fn set(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {
     page.heading("Set");
     let mut rows = alloc::vec![row(["Driven fill p1", &units.show(&report.fill.p1)])];
     if let Some(p4) = &report.fill.p4 {
-        rows.push(row(["Driver pressure p4", &units.show(p4)]));
+        rows.push(row(["Driver pressure p4", &units.pressure(p4.value)]));
+        if let Some(ambient) = &plan.ambient {
+            rows.push(row(["  on a gauge at the ambient pressure", &units.pressure(p4.value - ambient.value().to_f64())]));
+        }
     }
     if let Some([low, high]) = report.fill.p4_band {
-        rows.push(row(["  for the scatter of the efficiency", &format!("{} to {}", units.pressure(low), units.pressure(high))]));
+        let band = format!("{} to {}", units.pressure(low), units.pressure(high));
+        rows.push(row(["  for the uncertainty of the efficiency (k=2)", &band]));
     }
     page.table(&rows);
-    page.paragraph(
-        "",
-        "Pressures are absolute. Numbers are those of the ideal model; a laboratory's own efficiency and attenuation make them its own.",
-    );
+    let model = match (&report.fill.p4, &plan.efficiency) {
+        (Some(_), Some(_)) => "p1 follows from the shock relations; p4 is that of an ideal tube, raised for the efficiency of the record.",
+        (Some(_), None) => "p1 follows from the shock relations; p4 is that of an ideal tube.",
+        (None, _) => "p1 follows from the shock relations.",
+    };
+    page.paragraph("", &format!("Pressures are absolute unless a gauge is named. {model}"));
+}
+
+fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     page.heading("Wanted and expected");
     let mut rows = alloc::vec![
         row(["Temperature T5", &units.show(&report.states.reflected.temperature)]),
@@ -91,7 +105,7 @@ fn set(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
         row(["Mach number", &units.show(&report.incident.mach)]),
     ];
     if let Some(speed) = report.first_station_speed {
-        rows.push(row(["Shock speed at the first station", &format!("{} m/s", significant(speed, 5))]));
+        rows.push(row(["Shock speed at the first station", &format!("{} m/s", significant(speed, 4))]));
     }
     if let Some(time) = &report.test_time {
         rows.push(row([
@@ -104,14 +118,29 @@ fn set(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     }
     if let Some(load) = report.end_load {
         rows.push(row([
-            "Load on the end wall",
+            "Load on the end wall at the upper end of p5",
             &format!("{} kN at rest; suddenly applied it can act as twice that", significant(load / 1e3, 3)),
         ]));
     }
     if let Some(energy) = report.stored_energy {
-        rows.push(row(["Stored energy of the driver", &format!("{} kJ", significant(energy / 1e3, 3))]));
+        rows.push(row(["Stored energy of the driver at the upper end of p4", &format!("{} kJ", significant(energy / 1e3, 3))]));
     }
     page.table(&rows);
+    page.paragraph("", &uncertainty(report));
+}
+
+/// What stands behind ±, or why nothing does.
+fn uncertainty(report: &PlanReport) -> String {
+    let five = &report.states.reflected;
+    let factors = [&report.fill.p1, &five.temperature, &five.pressure, &report.incident.speed].map(|quantity| quantity.coverage_factor);
+    if factors.iter().all(Option::is_none) {
+        return "The record states no uncertainty and no tolerance, so none is given.".to_string();
+    }
+    let factor =
+        if factors.iter().flatten().all(|k| *k == 2.0) { "k=2" } else { "k for about 95 %; it differs and stands in the JSON object" };
+    format!(
+        "Behind ± stands, here and below, the expanded uncertainty ({factor}) that follows from those of fill and gas in the record and from its tolerances."
+    )
 }
 
 fn states(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
@@ -123,7 +152,6 @@ fn states(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
         rows.push(row([name, &one, &two, &five]));
     }
     page.table(&rows);
-    page.paragraph("", "Behind ± stands the expanded uncertainty (k=2) that follows from the uncertainty of the fill temperature and the tolerances of the record, if any.");
 }
 
 fn waves(page: &mut Page, report: &PlanReport) {

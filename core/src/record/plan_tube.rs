@@ -10,15 +10,19 @@ use super::gas::{Component, GasRecord};
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
 use super::plan_report::{LimitLine, PlannedTime, PlannedWave, computed};
+use super::quantity::Quantity;
 use super::report::ReportQuantity;
 use crate::gas::species::named;
 use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas};
 use crate::number::{Ball, Enclosure, Rational};
 use crate::shock::Entry;
 use crate::tube::{
-    BehindShock, Contact, ContactReturn, Drive, Driver, DriverError, Efficiency, Lengths, TestGas, Tube, WaveDiagram, end_load,
-    stored_energy,
+    BehindShock, Contact, ContactReturn, Drive, Driver, DriverError, Efficiency, Event, Lengths, TestGas, Tube, WaveDiagram, WaveName,
+    end_load, stored_energy,
 };
+
+/// Pieces of the one curve of a diagram: more are not seen in a drawing.
+const CURVE: u32 = 24;
 
 /// What is found.
 #[derive(Default)]
@@ -96,9 +100,10 @@ impl Plan {
             part.flags.push(Flag::new("ideal-driver", text));
             return Ok(());
         };
-        let efficiency = Efficiency::new(stated.value().to_f64(), stated.standard_uncertainty().unwrap_or(0.0));
+        // Both ends at twice the standard uncertainty, like those of p5.
+        let efficiency = Efficiency::new(stated.value().to_f64(), 2.0 * stated.standard_uncertainty().unwrap_or(0.0));
         let efficiency = efficiency.map_err(|error| no_driver(&error))?;
-        let band = driver.pressure_for_mach(gas, behind.mach().nearest(), efficiency).map_err(|error| no_driver(&error))?;
+        let band = driver.pressure_for_mach(gas, behind.mach().nearest(), efficiency).map_err(|error| at_efficiency(stated, &error))?;
         part.p4 = Some(computed(band.pressure, "Pa", None));
         part.p4_band = (band.high > band.low).then_some([band.low, band.high]);
         Ok(())
@@ -134,8 +139,12 @@ impl Plan {
         let text = "ideal tube: the diaphragm opens at once, without boundary layers; both shorten the uniform time. A disturbance counts from its first wave";
         part.flags.push(Flag::new("ideal-waves", text));
         for wave in diagram.waves().into_iter().flatten() {
-            let at = |event: crate::tube::Event| [event.position.middle(), event.time.middle()];
-            part.waves.push(PlannedWave { name: wave.name.name().to_string(), from: at(wave.from), to: at(wave.to) });
+            let at = |event: Event| [event.position.middle(), event.time.middle()];
+            let (from, to) = (at(wave.from), at(wave.to));
+            let curved = if wave.name == WaveName::HeadInFan { CURVE } else { 1 };
+            let between = (1..curved).map(|point| at(diagram.fan_point(f64::from(point) / f64::from(CURVE))));
+            let between = between.filter(|point| point[1] < to[1]).collect();
+            part.waves.push(PlannedWave { name: wave.name.name().to_string(), from, to, between });
         }
         Ok(())
     }
@@ -162,7 +171,8 @@ impl Plan {
             };
             if rating.part == "driver" {
                 if let Some(p4) = loads.driver {
-                    line("p4, also where the diaphragm does not burst", p4);
+                    let of = if self.efficiency.is_some() { "p4" } else { "p4 of an ideal tube" };
+                    line(&format!("{of}, also where the diaphragm does not burst"), p4);
                 }
                 continue;
             }
@@ -176,6 +186,17 @@ impl Plan {
             part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
         }
     }
+}
+
+/// The refusal of the faster ideal shock that a driver must be laid out for.
+fn at_efficiency(efficiency: &Quantity, error: &DriverError) -> RecordError {
+    let mut refusal = no_driver(error);
+    refusal.wrong =
+        format!("with the efficiency of {} the driver is laid out for a faster ideal shock: {}", efficiency.typed(), refusal.wrong);
+    if matches!(error, DriverError::Shock(_) | DriverError::Gas(_)) {
+        refusal.remedy = "take a weaker shock, or leave the efficiency out for the driver pressure of an ideal tube".to_string();
+    }
+    refusal
 }
 
 /// The refusal of a driver, with the options.

@@ -69,9 +69,10 @@ impl DisplayUnits {
         Self { pressure: displayed(typed) }
     }
 
-    /// A pressure without uncertainty, Pa.
+    /// A pressure without uncertainty (Pa), to four figures: nobody sets or compares more.
     pub(super) fn pressure(self, value: f64) -> String {
-        value_with_uncertainty(value, None, self.pressure)
+        let symbol = self.pressure.map_or("Pa", Unit::symbol);
+        format!("{} {symbol}", significant(self.pressure.map_or(value, |unit| value / unit.ratio().to_f64()), 4))
     }
 
     /// value ± U in display units.

@@ -8,6 +8,7 @@ use crate::failure::Failure;
 
 /// The gas by its species.
 #[derive(Args)]
+#[group(skip)]
 pub struct Arguments {
     /// Gas by its species and mole fractions, like "CH4 0.5 %, O2 1 %, Ar balance", or by one name, like N2, argon or air; may be repeated,
     /// one part each time. `endwall gases` lists the species

@@ -14,6 +14,7 @@ mod progress;
 mod reduce;
 mod states;
 mod table;
+mod waves;
 
 use std::io::{Write, stderr};
 use std::process::ExitCode;
@@ -42,6 +43,7 @@ struct Arguments {
 enum Task {
     Reduce(reduce::Arguments),
     Plan(plan::Arguments),
+    Waves(waves::Arguments),
     States(states::Arguments),
     Table(table::Arguments),
     Gases(gases::Arguments),
@@ -51,6 +53,7 @@ fn main() -> ExitCode {
     let done = match Arguments::parse().task {
         Task::Reduce(arguments) => reduce::run(&arguments),
         Task::Plan(arguments) => plan::run(&arguments),
+        Task::Waves(arguments) => waves::run(&arguments),
         Task::States(arguments) => states::run(&arguments),
         Task::Table(arguments) => table::run(&arguments),
         Task::Gases(arguments) => gases::run(&arguments),
