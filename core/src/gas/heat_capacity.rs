@@ -202,6 +202,16 @@ impl<S: Elementary> HeatCapacity<S> {
 }
 
 impl<const N: usize> HeatCapacity<Dual<Enclosure, N>> {
+    /// The sum of the sizes of the jumps of `c_p`/R between two ranges.
+    pub(crate) fn kinks_between(&self, from: usize, to: usize) -> Enclosure {
+        let (first, last) = (from.min(to), from.max(to));
+        (first..last).fold(Enclosure::whole(0), |sum, index| {
+            let joint = Dual::constant(Enclosure::from(self.at(index).high));
+            let jump = (self.value(index + 1, joint) - self.value(index, joint)).value();
+            sum + jump.hull(-jump)
+        })
+    }
+
     /// The sum of the jumps of h/R between two ranges, K.
     pub(crate) fn jumps_between(&self, from: usize, to: usize) -> Enclosure {
         let (first, last) = (from.min(to), from.max(to));

@@ -233,7 +233,7 @@ impl<'a> Species<'a> {
     /// `c_p`/R with vibration frozen at a temperature of the fill.
     fn frozen(&self, fill_temperature: Ball) -> (Ball, Option<&'a SpeciesRange>) {
         let rigid = Ball::whole(self.shape.twice_frozen_heat_capacity()).halved();
-        let range = self.range_at(fill_temperature.nearest());
+        let range = self.range_at(fill_temperature.side());
         let full = range.map_or(Ball::UNKNOWN, |range| range.polynomial(Ball::whole(0)).value(0, fill_temperature));
         if (rigid - full).is_certainly_positive() { (full, range) } else { (rigid, None) }
     }

@@ -97,6 +97,12 @@ impl Ball {
         if head.is_finite() && tail.is_finite() && radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
     }
 
+    /// A double that lies on the same side of every double as the number, as far as the ball tells: the nearest one, or the next one above if the number
+    /// is certainly greater.
+    pub(crate) fn side(self) -> f64 {
+        if (self - Self::from(self.head)).is_certainly_positive() { self.head.next_up() } else { self.head }
+    }
+
     /// head + tail with a radius.
     #[inline(always)]
     pub(super) fn pair(head: f64, tail: f64, radius: f64) -> Self {

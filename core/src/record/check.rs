@@ -25,8 +25,8 @@ const MONATOMIC: f64 = 1.6;
 const DISSOCIATION: [(&str, f64); 3] = [("O2", 2500.0), ("CO2", 2500.0), ("N2", 4500.0)];
 /// Noble gases ionise above about this temperature, K (common practice, no source).
 const IONISATION: f64 = 8000.0;
-/// A departure of the fill from an ideal gas that is worth a flag (common practice, no source).
-const DEPARTURE: f64 = 0.005;
+/// A departure of fill or driver from an ideal gas that is worth a flag (common practice, no source).
+pub(super) const DEPARTURE: f64 = 0.005;
 /// Above about this pressure the gas is no ideal gas, Pa (common practice, no source).
 const REAL_GAS: f64 = 50.0e5;
 

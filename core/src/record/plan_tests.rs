@@ -287,3 +287,13 @@ fn the_one_curve_of_the_waves_has_points_between_its_ends() {
         assert!(times.windows(2).all(|pair| pair[0] < pair[1]), "{wave:?}");
     }
 }
+
+#[test]
+fn a_dense_driver_is_flagged() {
+    let flagged = |file: &str| planned(file).flags.iter().any(|flag| flag.code == "real-gas-driver");
+    assert!(!flagged(DEMO));
+    // A tenth of carbon dioxide at tens of bar departs by more than half a per cent.
+    let dense = changed("{ \"He\": \"balance\" }", "{ \"He\": \"80 %\", \"CO2\": \"balance\" }");
+    let dense = dense.replacen("1650 K", "1000 K", 1).replacen("2.00 bar(a)", "30.0 bar(a)", 1);
+    assert!(flagged(&dense));
+}

@@ -4,8 +4,10 @@ use alloc::format;
 use alloc::string::ToString;
 use alloc::vec::Vec;
 
+use super::check::DEPARTURE;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
+use super::format::significant;
 use super::gas::{Component, GasRecord};
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
@@ -13,7 +15,7 @@ use super::plan_report::{LimitLine, PlannedTime, PlannedWave, computed};
 use super::quantity::Quantity;
 use super::report::ReportQuantity;
 use crate::gas::species::named;
-use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas};
+use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas, departure_from_ideal};
 use crate::number::{Ball, Enclosure, Rational};
 use crate::shock::Entry;
 use crate::tube::{
@@ -57,6 +59,7 @@ impl Plan {
             let driver = self.driver(record)?;
             let drive = driver.for_shock(&behind).map_err(|error| no_driver(&error))?;
             self.driver_pressure(&mut part, &driver, &drive, gas, &behind)?;
+            part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
             let contact = Contact::new(&behind, &drive);
             let met = contact.interaction();
             over_tailored = met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|pressure| *pressure > p5.0);
@@ -210,6 +213,39 @@ fn no_driver(error: &DriverError) -> RecordError {
     RecordError::new(ErrorKind::Value, "driver", "", format!("{error}"), remedy)
 }
 
+/// The species of a driver gas; none for one given by its heat capacity ratio.
+fn driver_portions(gas: &GasRecord) -> Result<Vec<Portion<'static>>, RecordError> {
+    let GasRecord::Mixture(components) = gas else { return Ok(Vec::new()) };
+    let portion = |component: &Component| {
+        let species = named(&component.species).ok_or_else(|| {
+            let wrong = format!("{} is not built in", component.species);
+            RecordError::new(
+                ErrorKind::Value,
+                "driver.gas",
+                "",
+                wrong,
+                "give species that are built in, or heat_capacity_ratio and molar_mass",
+            )
+        })?;
+        Ok(Portion { species, fraction: component.fraction })
+    };
+    components.iter().map(portion).collect()
+}
+
+/// The flag for a driver so dense that its gas is no ideal one.
+fn dense_driver(record: &DriverRecord, pressure: f64) -> Option<Flag> {
+    let portions = driver_portions(record.gas.as_ref()?).ok()?;
+    let gas = ThermallyPerfectGas::new(&portions).ok()?;
+    let departure = departure_from_ideal(&gas, record.temperature.as_ref()?.value().to_f64(), pressure);
+    (departure.abs() > DEPARTURE).then(|| {
+        let text = format!(
+            "the driver gas departs from an ideal gas by {} % at p4 (second virial coefficient, estimated): p4 is off by about that",
+            significant(departure * 100.0, 2)
+        );
+        Flag::new("real-gas-driver", text)
+    })
+}
+
 /// A driver gas of constant heat capacity: as typed, the exact one of atoms, or that of the species at the temperature of the driver.
 fn driver_gas(gas: &GasRecord, temperature: Rational) -> Result<Gas, RecordError> {
     let refused = |wrong: alloc::string::String| {
@@ -222,12 +258,7 @@ fn driver_gas(gas: &GasRecord, temperature: Rational) -> Result<Gas, RecordError
     if let Ok(constant) = gas.constant(HeatCapacityModel::Constant) {
         return built(constant.heat_capacity_ratio, constant.molar_mass);
     }
-    let GasRecord::Mixture(components) = gas else { return Err(refused("this is no gas".to_string())) };
-    let portion = |component: &Component| {
-        let species = named(&component.species).ok_or_else(|| refused(format!("{} is not built in", component.species)))?;
-        Ok(Portion { species, fraction: component.fraction })
-    };
-    let portions: Vec<Portion<'_>> = components.iter().map(portion).collect::<Result<_, RecordError>>()?;
+    let portions = driver_portions(gas)?;
     let mixture = ThermallyPerfectGas::new(&portions).map_err(|error| refused(format!("{error}")))?;
     let c = mixture.heat_capacity_at(temperature.to_f64()).map_err(|error| refused(format!("{error}")))?.middle();
     // γ to twelve digits: the driver is a model anyhow, and its γ must be an exact number.

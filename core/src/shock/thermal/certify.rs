@@ -98,7 +98,16 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             let near = (self.behind(first.compression).nearest() - joint).abs() < 1.0 && (first.to == index || first.to == index + 1);
             let other = if first.to == index { index + 1 } else { index };
             let also = if near && second.is_none() { self.newton(first.compression.nearest(), other) } else { None };
-            second = Some(also.ok_or(ThermalError::Uniqueness { temperature: joint })?);
+            let also = also.ok_or(ThermalError::Uniqueness { temperature: joint })?;
+            // For a given speed the jump may hide further roots, unless both lie on either side of it.
+            let over = |root: &Root| self.behind(root.compression) - Ball::from(joint);
+            let (one, other) = (over(&first), over(&also));
+            let apart = one.is_certainly_positive() && other.is_certainly_negative()
+                || one.is_certainly_negative() && other.is_certainly_positive();
+            if self.stage.least_slope().is_none() && !apart {
+                return Err(ThermalError::Uniqueness { temperature: joint });
+            }
+            second = Some(also);
         }
         Ok([Some(first), second])
     }
@@ -158,6 +167,14 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             }
             let before = (root - crossing).is_certainly_positive();
             let after = (crossing - root).is_certainly_positive();
+            // Behind the root the energy must fall on both sides of the joint, or it could rise to a second root.
+            let falls = [below, below + 1].iter().all(|index| {
+                let c = self.heat_capacity.value(*index, Ball::from(joint));
+                self.stage.falling(crossing, c).is_certainly_positive()
+            });
+            if after && !falls {
+                return Err(ThermalError::Uniqueness { temperature: joint });
+            }
             for rise in rises {
                 let value = self.stage.lacking(crossing, rise);
                 let at_start = crossing.magnitude() == 0.0 && value.magnitude() == 0.0;

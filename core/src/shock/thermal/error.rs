@@ -35,7 +35,10 @@ impl fmt::Display for ThermalError {
                 parameter.name()
             ),
             Self::Existence { temperature } => {
-                write!(f, "existence of the shock is not proven near {temperature} K: the shock is too weak for the digits of the inputs")
+                write!(
+                    f,
+                    "existence of the shock is not proven near {temperature} K: the shock is too weak for the digits of the inputs, or too near a joint of the data"
+                )
             }
             Self::Uniqueness { temperature } => write!(
                 f,

@@ -61,7 +61,7 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Res
         return Err(refuse(Rule::Above(least)));
     }
     let plain = setting.map(Ball::nearest);
-    let first = setting.incident.index_at(plain.temperature);
+    let first = setting.first();
     let (low, high) = setting.reflected.range();
     let mut e = search(&plain, first, output, target.nearest()).ok_or(refuse(Rule::HeatsBeyondData(low, high)))?;
     let mut reach = e.abs() * f64::from_bits((1023 - 44) << 52);

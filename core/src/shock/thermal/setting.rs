@@ -3,7 +3,7 @@
 use super::flow::{Ranges, ThermalFlow};
 use super::stage::GivenSpeed;
 use crate::gas::HeatCapacity;
-use crate::number::{Elementary, Semifield};
+use crate::number::{Ball, Elementary, Semifield};
 
 /// What a shock runs into, and the wall that it meets.
 #[derive(Clone, Copy, Debug)]
@@ -37,6 +37,13 @@ impl<S: Semifield> Setting<S> {
             reflected: self.reflected.map(convert),
             lagging: self.lagging,
         }
+    }
+}
+
+impl Setting<Ball> {
+    /// The range of T1 in the incident heat capacity.
+    pub(super) fn first(&self) -> usize {
+        self.incident.index_at(self.temperature.side())
     }
 }
 

@@ -38,6 +38,14 @@ impl<'a> ThermalFill<'a> {
         positive(Parameter::FillTemperature, temperature)?;
         gas.check_temperature(Parameter::FillTemperature, temperature.enclosure().low())?;
         gas.check_temperature(Parameter::FillTemperature, temperature.enclosure().high())?;
+        // The polynomial of T1 is chosen by its side of every joint.
+        let untold = |joint: f64| {
+            let over = temperature.ball() - Ball::from(joint);
+            !(over.is_certainly_positive() || over.is_certainly_negative() || over.magnitude() == 0.0)
+        };
+        if temperature.exact().is_some() && gas.heat_capacity().joints().any(untold) {
+            return Err(InputError { parameter: Parameter::FillTemperature, value: temperature.nominal(), rule: Rule::Digits });
+        }
         let balls = PlainFill {
             model,
             pressure: pressure.ball(),
@@ -81,7 +89,7 @@ impl<'a> ThermalFill<'a> {
 
     /// The fill in balls, with the heat capacities of the model.
     pub(super) fn setting(&self, wall_speed: Ball) -> Setting<Ball> {
-        self.balls.setting(self.balls.temperature.nearest(), wall_speed)
+        self.balls.setting(self.balls.temperature.side(), wall_speed)
     }
 }
 
@@ -164,7 +172,7 @@ impl<'a> ThermalShock<'a> {
 
     fn solved(fill: &ThermalFill<'a>, entry: Entry, value: Known, wall_speed: Ball) -> Result<Self, ThermalError> {
         let setting = fill.setting(wall_speed);
-        let first = setting.incident.index_at(setting.temperature.nearest());
+        let first = setting.first();
         let given = match entry {
             Entry::ShockSpeed => Some(setting.at_speed(value.ball())),
             Entry::MachExcess => Some(setting.at_mach_excess(first, value.ball())),
@@ -366,7 +374,7 @@ pub(super) fn solve(
     parameter: Parameter,
     value: f64,
 ) -> Result<(Flows, [u32; 2]), ThermalError> {
-    let first = setting.incident.index_at(setting.temperature.nearest());
+    let first = setting.first();
     let c = setting.incident.value(first, setting.temperature);
     // Supersonic: the residual at no compression, 2(c(m − 1) − m), is positive.
     let one = Ball::whole(1);
@@ -382,14 +390,13 @@ pub(super) fn solve(
     let plain = plain.ok_or(InputError { parameter, value, rule: Rule::HeatsBeyondData(low, high) })?;
     let mut flows = [None; FLOWS];
     let mut used = flows.iter_mut();
-    let problem =
-        Problem { stage: *incident, heat_capacity: &setting.incident, from: plain.ranges.first, temperature: setting.temperature };
+    let problem = Problem { stage: *incident, heat_capacity: &setting.incident, from: first, temperature: setting.temperature };
     let [compression, reflected_compression] = plain.compressions;
     for Root { compression, to, .. } in problem.roots(compression, plain.ranges.second)?.into_iter().flatten() {
         let behind = problem.behind(compression);
         // With one heat capacity for both shocks the range behind one is the range ahead of the other.
         let ahead = if setting.lagging.is_some() { setting.reflected.index_at(behind.nearest()) } else { to };
-        let ranges = Ranges { first: plain.ranges.first, second: to, ahead, fifth: plain.ranges.fifth };
+        let ranges = Ranges { first, second: to, ahead, fifth: plain.ranges.fifth };
         let (stage, ..) = reflected_stage(setting, incident, ranges, compression);
         let reflection = Problem { stage, heat_capacity: &setting.reflected, from: ahead, temperature: behind };
         for Root { compression: reflected, mean, to: fifth } in
@@ -497,6 +504,64 @@ mod tests {
                 }
             }
         }
+    }
+
+    /// Two constant heat capacities that meet at 1000 K in the same enthalpy, in units of 1e-5 R.
+    fn kinked(below: i64, above: i64) -> [crate::gas::species::SpeciesRange; 2] {
+        use crate::gas::species::{Coefficient, SpeciesRange};
+        let range = |low, high, c: i64, b1: i64| {
+            let mut heat_capacity = [Coefficient::new(0, 0); 7];
+            heat_capacity[2] = Coefficient::new(c, -5);
+            SpeciesRange { low, high, heat_capacity, enthalpy: Coefficient::new(b1, -2) }
+        };
+        [range(200.0, 1000.0, below, 0), range(1000.0, 6000.0, above, below - above)]
+    }
+
+    #[test]
+    fn a_decimal_just_above_a_joint_takes_the_upper_polynomial() {
+        let portions = pure(&table::CO2);
+        let gas = ThermallyPerfectGas::new(&portions).unwrap();
+        let temperature: Rational = "1000.0000000000000001".parse().unwrap();
+        let fill = ThermalFill::new(gas, HeatCapacityModel::Equilibrium, 10e3, temperature).unwrap();
+        let shock = ThermalShock::new(&fill, Entry::ShockSpeed, 2000.0).unwrap();
+        // Solved apart with 50 digits.
+        assert!(shock.output(Output::Temperature2).contains(2_469.087_856_991_615_3), "{:?}", shock.output(Output::Temperature2));
+        // So near that no ball tells the side.
+        let nearer: Rational = "1000.00000000000000000000000000000001".parse().unwrap();
+        assert!(ThermalFill::new(gas, HeatCapacityModel::Equilibrium, 10e3, nearer).is_err());
+    }
+
+    #[test]
+    fn a_box_holds_its_points_where_the_heat_capacity_jumps() {
+        let ranges = kinked(250_000, 250_025);
+        let species = Species { ranges: &ranges, ..table::AR };
+        assert_eq!(species.check(), Ok(()));
+        let portions = pure(&species);
+        let gas = ThermallyPerfectGas::new(&portions).unwrap();
+        let within = |low: f64, high: f64| Known::Within(Enclosure::new(low, high).unwrap());
+        let (mach, temperature) = (within(3.0, 3.000_001), within(299.0, 301.0));
+        let fill = ThermalFill::new(gas, HeatCapacityModel::Equilibrium, 10e3, temperature).unwrap();
+        let shock = ThermalShock::new(&fill, Entry::Mach, mach).unwrap();
+        for output in [Output::TemperatureRatio, Output::ReflectedPressureRatio, Output::MachBehind] {
+            for (value, at) in [(3.0, 299.0), (3.0, 301.0), (3.000_001, 299.0), (3.000_001, 301.0)] {
+                let point = ThermalFill::new(gas, HeatCapacityModel::Equilibrium, 10e3, at).unwrap();
+                let inside = ThermalShock::new(&point, Entry::Mach, value).unwrap().output(output);
+                assert!(shock.output(output).encloses(inside), "{output:?} {:?} {inside:?}", shock.output(output));
+            }
+        }
+    }
+
+    #[test]
+    fn several_shocks_behind_a_joint_are_not_taken_for_one() {
+        // c jumps so that a weak shock has three answers: T2 999.99983, 1000.0000222 and 1000.01126 K.
+        let ranges = kinked(350_000, 350_034);
+        let species = Species { ranges: &ranges, ..table::N2 };
+        assert_eq!(species.check(), Ok(()));
+        let portions = pure(&species);
+        let gas = ThermallyPerfectGas::new(&portions).unwrap();
+        let fill = ThermalFill::new(gas, HeatCapacityModel::Equilibrium, 10e3, 999.9985).unwrap();
+        let error = ThermalShock::new(&fill, Entry::MachExcess, 2e-6).unwrap_err();
+        assert!(matches!(error, ThermalError::Uniqueness { .. } | ThermalError::Existence { .. }), "{error}");
     }
 
     #[test]

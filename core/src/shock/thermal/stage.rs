@@ -26,6 +26,8 @@ pub(super) trait Stage<S> {
     fn lacking(&self, compression: S, rise: S) -> S;
     /// Negative where x never has this value.
     fn discriminant(&self, temperature_excess: S) -> S;
+    /// Positive where the energy falls as ε grows, given the heat capacity behind: γ > r for a given speed.
+    fn falling(&self, compression: S, heat_capacity: S) -> S;
     /// A lower bound of the slope of the energy that is too much, h/R, with the temperature behind, where it has one for every temperature.
     fn least_slope(&self) -> Option<f64>;
 }
@@ -79,6 +81,12 @@ impl<S: Signed> Stage<S> for GivenSpeed<S> {
     fn lacking(&self, e: S, rise: S) -> S {
         rise.doubled() + e * self.rest(e)
     }
+    /// c(1 + mε) − (c − 1)m(1 − ε).
+    #[inline(always)]
+    fn falling(&self, e: S, c: S) -> S {
+        let one = S::whole(1);
+        c * (one + self.m * e) - (c - one) * self.m * (one - e)
+    }
     fn least_slope(&self) -> Option<f64> {
         None
     }
@@ -123,6 +131,10 @@ impl<S: Signed> Stage<S> for GivenSpeedChange<S> {
     #[inline(always)]
     fn lacking(&self, e: S, rise: S) -> S {
         (e * rise).doubled() + self.rest(e)
+    }
+    /// It always does.
+    fn falling(&self, _: S, _: S) -> S {
+        S::whole(1)
     }
     /// c − κ/(1 + κ) with κ = k/ε², so more than c − 1, which the check of a species puts above 1/2.
     fn least_slope(&self) -> Option<f64> {

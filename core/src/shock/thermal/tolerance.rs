@@ -72,7 +72,9 @@ impl ThermalFill<'_> {
             let stage = GivenSpeedChange { k: part.tight(stage.k, centre_stage.k), lag: part.tight(stage.lag, centre_stage.lag) };
             let behind = part.tight(temperature + temperature * side.excess, centre_behind);
             let [low, high] = setting.reflected.ends(ranges.ahead);
-            if setting.lagging.is_some() && !(behind.value().low() > low && behind.value().high() <= high) {
+            if setting.lagging.is_some()
+                && !((behind.value().low() > low || ranges.ahead == 0 && behind.value().low() >= low) && behind.value().high() <= high)
+            {
                 return None;
             }
             let wall =
@@ -99,7 +101,7 @@ impl ThermalFill<'_> {
         let constant = |x: Ball| Variable::constant(x.enclosure());
         let frozen = self.gas().frozen_over(bounds);
         let slope = |own: Enclosure| frozen.1 * own;
-        (bounds.low() > low && bounds.high() <= high).then(|| PlainFill {
+        ((bounds.low() > low || index == 0 && bounds.low() >= low) && bounds.high() <= high).then(|| PlainFill {
             model: balls.model,
             pressure,
             temperature,
@@ -172,7 +174,7 @@ impl Part {
         let reached = |side: &Side| temperature.value() + temperature.value() * side.excess.value();
         let [low, high] = heat_capacity.ends(to);
         let behind = reached(&first);
-        let other = match (behind.low() > low || low == 0.0, behind.high() <= high) {
+        let other = match (behind.low() > low || to == 0 && behind.low() >= low, behind.high() <= high) {
             (true, true) => return Some([Some(first), None]),
             (false, true) => to.checked_sub(1)?,
             (true, false) => Some(to + 1).filter(|next| *next < heat_capacity.len())?,
@@ -264,7 +266,7 @@ impl Mean {
     ///
     /// > T ∂c̄/∂T = mean of T dc/dT, ∂c̄/∂x = mean of s/(1 + sx)·T dc/dT over s from 0 to 1,
     ///
-    /// to which the jumps at joints add −ΣJ/(T x)·(1, 1/x), and with the value at one point they bound the value. Narrow boxes get the polynomials' own
+    /// to which the jumps of h at joints Tj add −ΣJ/(T x)·(1, 1/x), those of c, Δc, add Σ`Δc·Tj`/(T x) and Σ`Δc·(Tj/T − 1)`/x², and with the value at one point they bound the value. Narrow boxes get the polynomials' own
     /// bounds, where these are better.
     fn over<const N: usize>(
         &self,
@@ -278,14 +280,27 @@ impl Mean {
         let one = Enclosure::whole(1);
         let steepness = steepness(heat_capacity, [from, to], t.hull(t + t * x));
         let jumps = heat_capacity.jumps_between(from, to) / (t * x);
+        let end = t + t * x;
+        let [_, top] = heat_capacity.ends(from.min(to));
+        let [bottom, _] = heat_capacity.ends(from.max(to));
+        let (least, greatest) = if from <= to { (t, end) } else { (end, t) };
+        if from != to && !(least.high() <= top && greatest.low() >= bottom) {
+            // Over an extended polynomial the way runs back, and the bounds below do not hold.
+            return own;
+        }
+        // The jumps of c itself, either way.
+        let kinks = heat_capacity.kinks_between(from, to);
+        let kinks = kinks.hull(-kinks);
         let (by_temperature, by_excess) = if from == to {
             (steepness / t, steepness * (one / (one + x)).hull(one) / Enclosure::whole(2))
         } else {
-            ((steepness - jumps) / t, steepness * (one / (one + x)).hull(one) / Enclosure::whole(2) - jumps / x)
+            (
+                (steepness - jumps + kinks + kinks / x) / t,
+                steepness * (one / (one + x)).hull(one) / Enclosure::whole(2) - jumps / x + kinks / x,
+            )
         };
         let value = self.value + by_temperature * (t - self.temperature) + by_excess * (x - self.excess);
-        let meet =
-            |a: Enclosure, b: Enclosure| a.intersection(b).filter(|both| both.is_proven()).unwrap_or(if b.is_proven() { b } else { a });
+        let meet = |a: Enclosure, b: Enclosure| a.intersection(b).filter(|both| both.is_proven()).unwrap_or(a);
         let mut slopes = own.slopes();
         for ((slope, t), x) in slopes.iter_mut().zip(temperature.slopes()).zip(excess.slopes()) {
             *slope = meet(*slope, by_temperature * t + by_excess * x);
