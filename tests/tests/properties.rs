@@ -2,28 +2,15 @@
 
 mod common;
 
-use common::cases;
+use common::property::check;
 use endwall::gas::{Fill, Gamma, Gas, HeatCapacityRatio, InputError, Parameter};
 use endwall::number::{Ball, Dual, Enclosure, Known, Rational, Semifield, Signed};
 use endwall::shock::{Entry, Flow, Incident, Jump, MovingShock, Output, Problem, Ratios, State};
 use endwall::shot::{FitSettings, Station, fit};
 use endwall_tests::tolerances::{CONSERVATION_ROUNDINGS, DIFFERENCE_QUOTIENT, SLOPE};
 use proptest::prelude::{Just, Strategy, any, prop_oneof};
-use proptest::test_runner::{Config, RngAlgorithm, TestCaseError, TestError, TestRng, TestRunner};
+use proptest::test_runner::TestCaseError;
 use proptest::{prop_assert, prop_assert_eq};
-
-/// Runs a property on `count` cases (a hundred times as many in a long run) from a fixed seed.
-fn check<S: Strategy>(seed: u8, count: u32, strategy: &S, property: impl Fn(S::Value) -> Result<(), TestCaseError>) {
-    println!("seed {seed}");
-    let count = cases(count as usize, 100 * count as usize) as u32;
-    let config = Config { cases: count, failure_persistence: None, max_shrink_iters: 2_000, ..Config::default() };
-    let mut runner = TestRunner::new_with_rng(config, TestRng::from_seed(RngAlgorithm::ChaCha, &[seed; 32]));
-    match runner.run(strategy, property) {
-        Ok(()) => {}
-        Err(TestError::Fail(reason, value)) => panic!("seed {seed}: {reason}\nsmallest case: {value:?}"),
-        Err(error) => panic!("seed {seed}: {error}"),
-    }
-}
 
 /// γ as an exact ratio of hundredths, of the trade, or a double.
 fn heat_capacity_ratio() -> impl Strategy<Value = Rational> {

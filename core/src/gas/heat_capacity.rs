@@ -114,6 +114,12 @@ impl<S: Semifield> HeatCapacity<S> {
         [self.at(index).low, self.at(index).high]
     }
 
+    /// Whether all of these temperatures are above the lower end of a range, and up to its upper one; a joint belongs to the range below it.
+    pub(crate) fn within_ends(&self, index: usize, temperatures: Enclosure) -> [bool; 2] {
+        let [low, high] = self.ends(index);
+        [temperatures.low() > low || index == 0 && temperatures.low() == low, temperatures.high() <= high]
+    }
+
     /// The temperatures at which a range begins where another ends, K.
     pub fn joints(&self) -> impl Iterator<Item = f64> + '_ {
         self.used().iter().skip(1).map(|range| range.low)
@@ -202,7 +208,7 @@ impl<S: Elementary> HeatCapacity<S> {
 }
 
 impl<const N: usize> HeatCapacity<Dual<Enclosure, N>> {
-    /// The sum of the sizes of the jumps of `c_p`/R between two ranges.
+    /// The sum of the sizes of the jumps of `c_p`/R between two ranges, either way.
     pub(crate) fn kinks_between(&self, from: usize, to: usize) -> Enclosure {
         let (first, last) = (from.min(to), from.max(to));
         (first..last).fold(Enclosure::whole(0), |sum, index| {

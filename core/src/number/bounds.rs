@@ -99,7 +99,7 @@ fn widest_input<const N: usize>(part: &Part<N>, result: &Dual<Enclosure, N>, dee
     let mut most = -1.0;
     let inputs = part.inputs.iter().zip(part.halvings).zip(result.slopes()).enumerate();
     for (at, ((input, halvings), slope)) in inputs.filter(|(_, ((input, halvings), _))| input.exact().is_none() && *halvings < deepest) {
-        let own = slope.low().abs().max(slope.high().abs()) * input.enclosure().width();
+        let own = slope.magnitude() * input.enclosure().width();
         // A slope that is not bounded says nothing: then the input that was halved least.
         let contribution = if own.is_finite() { own } else { f64::MAX / f64::from(1 + halvings) };
         if contribution > most {

@@ -175,6 +175,16 @@ impl Enclosure {
         self.low < other.high
     }
 
+    /// True if the other enclosure is proven and lies between the bounds of this one without touching them: what a step of interval Newton has to show.
+    pub(crate) fn encloses_strictly(self, other: Self) -> bool {
+        other.is_proven() && self.low < other.low && other.high < self.high
+    }
+
+    /// The largest |x| in it.
+    pub(crate) fn magnitude(self) -> f64 {
+        self.low.abs().max(self.high.abs())
+    }
+
     /// The smallest enclosure that contains both.
     pub fn hull(self, other: Self) -> Self {
         Self { low: self.low.min(other.low), high: self.high.max(other.high), quality: self.quality.max(other.quality) }

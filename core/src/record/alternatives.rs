@@ -29,7 +29,11 @@ pub(super) fn alternatives(shot: &Shot, reduction: &Reduction<'_>) -> HeatCapaci
             [(Output::Temperature2, "K"), (Output::Temperature5, "K"), (Output::Pressure5, "Pa")]
                 .map(|(output, unit)| Some(figure(&reduction.estimate(output), unit)))
         };
-        let [temperature_2, temperature, pressure] = shot.with_model(model, |other, _| outputs(other)).unwrap_or([const { None }; 3]);
+        let [temperature_2, temperature, pressure] = if model == shot.heat_capacity {
+            outputs(reduction)
+        } else {
+            shot.with_model(model, |other, _| outputs(other)).unwrap_or([const { None }; 3])
+        };
         Alternative { heat_capacity: model.name(), temperature_2, temperature, pressure }
     });
     let gas = shock.fill().gas();

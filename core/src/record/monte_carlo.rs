@@ -7,6 +7,7 @@ use alloc::vec;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::format::significant;
+use super::reduce::report;
 use super::report::Report;
 use super::shot::Shot;
 use super::text;
@@ -79,11 +80,13 @@ impl Shot {
             let wrong = format!("{most_trials} Monte Carlo trials are too few to see whether the result has settled");
             return refuse(wrong, format!("take {FEWEST_TRIALS} or more"));
         }
-        let mut report = self.reduce()?;
         let unit = text::pressure_unit(self);
-        report.flags.push(self.with_reduction(|reduction, _| check(reduction, seed, most_trials, unit, progress))?);
-        report.made_by.seed = Some(seed);
-        Ok(report)
+        self.with_reduction(|reduction, notes| {
+            let mut report = report(self, reduction, notes);
+            report.flags.push(check(reduction, seed, most_trials, unit, progress));
+            report.made_by.seed = Some(seed);
+            report
+        })
     }
 }
 

@@ -40,13 +40,13 @@ pub(super) struct TubePart {
 }
 
 /// Pressures that act on the tube, Pa, absolute, each with its name.
-struct Loads {
+struct Loads<'a> {
     /// p5, with its expanded uncertainty.
     reflected: f64,
     /// The end wall after a shock came back from the contact surface.
     over_tailored: Option<f64>,
-    /// The driver, at the upper end of its band.
-    driver: Option<f64>,
+    /// The driver, with p4 at the upper end of its band.
+    driver: Option<(&'a Driver, f64)>,
 }
 
 impl Plan {
@@ -55,18 +55,19 @@ impl Plan {
         let mut part = TubePart::default();
         let mut over_tailored = None;
         let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| no_driver(&error))?;
-        if let Some(record) = &self.driver {
-            let driver = self.driver(record)?;
+        let driver = self.driver.as_ref().map(|record| self.driver(record)).transpose()?;
+        if let (Some(record), Some(driver)) = (&self.driver, &driver) {
             let drive = driver.for_shock(&behind).map_err(|error| no_driver(&error))?;
-            self.driver_pressure(&mut part, &driver, &drive, gas, &behind)?;
+            self.driver_pressure(&mut part, driver, &drive, gas, &behind)?;
             part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
             let contact = Contact::new(&behind, &drive);
             let met = contact.interaction();
             over_tailored = met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|pressure| *pressure > p5.0);
-            self.diagram(&mut part, &driver, &behind, &contact)?;
+            self.diagram(&mut part, driver, &behind, &contact)?;
         }
         if let Some(tube) = &self.tube {
-            let driver = part.p4_band.map(|[_, high]| high).or(part.p4.as_ref().map(|p4| p4.value));
+            let p4 = part.p4_band.map(|[_, high]| high).or(part.p4.as_ref().map(|p4| p4.value));
+            let driver = driver.as_ref().zip(p4);
             self.loads(&mut part, tube, &Loads { reflected: p5.1, over_tailored, driver });
         }
         Ok(part)
@@ -152,19 +153,16 @@ impl Plan {
         Ok(())
     }
 
-    fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads) {
+    fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads<'_>) {
         let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map_or(101_325.0, |ambient| ambient.value.to_f64());
         if let Some(bore) = &tube.driven_bore {
             let worst = loads.over_tailored.map_or(loads.reflected, |pressure| pressure.max(loads.reflected));
             part.end_load = end_load(worst, ambient, bore.value()).ok().map(|load| load.steady.high());
         }
-        if let (Some(p4), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
+        if let (Some((driver, p4)), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
             let area = core::f64::consts::PI / 4.0 * bore.value().to_f64() * bore.value().to_f64();
-            let driver = self.driver.as_ref().and_then(|record| self.driver(record).ok());
-            part.stored_energy = driver.and_then(|driver| {
-                let energy = stored_energy(driver.gas().heat_capacity_ratio(), p4, ambient, area * length.value().to_f64()).ok()?;
-                Some(energy.brode.high())
-            });
+            let energy = stored_energy(driver.gas().heat_capacity_ratio(), p4, ambient, area * length.value().to_f64());
+            part.stored_energy = energy.ok().map(|energy| energy.brode.high());
         }
         for rating in &tube.ratings {
             let limit = rating.pressure.1.value.to_f64();
@@ -173,7 +171,7 @@ impl Plan {
                 part.limits.push(LimitLine { part: rating.part.to_string(), load: load.to_string(), pressure, rating: limit, exceeded });
             };
             if rating.part == "driver" {
-                if let Some(p4) = loads.driver {
+                if let Some((_, p4)) = loads.driver {
                     let of = if self.efficiency.is_some() { "p4" } else { "p4 of an ideal tube" };
                     line(&format!("{of}, also where the diaphragm does not burst"), p4);
                 }

@@ -5,12 +5,13 @@ use alloc::string::String;
 use super::error::{ErrorKind, RecordError};
 use super::plan::{Plan, Target};
 use super::plan_report::{PlanReport, PlannedFill, computed};
-use super::report::ReportQuantity;
+use super::reduce::report;
+use super::report::{Report, ReportQuantity};
 use super::shot::Shot;
 use crate::gas::{Fill, Gas, HeatCapacityRatio, ThermallyPerfectGas};
 use crate::number::{Enclosure, Known};
 use crate::shock::{Entry, Incident, Output, ThermalError, ThermalFill, ThermalShock};
-use crate::shot::{DrivenGas, Solved};
+use crate::shot::{DrivenGas, Reduction, Solved};
 use crate::tube::TestGas;
 
 /// The fill and the shock that reach a target.
@@ -120,7 +121,10 @@ impl Plan {
     /// As for [`Plan::solve`], and for a driver that cannot drive this shock.
     pub fn report(&self) -> Result<PlanReport, RecordError> {
         let planned = self.solve()?;
-        let report = planned.shot.reduce()?;
+        planned.shot.with_reduction(|reduction, notes| self.report_of(&planned, reduction, report(&planned.shot, reduction, notes)))?
+    }
+
+    fn report_of(&self, planned: &Planned, reduction: &Reduction<'_>, report: Report) -> Result<PlanReport, RecordError> {
         let p1 = ReportQuantity { proven: None, ..report.states.fill.pressure.clone() };
         let (nominal, enclosure) = planned.fill_pressure;
         let p1 = ReportQuantity { proven: computed(nominal, "Pa", Some(enclosure)).proven, ..p1 };
@@ -130,10 +134,11 @@ impl Plan {
             self.attenuation.as_ref().filter(|_| farthest > 0.0).map(|attenuation| speed * (1.0 + attenuation.value().to_f64() * farthest));
         let p5 = &report.states.reflected.pressure;
         let upper = (p5.value, p5.value + p5.expanded.unwrap_or(0.0));
-        let part = planned.shot.with_reduction(|reduction, _| match reduction.solved() {
-            Solved::Constant(incident, _) => self.tube_part(TestGas::from(incident.fill()), speed, upper),
-            Solved::Thermal(shock) => self.tube_part(TestGas::from(shock.fill()), speed, upper),
-        })??;
+        let gas = match reduction.solved() {
+            Solved::Constant(incident, _) => TestGas::from(incident.fill()),
+            Solved::Thermal(shock) => TestGas::from(shock.fill()),
+        };
+        let part = self.tube_part(gas, speed, upper)?;
         let mut flags = part.flags;
         flags.extend(report.flags.iter().cloned());
         flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube")));

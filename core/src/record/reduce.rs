@@ -113,7 +113,8 @@ fn measured(quantity: &Quantity) -> Measured {
     Measured { value: Known::from(quantity.value()), uncertainty }
 }
 
-fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
+/// The report of a shot from its reduction.
+pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
     let estimate = |output, unit| figure(&reduction.estimate(output), unit);
     let state = |pressure, temperature, outputs: [Output; 2], gas_speed| ReportState {
         pressure,

@@ -37,7 +37,7 @@ impl MovingShock {
     pub fn new(fill: &Fill, upstream_speed: impl Into<Known>, shock_speed: impl Into<Known>) -> Result<Self, InputError> {
         let (upstream_speed, shock_speed) = (upstream_speed.into(), shock_speed.into());
         let bounds = upstream_speed.enclosure();
-        if !bounds.is_proven() || bounds.low().abs().max(bounds.high().abs()) > Ball::LARGEST_ENTRY {
+        if !bounds.is_proven() || bounds.magnitude() > Ball::LARGEST_ENTRY {
             let rule = Rule::Between(-Ball::LARGEST_ENTRY, Ball::LARGEST_ENTRY);
             return Err(InputError { parameter: Parameter::UpstreamSpeed, value: upstream_speed.nominal(), rule });
         }

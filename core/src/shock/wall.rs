@@ -132,7 +132,7 @@ impl Incident {
     pub fn reflected_from_wall(&self, wall_speed: impl Into<Known>) -> Result<WallReflection, InputError> {
         let wall_speed = wall_speed.into();
         let velocity = wall_speed.enclosure();
-        if !velocity.is_proven() || velocity.low().abs().max(velocity.high().abs()) > Ball::LARGEST_ENTRY {
+        if !velocity.is_proven() || velocity.magnitude() > Ball::LARGEST_ENTRY {
             let rule = Rule::Between(-Ball::LARGEST_ENTRY, Ball::LARGEST_ENTRY);
             return Err(InputError { parameter: Parameter::WallSpeed, value: wall_speed.nominal(), rule });
         }

@@ -2,32 +2,13 @@ extern crate std;
 
 use super::*;
 use crate::gas::species::{Species, table};
-use crate::gas::{Fill, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas};
+use crate::gas::{Fill, HeatCapacityModel, Portion, ThermallyPerfectGas};
 use crate::shock::{Incident, ThermalFill};
 use crate::tube::Unproven;
+use crate::tube::pure_gases::{argon, gas, helium, hydrogen, nitrogen};
 
 fn exact(text: &str) -> Rational {
     text.parse().unwrap()
-}
-
-fn gas(n: u32, d: u32, molar_mass: &str) -> Gas {
-    Gas::new(HeatCapacityRatio::ratio(n, d).unwrap(), exact(molar_mass)).unwrap()
-}
-
-fn helium() -> Gas {
-    gas(5, 3, "0.004002602")
-}
-
-fn hydrogen() -> Gas {
-    gas(7, 5, "0.00201588")
-}
-
-fn nitrogen() -> Gas {
-    gas(7, 5, "0.0280134")
-}
-
-fn argon() -> Gas {
-    gas(5, 3, "0.039948")
 }
 
 fn fill(gas: Gas) -> Fill {

@@ -1,29 +1,10 @@
 use super::*;
 use crate::gas::species::table;
-use crate::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas};
+use crate::gas::{Fill, Gas, HeatCapacityModel, Portion, ThermallyPerfectGas};
 use crate::number::Rational;
 use crate::shock::{Entry, ThermalFill};
+use crate::tube::pure_gases::{argon, gas, helium, hydrogen, nitrogen};
 use crate::tube::{BehindShock, Driver, TestGas};
-
-fn gas(n: u32, d: u32, molar_mass: &str) -> Gas {
-    Gas::new(HeatCapacityRatio::ratio(n, d).unwrap(), molar_mass.parse::<Rational>().unwrap()).unwrap()
-}
-
-fn helium() -> Gas {
-    gas(5, 3, "0.004002602")
-}
-
-fn hydrogen() -> Gas {
-    gas(7, 5, "0.00201588")
-}
-
-fn nitrogen() -> Gas {
-    gas(7, 5, "0.0280134")
-}
-
-fn argon() -> Gas {
-    gas(5, 3, "0.039948")
-}
 
 fn contact<'a>(fill: &'a Fill, driver: &Driver, excess: f64) -> Contact<'a> {
     let behind: BehindShock<'a> = TestGas::from(fill).behind(Entry::MachExcess, excess).unwrap();

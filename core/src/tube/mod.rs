@@ -13,6 +13,8 @@ mod input;
 mod interaction;
 mod load;
 mod proven_root;
+#[cfg(test)]
+mod pure_gases;
 mod test_gas;
 mod test_time;
 mod viscosity;

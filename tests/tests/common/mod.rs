@@ -2,6 +2,7 @@
 
 #![allow(dead_code, reason = "each check uses its own part")]
 
+pub mod property;
 pub mod thermal;
 
 use endwall::gas::{Fill, Gas, HeatCapacityRatio};

@@ -3,7 +3,7 @@
 use super::ThermalError;
 use super::stage::{Stage, residual, residual_slope};
 use crate::gas::HeatCapacity;
-use crate::number::{Ball, Enclosure, Semifield};
+use crate::number::{Ball, Semifield};
 
 /// Newton steps with proof, at most.
 const STEPS: u32 = 9;
@@ -53,7 +53,7 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             };
             let slope = residual_slope(&self.stage, around, mean_over, (c - mean_over) / over);
             let found = at - value / slope;
-            if around.contains(found) && (found.radius() <= NARROW * e.abs() || step + 1 == STEPS) {
+            if around.enclosure().encloses_strictly(found.enclosure()) && (found.radius() <= NARROW * e.abs() || step + 1 == STEPS) {
                 let there = self.stage.temperature_excess(found);
                 let mean = mean + (c - mean) * (there - excess) / there;
                 return Some(Root { compression: found, mean, to });
@@ -168,11 +168,11 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             let before = (root - crossing).is_certainly_positive();
             let after = (crossing - root).is_certainly_positive();
             // Behind the root the energy must fall on both sides of the joint, or it could rise to a second root.
-            let falls = [below, below + 1].iter().all(|index| {
-                let c = self.heat_capacity.value(*index, Ball::from(joint));
+            let falls = |index| {
+                let c = self.heat_capacity.value(index, Ball::from(joint));
                 self.stage.falling(crossing, c).is_certainly_positive()
-            });
-            if after && !falls {
+            };
+            if after && !(falls(below) && falls(below + 1)) {
                 return Err(ThermalError::Uniqueness { temperature: joint });
             }
             for rise in rises {
@@ -184,13 +184,5 @@ impl<T: Stage<Ball>> Problem<'_, T> {
             }
         }
         Ok(true)
-    }
-}
-
-impl Ball {
-    /// True if the other ball lies inside this one.
-    fn contains(self, other: Self) -> bool {
-        let (own, theirs): (Enclosure, Enclosure) = (self.enclosure(), other.enclosure());
-        theirs.is_proven() && own.low() < theirs.low() && theirs.high() < own.high()
     }
 }

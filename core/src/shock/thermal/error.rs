@@ -1,8 +1,6 @@
 //! Why a shock into a thermally perfect gas has no proven answer.
 
-use crate::gas::{InputError, Parameter, Rule};
-use crate::number::Known;
-use crate::shock::Entry;
+use crate::gas::{InputError, Parameter};
 use core::fmt;
 
 /// Why there is no answer.
@@ -53,12 +51,5 @@ impl core::error::Error for ThermalError {}
 impl From<InputError> for ThermalError {
     fn from(error: InputError) -> Self {
         Self::Input(error)
-    }
-}
-
-impl ThermalError {
-    /// A corner of a box that is no fill.
-    pub(super) fn refused_box(entry: Entry, value: Known) -> Self {
-        Self::Input(InputError { parameter: entry.parameter(), value: value.nominal(), rule: Rule::Exact })
     }
 }

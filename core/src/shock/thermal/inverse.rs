@@ -5,11 +5,11 @@ use super::certify::Problem;
 use super::flow::reflected_stage;
 use super::plain::PlainShock;
 use super::setting::Setting;
-use super::shock::{Flows, solve};
+use super::shock::{Flows, hull, solve};
 use super::slopes::flow_with_slopes;
 use super::stage::GivenSpeed;
 use crate::gas::{InputError, Rule};
-use crate::number::{Ball, Dual, Enclosure, Semifield};
+use crate::number::{Ball, Dual, Semifield};
 use crate::shock::{Entry, Output};
 
 /// M − 1 is searched between these.
@@ -69,21 +69,19 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Res
         let at = Ball::from(e);
         let stage = setting.at_mach_excess(first, at);
         let (flows, steps) = solve(setting, &stage, parameter, value.nearest())?;
-        let hull = flows.iter().flatten().map(|flow| flow.evaluate(output).enclosure()).reduce(Enclosure::hull);
         let here = match flows {
             [Some(flow), None, ..] => flow.evaluate(output),
-            _ => Ball::around(hull.unwrap_or(Enclosure::UNKNOWN)),
+            _ => Ball::around(hull(&flows, |flow| flow.evaluate(output))),
         };
         let around = at.widened(reach);
         let slope = slope_over(setting, &plain, first, output, at, around);
         let found = slope.map(|slope| at - (here - target) / slope);
-        let (Some(found), bounds) = (found, around.enclosure()) else {
+        let Some(found) = found else {
             // Too wide an interval for the shocks to be solved over it.
             reach /= 16.0;
             continue;
         };
-        let inside = found.enclosure();
-        if inside.is_proven() && bounds.low() < inside.low() && inside.high() < bounds.high() {
+        if around.enclosure().encloses_strictly(found.enclosure()) {
             if found.radius() <= NARROW * e || flows.iter().flatten().count() > 1 {
                 let (flows, _) = solve(setting, &setting.at_mach_excess(first, found), parameter, value.nearest())?;
                 return Ok((flows, steps));

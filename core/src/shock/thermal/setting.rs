@@ -4,6 +4,7 @@ use super::flow::{Ranges, ThermalFlow};
 use super::stage::GivenSpeed;
 use crate::gas::HeatCapacity;
 use crate::number::{Ball, Elementary, Semifield};
+use crate::shock::Entry;
 
 /// What a shock runs into, and the wall that it meets.
 #[derive(Clone, Copy, Debug)]
@@ -66,6 +67,16 @@ impl<S: Elementary> Setting<S> {
         let c = self.incident.value(first, self.temperature);
         let square_excess = mach_excess * (S::whole(2) + mach_excess);
         GivenSpeed { m: c * (one + square_excess) / (c - one), m_excess: (c * square_excess + one) / (c - one) }
+    }
+
+    /// The stage of an incident shock for an entry that gives its speed or Mach number; `None` for one that makes it an inverse problem.
+    pub(super) fn given(&self, first: usize, entry: Entry, value: S) -> Option<GivenSpeed<S>> {
+        match entry {
+            Entry::ShockSpeed => Some(self.at_speed(value)),
+            Entry::MachExcess => Some(self.at_mach_excess(first, value)),
+            Entry::Mach => Some(self.at_mach_excess(first, value - S::whole(1))),
+            _ => None,
+        }
     }
 
     /// u2 − V.

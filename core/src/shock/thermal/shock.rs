@@ -78,8 +78,8 @@ impl<'a> ThermalFill<'a> {
     }
 
     /// The same gas at an exact pressure and temperature.
-    pub(super) fn at(&self, pressure: Known, temperature: Known) -> Option<Self> {
-        Self::new(self.gas, self.model, pressure, temperature).ok()
+    pub(super) fn at(&self, pressure: Known, temperature: Known) -> Result<Self, InputError> {
+        Self::new(self.gas, self.model, pressure, temperature)
     }
 
     /// The fill in balls.
@@ -110,9 +110,8 @@ const FLOWS: usize = 4;
 ///
 /// Each output is an enclosure of the model's exact answer, of at most two units in the last place for exact inputs. For tolerances of a shock speed or
 /// Mach number, p1 and T1 it is an enclosure of the range over the box, by slopes and subdivision (over-width at most 1 %, measured for tolerances up to
-/// ±5 %). Model: ideal gas with the heat
-/// capacity of the data, conservation of mass, momentum and energy. Existence and uniqueness of both shocks over all temperatures of the
-/// data are proven (see [`how_it_is_proven`](crate::how_it_is_proven)).
+/// ±5 %). Model: ideal gas with the heat capacity of the data, conservation of mass, momentum and energy. Existence and uniqueness of both shocks over
+/// all temperatures of the data are proven (see [`how_it_is_proven`](crate::how_it_is_proven)).
 ///
 /// ```
 /// use endwall::gas::species::table;
@@ -161,7 +160,7 @@ impl<'a> ThermalShock<'a> {
             exact(Parameter::FillTemperature, fill.temperature)?;
         }
         let corner = |upper: bool| {
-            let point = fill.at(fill.pressure.end(upper), fill.temperature.end(!upper)).ok_or(ThermalError::refused_box(entry, value))?;
+            let point = fill.at(fill.pressure.end(upper), fill.temperature.end(!upper))?;
             Self::solved(&point, entry, value.end(upper), Ball::whole(0))
         };
         // The weakest and the strongest shock of the box must exist and stay inside the data.
@@ -172,14 +171,7 @@ impl<'a> ThermalShock<'a> {
 
     fn solved(fill: &ThermalFill<'a>, entry: Entry, value: Known, wall_speed: Ball) -> Result<Self, ThermalError> {
         let setting = fill.setting(wall_speed);
-        let first = setting.first();
-        let given = match entry {
-            Entry::ShockSpeed => Some(setting.at_speed(value.ball())),
-            Entry::MachExcess => Some(setting.at_mach_excess(first, value.ball())),
-            Entry::Mach => Some(setting.at_mach_excess(first, value.ball() - Ball::whole(1))),
-            _ => None,
-        };
-        let (flows, steps) = match given {
+        let (flows, steps) = match setting.given(setting.first(), entry, value.ball()) {
             Some(incident) => solve(&setting, &incident, entry.parameter(), value.nominal())?,
             None => inverse(&setting, entry, value.ball())?,
         };
@@ -209,7 +201,7 @@ impl<'a> ThermalShock<'a> {
         let wall_speed = wall_speed.into();
         let bounds = wall_speed.enclosure();
         let refuse = |rule| InputError { parameter: Parameter::WallSpeed, value: wall_speed.nominal(), rule }.into();
-        if !bounds.is_proven() || bounds.low().abs().max(bounds.high().abs()) > Ball::LARGEST_ENTRY {
+        if !bounds.is_proven() || bounds.magnitude() > Ball::LARGEST_ENTRY {
             return Err(refuse(Rule::Between(-Ball::LARGEST_ENTRY, Ball::LARGEST_ENTRY)));
         }
         self.exact_for_wall()?;
@@ -287,9 +279,7 @@ impl<'a> ThermalShock<'a> {
             return pressure_5.into().enclosure() / self.output(Output::ReflectedPressureRatio);
         }
         let wanted = pressure_5.into().ball();
-        let mut enclosures = self.flows.iter().flatten().map(|flow| (wanted / flow.evaluate(Output::ReflectedPressureRatio)).enclosure());
-        let first = enclosures.next().unwrap_or(Enclosure::UNKNOWN);
-        enclosures.fold(first, Enclosure::hull)
+        hull(&self.flows, |flow| wanted / flow.evaluate(Output::ReflectedPressureRatio))
     }
 
     /// One output as a ball, of the solution that the f64 iteration found.
@@ -315,9 +305,7 @@ impl<'a> ThermalShock<'a> {
         if self.is_box {
             return self.fill.range(self.entry, self.value, output);
         }
-        let mut enclosures = self.flows.iter().flatten().map(|flow| flow.evaluate(output).enclosure());
-        let first = enclosures.next().unwrap_or(Enclosure::UNKNOWN);
-        enclosures.fold(first, Enclosure::hull)
+        hull(&self.flows, |flow| flow.evaluate(output))
     }
 
     /// The double nearest to the exact answer at the nominal inputs.
@@ -366,6 +354,11 @@ impl<'a> ThermalShock<'a> {
 }
 
 pub(super) type Flows = [Option<ThermalFlow<Ball>>; FLOWS];
+
+/// What all the flows make of a quantity: the model's answer is that of one of them.
+pub(super) fn hull(flows: &Flows, quantity: impl Fn(&ThermalFlow<Ball>) -> Ball) -> Enclosure {
+    flows.iter().flatten().map(|flow| quantity(flow).enclosure()).reduce(Enclosure::hull).unwrap_or(Enclosure::UNKNOWN)
+}
 
 /// Both shocks: approximately in f64, then with proof.
 pub(super) fn solve(

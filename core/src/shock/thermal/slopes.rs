@@ -1,11 +1,11 @@
 //! Slopes of the outputs with respect to the inputs, by the implicit function rule.
 
 use super::flow::{Ranges, ThermalFlow, reflected_stage};
-use super::plain::PlainShock;
+use super::plain::{PlainFill, PlainShock};
 use super::setting::Setting;
 use super::shock::ThermalFill;
 use super::stage::{GivenSpeed, Stage, residual};
-use crate::gas::{GasSlopes, HeatCapacity, HeatCapacityModel, MixtureChange};
+use crate::gas::{GasSlopes, HeatCapacity, MixtureChange};
 use crate::number::{Ball, Dual, ElementarySlopes};
 
 /// An input of a shock into a thermally perfect gas, along which a slope is taken; all others are held, the shock speed among them.
@@ -29,59 +29,26 @@ type Variable = Dual<f64, 1>;
 
 impl ThermalFill<'_> {
     /// The fill with slopes along one input.
-    fn variable_setting(&self, plain: &Setting<f64>, input: ThermalInput) -> Option<Setting<Variable>> {
-        let mut setting = plain.map(Variable::constant);
-        let along = |value: f64| Variable::variable(value, 0);
+    fn variable_fill(&self, input: ThermalInput) -> Option<PlainFill<Variable>> {
+        let plain = self.plain(|x| x);
+        let mut fill = self.plain(Variable::constant);
         let temperature = Ball::from(plain.temperature);
         match input {
-            ThermalInput::ShockSpeed => {}
-            ThermalInput::FillPressure => setting.pressure = along(plain.pressure),
-            ThermalInput::WallSpeed => setting.wall_speed = along(plain.wall_speed),
+            ThermalInput::ShockSpeed | ThermalInput::WallSpeed => {}
+            ThermalInput::FillPressure => fill.pressure = Variable::variable(plain.pressure, 0),
             ThermalInput::FillTemperature => {
-                setting.temperature = along(plain.temperature);
-                let full = self.gas().heat_capacity();
-                let scaled = |of: Ball| of.nearest() / plain.temperature;
-                let constant = |c: &HeatCapacity<f64>, slope: f64| {
-                    HeatCapacity::constant(Variable::with_slopes(c.value(0, plain.temperature), [slope]))
-                };
-                match self.model() {
-                    HeatCapacityModel::Equilibrium => {}
-                    HeatCapacityModel::Constant => {
-                        let slope = scaled(full.scaled_slope(full.index_at(plain.temperature), temperature));
-                        setting.incident = constant(&plain.incident, slope);
-                        setting.reflected = setting.incident;
-                    }
-                    HeatCapacityModel::Frozen => {
-                        setting.incident = constant(&plain.incident, scaled(self.gas().frozen_scaled_slope(temperature)));
-                        setting.reflected = setting.incident;
-                    }
-                    HeatCapacityModel::FrozenThenEquilibrium => {
-                        setting.incident = constant(&plain.incident, scaled(self.gas().frozen_scaled_slope(temperature)));
-                    }
-                }
+                fill.temperature = Variable::variable(plain.temperature, 0);
+                let slope = self.gas().frozen_scaled_slope(temperature).nearest() / plain.temperature;
+                fill.frozen = Variable::with_slopes(plain.frozen, [slope]);
             }
             ThermalInput::Mixture(change) => {
                 let GasSlopes { full, frozen, molar_mass } = self.gas().slopes(change, temperature)?.plain();
-                setting.molar_mass = Variable::with_slopes(plain.molar_mass, [molar_mass]);
-                let polynomial = |c: &HeatCapacity<f64>| c.with_slopes(&full);
-                let constant = |c: &HeatCapacity<f64>, slope: f64| {
-                    HeatCapacity::constant(Variable::with_slopes(c.value(0, plain.temperature), [slope]))
-                };
-                (setting.incident, setting.reflected) = match self.model() {
-                    HeatCapacityModel::Equilibrium => (polynomial(&plain.incident), polynomial(&plain.reflected)),
-                    HeatCapacityModel::Constant => {
-                        let own = constant(&plain.incident, full.value(full.index_at(plain.temperature), plain.temperature));
-                        (own, own)
-                    }
-                    HeatCapacityModel::Frozen => {
-                        let own = constant(&plain.incident, frozen);
-                        (own, own)
-                    }
-                    HeatCapacityModel::FrozenThenEquilibrium => (constant(&plain.incident, frozen), polynomial(&plain.reflected)),
-                };
+                fill.molar_mass = Variable::with_slopes(plain.molar_mass, [molar_mass]);
+                fill.full = plain.full.with_slopes(&full);
+                fill.frozen = Variable::with_slopes(plain.frozen, [frozen]);
             }
         }
-        Some(setting)
+        Some(fill)
     }
 }
 
@@ -128,8 +95,10 @@ impl ThermalFill<'_> {
     pub(crate) fn slopes(&self, speed: f64, wall_speed: f64, input: ThermalInput) -> Option<ThermalFlow<Variable>> {
         let plain = self.setting(Ball::from(wall_speed)).map(Ball::nearest);
         let shock = PlainShock::new(&plain, &plain.at_speed(speed))?;
-        let setting = self.variable_setting(&plain, input)?;
-        let own = if input == ThermalInput::ShockSpeed { Variable::variable(speed, 0) } else { Variable::constant(speed) };
-        Some(flow_with_slopes(&setting, &setting.at_speed(own), shock.ranges, shock.compressions))
+        let own = |value, of| if input == of { Variable::variable(value, 0) } else { Variable::constant(value) };
+        let fill = self.variable_fill(input)?;
+        let setting = fill.setting(self.balls().temperature.side(), own(wall_speed, ThermalInput::WallSpeed));
+        let incident = setting.at_speed(own(speed, ThermalInput::ShockSpeed));
+        Some(flow_with_slopes(&setting, &incident, shock.ranges, shock.compressions))
     }
 }

@@ -27,8 +27,8 @@ impl ThermalFill<'_> {
     pub(super) fn range(&self, entry: Entry, value: Known, output: Output) -> Enclosure {
         let over = |variables: [Variable; INPUTS]| self.over_box(entry, &variables, output).unwrap_or(unknown(Enclosure::UNKNOWN));
         let point = |[value, pressure, temperature]: [Known; INPUTS]| {
-            let fill = self.at(pressure, temperature);
-            fill.and_then(|fill| ThermalShock::new(&fill, entry, value).ok()).map_or(Enclosure::UNKNOWN, |shock| shock.output(output))
+            let shock = self.at(pressure, temperature).ok().and_then(|fill| ThermalShock::new(&fill, entry, value).ok());
+            shock.map_or(Enclosure::UNKNOWN, |shock| shock.output(output))
         };
         let pressure = self.pressure().middle();
         let range = bounds([value, pressure, self.temperature()], over, point);
@@ -40,26 +40,18 @@ impl ThermalFill<'_> {
     fn over_box(&self, entry: Entry, inputs: &[Variable; INPUTS], output: Output) -> Option<Variable> {
         let [value, pressure, temperature] = *inputs;
         let fill = self.over_fill(pressure, temperature)?;
-        let middle = |input: Variable| Ball::from(input.value().middle());
-        let centre_fill = self.at(Known::from(pressure.value().middle()), Known::from(temperature.value().middle()))?;
+        let centre_fill = self.at(Known::from(pressure.value().middle()), Known::from(temperature.value().middle())).ok()?;
         let kelvin = temperature.value().middle();
         let setting = fill.setting(kelvin, Variable::whole(0));
         let centre_setting = centre_fill.setting(Ball::whole(0));
         let first = setting.incident.index_at(kelvin);
-        let (incident, centre) = match entry {
-            Entry::ShockSpeed => (setting.at_speed(value), centre_setting.at_speed(middle(value))),
-            Entry::MachExcess => (setting.at_mach_excess(first, value), centre_setting.at_mach_excess(first, middle(value))),
-            _ => {
-                let excess = |mach| mach - Ball::whole(1);
-                (setting.at_mach_excess(first, value - Variable::whole(1)), centre_setting.at_mach_excess(first, excess(middle(value))))
-            }
-        };
+        let incident = setting.given(first, entry, value)?;
+        let centre = centre_setting.given(first, entry, Ball::from(value.value().middle()))?;
         let part = Part { spread: inputs.map(|input| input.value() - Enclosure::from(input.value().middle())) };
         let incident = GivenSpeed { m: part.tight(incident.m, centre.m), m_excess: part.tight(incident.m_excess, centre.m_excess) };
         let plain = PlainShock::new(&centre_setting.map(Ball::nearest), &centre.map(Ball::nearest))?;
         let [compression, reflected] = plain.compressions;
-        let mut hull: Option<Enclosure> = None;
-        let mut only = None;
+        let mut found: Option<Variable> = None;
         let ahead =
             Problem { stage: centre, heat_capacity: &centre_setting.incident, from: first, temperature: centre_setting.temperature };
         for side in
@@ -71,10 +63,7 @@ impl ThermalFill<'_> {
             let (centre_stage, centre_behind, _) = reflected_stage(&centre_setting, &centre, ranges, side.centre);
             let stage = GivenSpeedChange { k: part.tight(stage.k, centre_stage.k), lag: part.tight(stage.lag, centre_stage.lag) };
             let behind = part.tight(temperature + temperature * side.excess, centre_behind);
-            let [low, high] = setting.reflected.ends(ranges.ahead);
-            if setting.lagging.is_some()
-                && !((behind.value().low() > low || ranges.ahead == 0 && behind.value().low() >= low) && behind.value().high() <= high)
-            {
+            if setting.lagging.is_some() && setting.reflected.within_ends(ranges.ahead, behind.value()) != [true, true] {
                 return None;
             }
             let wall =
@@ -84,11 +73,10 @@ impl ThermalFill<'_> {
                 let flow =
                     ThermalFlow::from_parts(&setting, &incident, &stage, Ranges { fifth: last.to, ..ranges }, both, (behind, last.mean));
                 let own = flow.evaluate(output);
-                hull = Some(hull.map_or(own.value(), |hull| hull.hull(own.value())));
-                only = if hull == Some(own.value()) && only.is_none() { Some(own) } else { Some(unknown(own.value())) };
+                found = Some(found.map_or(own, |other| unknown(other.value().hull(own.value()))));
             }
         }
-        Some(only.filter(|own| Some(own.value()) == hull).unwrap_or(unknown(hull?)))
+        found
     }
 
     /// The fill over a box; `None` where T1 reaches across a joint.
@@ -97,11 +85,10 @@ impl ThermalFill<'_> {
         let full = balls.full.map(Ball::enclosure);
         let bounds = temperature.value();
         let index = full.index_at(bounds.middle());
-        let [low, high] = full.ends(index);
         let constant = |x: Ball| Variable::constant(x.enclosure());
         let frozen = self.gas().frozen_over(bounds);
         let slope = |own: Enclosure| frozen.1 * own;
-        ((bounds.low() > low || index == 0 && bounds.low() >= low) && bounds.high() <= high).then(|| PlainFill {
+        (full.within_ends(index, bounds) == [true, true]).then(|| PlainFill {
             model: balls.model,
             pressure,
             temperature,
@@ -172,14 +159,12 @@ impl Part {
     ) -> Option<[Option<Side>; 2]> {
         let first = self.side(stage, heat_capacity, temperature, centre, approximate, to)?;
         let reached = |side: &Side| temperature.value() + temperature.value() * side.excess.value();
-        let [low, high] = heat_capacity.ends(to);
-        let behind = reached(&first);
-        let other = match (behind.low() > low || to == 0 && behind.low() >= low, behind.high() <= high) {
-            (true, true) => return Some([Some(first), None]),
-            (false, true) => to.checked_sub(1)?,
-            (true, false) => Some(to + 1).filter(|next| *next < heat_capacity.len())?,
+        let other = match heat_capacity.within_ends(to, reached(&first)) {
+            [true, true] => return Some([Some(first), None]),
+            [false, true] => to.checked_sub(1)?,
+            [true, false] => Some(to + 1).filter(|next| *next < heat_capacity.len())?,
             // Across a whole range.
-            (false, false) => return None,
+            [false, false] => return None,
         };
         let second = self.side(stage, heat_capacity, temperature, centre, approximate, other)?;
         let within = |side: &Side| {
@@ -223,8 +208,7 @@ impl Part {
         };
         // The residual at the compression of the centre is zero there, and elsewhere what its slopes make of the distance.
         let value = self.spread_by(along(at));
-        let size = |x: Enclosure| x.low().abs().max(x.high().abs());
-        let mut reach = 1.25 * size(value / slope(at)) + at.high() * 1e-15;
+        let mut reach = 1.25 * (value / slope(at)).magnitude() + at.high() * 1e-15;
         for _ in 0..STEPS {
             // A reach that is not a number fails here.
             if reach >= 0.5 * at.low() || at.high() + reach >= 1.0 || reach.is_nan() {
@@ -232,7 +216,7 @@ impl Part {
             }
             let around = Enclosure::new(at.low() - reach, at.high() + reach)?;
             let found = at - value / slope(around);
-            if found.is_proven() && around.low() < found.low() && found.high() < around.high() {
+            if around.encloses_strictly(found) {
                 let over = (at - value / slope(found)).intersection(found).filter(|both| both.is_proven())?;
                 let [over_slope, slopes] = [[slope(over); INPUTS], along(over)];
                 let mut own = slopes;
@@ -244,7 +228,7 @@ impl Part {
                 let mean = self.tight(known.over(heat_capacity, ranges, temperature, excess), root.mean);
                 return Some(Side { compression, excess, mean, centre: root.compression, to });
             }
-            reach = (1.25 * size(found - at)).max(1.5 * reach);
+            reach = (1.25 * (found - at).magnitude()).max(1.5 * reach);
         }
         None
     }
@@ -266,8 +250,8 @@ impl Mean {
     ///
     /// > T ∂c̄/∂T = mean of T dc/dT, ∂c̄/∂x = mean of s/(1 + sx)·T dc/dT over s from 0 to 1,
     ///
-    /// to which the jumps of h at joints Tj add −ΣJ/(T x)·(1, 1/x), those of c, Δc, add Σ`Δc·Tj`/(T x) and Σ`Δc·(Tj/T − 1)`/x², and with the value at one point they bound the value. Narrow boxes get the polynomials' own
-    /// bounds, where these are better.
+    /// to which the jumps of h at joints Tj add −ΣJ/(T x)·(1, 1/x), those of c, Δc, add Σ`Δc·Tj`/(T x) and Σ`Δc·(Tj/T − 1)`/x², and with the value at
+    /// one point they bound the value. Narrow boxes get the polynomials' own bounds, where these are better.
     fn over<const N: usize>(
         &self,
         heat_capacity: &HeatCapacity<Dual<Enclosure, N>>,
@@ -288,9 +272,7 @@ impl Mean {
             // Over an extended polynomial the way runs back, and the bounds below do not hold.
             return own;
         }
-        // The jumps of c itself, either way.
         let kinks = heat_capacity.kinks_between(from, to);
-        let kinks = kinks.hull(-kinks);
         let (by_temperature, by_excess) = if from == to {
             (steepness / t, steepness * (one / (one + x)).hull(one) / Enclosure::whole(2))
         } else {
