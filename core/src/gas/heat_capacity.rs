@@ -1,5 +1,6 @@
 //! Heat capacity of an ideal gas as polynomials over adjoining ranges of temperature.
 
+use super::speed_integral::speed_rise;
 use crate::number::{Ball, Dual, Elementary, Enclosure, Semifield, Signed};
 
 /// Ranges, at most.
@@ -189,14 +190,19 @@ impl<S: Elementary> HeatCapacity<S> {
     ///
     /// Across joints it is the sum of the integrals of both polynomials, without a jump: continuous and, with `c_p`, increasing.
     pub fn entropy_rise(&self, from: usize, temperature: S, excess: S, to: usize) -> S {
+        self.integral(from, temperature, excess, to, Range::entropy_rise)
+    }
+
+    /// An integral over temperature between T in range `from` and T(1 + x) in range `to`, given what it is inside one range.
+    fn integral(&self, from: usize, temperature: S, excess: S, to: usize, own: impl Fn(&Range<S>, S, S) -> S + Copy) -> S {
         if from == to {
-            return self.at(from).entropy_rise(temperature, excess);
+            return own(self.at(from), temperature, excess);
         }
         let end = temperature + temperature * excess;
         if from > to {
-            return -self.entropy_rise(to, end, -(excess / (S::whole(1) + excess)), from);
+            return -self.integral(to, end, -(excess / (S::whole(1) + excess)), from, own);
         }
-        let part = |range: &Range<S>, low: S, high: S| range.entropy_rise(low, (high - low) / low);
+        let part = |range: &Range<S>, low: S, high: S| own(range, low, (high - low) / low);
         let between = self.ranges.iter().zip(self.ranges.iter().skip(1)).enumerate().skip(from).take(to - from);
         let sum = between.fold(S::whole(0), |sum, (index, (range, next))| {
             let low = if index == from { temperature } else { range.start };
@@ -263,6 +269,12 @@ impl<S: Signed> HeatCapacity<S> {
 }
 
 impl HeatCapacity<Ball> {
+    /// ∫ √(c(c − 1)/T) dT with c = `c_p`/R, √K, between a temperature T in range `from` and T(1 + x) in range `to`, as [`HeatCapacity::entropy_rise`];
+    /// unknown where c is not proven to exceed 1 on the way.
+    pub(crate) fn speed_rise(&self, from: usize, temperature: Ball, excess: Ball, to: usize) -> Ball {
+        self.integral(from, temperature, excess, to, |range, temperature, excess| speed_rise(&range.a, temperature, excess))
+    }
+
     /// The jump of h/R where the range above this one begins, K.
     pub(crate) fn jump_above(&self, index: usize) -> Ball {
         self.at(index + 1).jump

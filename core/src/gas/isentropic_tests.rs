@@ -63,26 +63,6 @@ fn every_species_is_narrow_and_comes_back() {
 }
 
 #[test]
-fn a_factor_near_one_keeps_its_digits() {
-    // To first order x = ln(1 + e)/c; in f64 a difference of two integrals from a fixed temperature would have three digits of it.
-    let portions = pure(&table::N2);
-    let gas = ThermallyPerfectGas::new(&portions).unwrap();
-    let small = libm::scalbn(1.0, -40);
-    for temperature in [500.0, 1000.0, 3000.0] {
-        let problem = Problem {
-            heat_capacity: gas.heat_capacity(),
-            range: gas.heat_capacity().index_at(temperature),
-            start: Ball::from(temperature),
-            rise: Ball::from(1.0 - small).ln(),
-        };
-        let x = problem.newton(problem.approximate(200.0, temperature)).unwrap();
-        let first = -small / gas.heat_capacity_at(temperature).unwrap().middle();
-        assert!((x.nearest() / first - 1.0).abs() < 2.0 * small, "{temperature} {x:?}");
-        assert!(x.radius() < 1e-21 * x.nearest().abs(), "{x:?}");
-    }
-}
-
-#[test]
 fn constant_heat_capacity_agrees_with_its_own_formula() {
     let helium = pure(&table::HE);
     let gas = ThermallyPerfectGas::new(&helium).unwrap();
