@@ -61,7 +61,7 @@ fn every_species_comes_back_over_all_its_data() {
             for temperature in [300.0, 700.0, 999.0, 1500.0, 5000.0] {
                 let start = Ball::from(temperature);
                 let from = gas.index_at(temperature);
-                for end in [coldest * 1.000_001, 450.0, 999.999_999, 1000.000_001, 1300.0, 4000.0, hottest * 0.999_999, temperature + 1e-9]
+                for end in [coldest * 1.000_001, 450.0, 999.999_999, 1_000.000_001, 1300.0, 4000.0, hottest * 0.999_999, temperature + 1e-9]
                 {
                     let excess = (Ball::from(end) - start) / start;
                     let to = gas.index_at(end);

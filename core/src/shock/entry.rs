@@ -56,6 +56,18 @@ impl Entry {
         Self::ReflectedTemperature,
     ];
 
+    /// Whether it is a quantity behind the reflected shock, and so meant for the rigid wall.
+    pub(super) const fn is_reflected(self) -> bool {
+        matches!(
+            self,
+            Self::ReflectedPressureRatio
+                | Self::ReflectedPressure
+                | Self::Step
+                | Self::ReflectedTemperatureRatio
+                | Self::ReflectedTemperature
+        )
+    }
+
     /// The parameter that an error names.
     pub const fn parameter(self) -> Parameter {
         match self {

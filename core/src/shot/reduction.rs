@@ -4,9 +4,9 @@ use super::fit::{FitSettings, fit};
 use super::fit_error::FitError;
 use super::fit_result::{Fit, FitSource};
 use super::station::Station;
-use crate::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio, InputError, MixtureChange, ThermallyPerfectGas};
+use crate::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio, InputError, MixtureChange, Parameter, Rule, ThermallyPerfectGas};
 use crate::number::{Enclosure, Known};
-use crate::shock::{Entry, Incident, ThermalError, ThermalFill, ThermalShock, WallReflection, Wave};
+use crate::shock::{Entry, Incident, Output, ThermalError, ThermalFill, ThermalShock, WallReflection, Wave};
 use core::fmt;
 
 /// Lines of a budget, at most: seven of a fit (or one of a given speed), p1, T1, wall, and γ and W or the changes of a mixture.
@@ -385,11 +385,24 @@ fn solve<'g>(shot: &Shot<'_, 'g>, speed: Known) -> Result<Solved<'g>, ReductionE
             let shock = ThermalShock::new(&fill, Entry::ShockSpeed, speed)?;
             Ok(Solved::Thermal(match shot.wall {
                 EndWall::Rigid => shock,
-                EndWall::Moving(velocity) => shock.reflected_from_wall(velocity.value)?,
+                EndWall::Moving(velocity) => {
+                    let reflected = shock.reflected_from_wall(velocity.value)?;
+                    shocked(&reflected, velocity.value)?;
+                    reflected
+                }
                 EndWall::Yielding(impedance) => shock.reflected_from_yielding_wall(impedance.value)?,
             }))
         }
     }
+}
+
+/// Slopes are not taken through an expansion of a thermally perfect gas: a wall that recedes faster than such a gas is refused here.
+fn shocked(shock: &ThermalShock<'_>, wall_speed: Known) -> Result<(), InputError> {
+    if shock.wave() == Wave::Shock {
+        return Ok(());
+    }
+    let rule = Rule::Below(shock.output(Output::GasSpeed2).low());
+    Err(InputError { parameter: Parameter::WallSpeed, value: wall_speed.nominal(), rule })
 }
 
 impl<'a> Reduction<'a> {

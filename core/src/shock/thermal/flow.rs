@@ -2,8 +2,9 @@
 
 use super::setting::Setting;
 use super::stage::{GivenSpeed, GivenSpeedChange, Stage};
-use crate::gas::molar_gas_constant;
-use crate::number::{Elementary, Signed};
+use crate::gas::isentropic_change::{Change, Speed};
+use crate::gas::{HeatCapacity, molar_gas_constant};
+use crate::number::{Ball, Elementary, Positive, Semifield, Signed};
 use crate::shock::{Output, mach_excess};
 
 /// A shock into a thermally perfect gas and its reflection, in one kind of number.
@@ -28,15 +29,30 @@ pub struct ThermalFlow<S> {
     /// u2 − V.
     closing_speed: S,
     wall_speed: S,
-    k: S,
+    /// The range of T2 in the incident heat capacity.
+    second: usize,
+    reflection: Reflection<S>,
+    /// 1 − ρ2/ρ5: negative for an expansion.
     reflected_compression: S,
     reflected_excess: S,
-    /// c̄ across the reflected shock.
-    reflected_mean: S,
-    /// Δ/ε′.
-    lag_ratio: S,
     /// `c_p`/R in the states 1, 2 and 5, as the states were computed.
     heat_capacity: [S; 3],
+}
+
+/// What runs back from the wall.
+#[derive(Clone, Copy, Debug)]
+enum Reflection<S> {
+    Shock {
+        k: S,
+        /// c̄ across the reflected shock.
+        mean: S,
+        /// Δ/ε′.
+        lag_ratio: S,
+    },
+    Expansion {
+        /// p5/p2 − 1.
+        pressure_excess: S,
+    },
 }
 
 /// Where the temperature behind each shock lies: ranges of the incident and of the reflected heat capacity.
@@ -110,11 +126,10 @@ impl<S: Elementary> ThermalFlow<S> {
             excess,
             closing_speed: setting.closing_speed(incident.m, compression),
             wall_speed: setting.wall_speed,
-            k: reflected.k,
+            second: ranges.second,
+            reflection: Reflection::Shock { k: reflected.k, mean: reflected_mean, lag_ratio: reflected.lag / reflected_compression },
             reflected_compression,
             reflected_excess,
-            reflected_mean,
-            lag_ratio: reflected.lag / reflected_compression,
             heat_capacity: [
                 setting.incident.value(ranges.first, setting.temperature),
                 setting.incident.value(ranges.second, behind),
@@ -138,13 +153,21 @@ impl<S: Signed> ThermalFlow<S> {
         let speed = || (self.m * self.scale).sqrt();
         let sound_speed = || (ratio(c1) * self.scale).sqrt();
         let pressure_excess = || self.m * e;
-        let rise = || self.k / r;
+        let rise = || match self.reflection {
+            Reflection::Shock { k, .. } => k / r,
+            Reflection::Expansion { pressure_excess } => pressure_excess,
+        };
         let reflected_excess = || pressure_excess() + (one + pressure_excess()) * rise();
         let temperature_ratio = || (one + self.excess) * (one + self.reflected_excess);
         let reflected_temperature_excess = || self.excess + self.reflected_excess * (one + self.excess);
         let remaining = || (one - e) * (one - r);
         let mach_squared_excess = || (self.m_excess * (c1 - one) - one) / c1;
-        let reflected_speed = || self.closing_speed * (one - r) / r - self.wall_speed;
+        let sound_speed_2 = || (ratio(c2) * self.scale * (one + self.excess)).sqrt();
+        let reflected_speed = || match self.reflection {
+            Reflection::Shock { .. } => self.closing_speed * (one - r) / r - self.wall_speed,
+            // The head of the expansion.
+            Reflection::Expansion { .. } => sound_speed_2() - speed() * e,
+        };
         match output {
             Output::ShockSpeed => speed(),
             Output::Mach => (self.m / ratio(c1)).sqrt(),
@@ -161,7 +184,7 @@ impl<S: Signed> ThermalFlow<S> {
             Output::TemperatureRatio => one + self.excess,
             Output::TemperatureExcess => self.excess,
             Output::Temperature2 => self.temperature * (one + self.excess),
-            Output::SoundSpeed2 => (ratio(c2) * self.scale * (one + self.excess)).sqrt(),
+            Output::SoundSpeed2 => sound_speed_2(),
             Output::GasSpeed2 => speed() * e,
             Output::GasSpeedRatio => (self.m / ratio(c1)).sqrt() * e,
             Output::MachBehind => (self.m / (ratio(c2) * (one + self.excess))).sqrt() * (one - e),
@@ -181,20 +204,79 @@ impl<S: Signed> ThermalFlow<S> {
             Output::SoundSpeed5 => (ratio(c5) * self.scale * temperature_ratio()).sqrt(),
             Output::ReflectedSpeed => reflected_speed(),
             Output::ReflectedSpeedRatio => reflected_speed() / sound_speed(),
-            Output::ReflectedMach => (self.k / ratio(c2)).sqrt() / r,
-            Output::ReflectedMachExcess => mach_excess(self.reflected_mach_squared_excess()),
+            Output::ReflectedMach => match self.reflection {
+                Reflection::Shock { k, .. } => (k / ratio(c2)).sqrt() / r,
+                Reflection::Expansion { .. } => one,
+            },
+            Output::ReflectedMachExcess => match self.reflection {
+                Reflection::Shock { mean, lag_ratio, .. } => mach_excess(self.reflected_mach_squared_excess(mean, lag_ratio)),
+                Reflection::Expansion { .. } => S::whole(0),
+            },
         }
     }
 
     /// `M_R`² − 1 with k from the equation of the reflected shock, in which nothing is left to cancel for a weak one:
     ///
     /// > k/ε′² = 2(c̄ − Δ/ε′)/D, `M_R`² − 1 = (2(c2 − c̄) + c2 ε′(2c̄ − 1) − 2(c2 − 1)Δ/ε′)/(c2 D), D = 2(c̄ − 1) − ε′(2c̄ − 1).
-    fn reflected_mach_squared_excess(&self) -> S {
+    fn reflected_mach_squared_excess(&self, mean: S, lag_ratio: S) -> S {
         let one = S::whole(1);
-        let [_, c2, _] = self.heat_capacity;
-        let (mean, r) = (self.reflected_mean, self.reflected_compression);
+        let ([_, c2, _], r) = (self.heat_capacity, self.reflected_compression);
         let growing = r * (mean.doubled() - one);
-        let sum = (c2 - mean).doubled() + c2 * growing - ((c2 - one) * self.lag_ratio).doubled();
+        let sum = (c2 - mean).doubled() + c2 * growing - ((c2 - one) * lag_ratio).doubled();
         sum / (c2 * ((mean - one).doubled() - growing))
+    }
+}
+
+impl<S: Elementary> ThermalFlow<S> {
+    /// The stage of the incident shock.
+    pub(super) fn incident(&self) -> GivenSpeed<S> {
+        GivenSpeed { m: self.m, m_excess: self.m_excess }
+    }
+
+    /// u2 − V for another wall speed.
+    pub(super) fn closing_speed_to(&self, wall_speed: S) -> S {
+        (self.m * self.scale).sqrt() * self.compression - wall_speed
+    }
+}
+
+impl ThermalFlow<Ball> {
+    /// The same incident shock at a wall that recedes with V > u2. An expansion runs back, a simple wave with the heat capacity of state 2:
+    ///
+    /// > V − u2 = ∫ from T5 to T2 of dh/a, ln(p5/p2) = −∫ from T5 to T2 of `c_p`/R dT/T.
+    ///
+    /// Both answers where T5 is on a joint to all digits; none where it is not proven to lie in the data.
+    pub(super) fn expanded(&self, heat_capacity: &HeatCapacity<Ball>, wall_speed: Ball) -> [Option<Self>; 2] {
+        let one = Ball::whole(1);
+        let closing_speed = self.closing_speed_to(wall_speed);
+        let temperature = self.temperature + self.temperature * self.excess;
+        // √(R/W), with which the integral is a speed.
+        let unit = (self.scale / self.temperature).sqrt();
+        let changes = heat_capacity.changed_by::<Speed>(self.second, temperature, closing_speed / unit);
+        changes.map(|change| {
+            let Change { excess, to } = change?;
+            let logarithm = heat_capacity.entropy_rise(self.second, temperature, excess, to);
+            let pressure_excess = logarithm * logarithm.expm1_ratio();
+            let [c1, c2, _] = self.heat_capacity;
+            Some(Self {
+                closing_speed,
+                wall_speed,
+                reflection: Reflection::Expansion { pressure_excess },
+                // ρ2/ρ5 = (T5/T2)/(p5/p2).
+                reflected_compression: (pressure_excess - excess) / (one + pressure_excess),
+                reflected_excess: excess,
+                heat_capacity: [c1, c2, heat_capacity.value(to, temperature + temperature * excess)],
+                ..*self
+            })
+        })
+    }
+
+    /// The range of T2 in the incident heat capacity.
+    pub(super) fn second(&self) -> usize {
+        self.second
+    }
+
+    /// Whether an expansion runs back.
+    pub(super) fn expands(&self) -> bool {
+        matches!(self.reflection, Reflection::Expansion { .. })
     }
 }

@@ -9,7 +9,7 @@ use super::setting::Setting;
 use super::stage::GivenSpeed;
 use crate::gas::{HeatCapacity, HeatCapacityModel, InputError, Parameter, Rule, ThermallyPerfectGas, positive};
 use crate::number::{Ball, Enclosure, Known, Positive, Semifield};
-use crate::shock::{Entry, Output, State};
+use crate::shock::{Entry, Output, State, Wave};
 
 /// A fill of thermally perfect gas: p1 (Pa, absolute), T1 (K, within the data of the gas), and the heat capacity that the shocks are to have. Both may be
 /// tolerances.
@@ -151,7 +151,7 @@ impl<'a> ThermalShock<'a> {
         let value = value.into();
         positive(entry.parameter(), value)?;
         if [value, fill.pressure, fill.temperature].iter().all(|input| input.exact().is_some()) {
-            return Self::solved(fill, entry, value, Ball::whole(0));
+            return Self::solved(fill, entry, value);
         }
         // Inverse problems are solved at points.
         if !matches!(entry, Entry::ShockSpeed | Entry::Mach | Entry::MachExcess) {
@@ -161,7 +161,7 @@ impl<'a> ThermalShock<'a> {
         }
         let corner = |upper: bool| {
             let point = fill.at(fill.pressure.end(upper), fill.temperature.end(!upper))?;
-            Self::solved(&point, entry, value.end(upper), Ball::whole(0))
+            Self::solved(&point, entry, value.end(upper))
         };
         // The weakest and the strongest shock of the box must exist and stay inside the data.
         corner(false)?;
@@ -169,7 +169,8 @@ impl<'a> ThermalShock<'a> {
         Ok(Self { fill: *fill, value, is_box: true, ..strongest })
     }
 
-    fn solved(fill: &ThermalFill<'a>, entry: Entry, value: Known, wall_speed: Ball) -> Result<Self, ThermalError> {
+    fn solved(fill: &ThermalFill<'a>, entry: Entry, value: Known) -> Result<Self, ThermalError> {
+        let wall_speed = Ball::whole(0);
         let setting = fill.setting(wall_speed);
         let (flows, steps) = match setting.given(setting.first(), entry, value.ball()) {
             Some(incident) => solve(&setting, &incident, entry.parameter(), value.nominal())?,
@@ -181,20 +182,27 @@ impl<'a> ThermalShock<'a> {
     /// The same shock reflected from an end wall that moves with a constant velocity V along the incident direction (positive: it recedes; m/s). State 5
     /// is then the gas at the wall.
     ///
+    /// For V < u2 a shock runs back, for V > u2 an expansion ([`ThermalShock::wave`]), a simple wave with the heat capacity of state 2:
+    ///
+    /// > V − u2 = ∫ from T5 to T2 of dh/a, ln(p5/p2) = −∫ from T5 to T2 of `c_p`/R dT/T.
+    ///
     /// # Errors
-    /// [`ThermalError`] for a velocity that is not finite, beyond 2^±200 or not below the gas speed u2 (an expansion would run back), and as for
-    /// [`ThermalShock::new`].
+    /// [`ThermalError`] for a velocity that is not finite, beyond 2^±200 or equal to the gas speed u2 to all digits, for an expansion that takes the gas
+    /// below the data, and as for [`ThermalShock::new`].
     ///
     /// ```
     /// use endwall::gas::species::table;
     /// use endwall::gas::{HeatCapacityModel, Portion, ThermallyPerfectGas};
-    /// use endwall::shock::{Entry, Output, ThermalFill, ThermalShock};
+    /// use endwall::shock::{Entry, Output, ThermalFill, ThermalShock, Wave};
     /// let nitrogen = [Portion { species: &table::N2, fraction: "1".parse()? }];
     /// let fill = ThermalFill::new(ThermallyPerfectGas::new(&nitrogen)?, HeatCapacityModel::Equilibrium, 10e3, 295.0)?;
     /// let rigid = ThermalShock::new(&fill, Entry::ShockSpeed, 1050.0)?;
     /// let yielding = rigid.reflected_from_wall(100.0)?;
     /// assert!(yielding.output(Output::Pressure5).certainly_less(rigid.output(Output::Pressure5)));
-    /// assert!(rigid.reflected_from_wall(900.0).is_err()); // the gas has 831 m/s
+    /// let receding = rigid.reflected_from_wall(900.0)?; // the gas has 831 m/s
+    /// assert_eq!(receding.wave(), Wave::Expansion);
+    /// assert!(receding.output(Output::Pressure5).certainly_less(rigid.output(Output::Pressure2)));
+    /// assert!(rigid.reflected_from_wall(3000.0).is_err()); // below 200 K there are no data
     /// # Ok::<(), Box<dyn std::error::Error>>(())
     /// ```
     pub fn reflected_from_wall(&self, wall_speed: impl Into<Known>) -> Result<Self, ThermalError> {
@@ -206,11 +214,49 @@ impl<'a> ThermalShock<'a> {
         }
         self.exact_for_wall()?;
         exact(Parameter::WallSpeed, wall_speed)?;
-        let gas_speed = self.output(Output::GasSpeed2);
-        if !bounds.certainly_less(gas_speed) {
-            return Err(refuse(Rule::Below(gas_speed.low())));
+        let velocity = wall_speed.ball();
+        let closing_speed = self.flows.iter().flatten().next().map_or(Ball::UNKNOWN, |flow| flow.closing_speed_to(velocity));
+        if closing_speed.is_certainly_positive() {
+            return self.at_wall(velocity);
         }
-        Self::solved(&self.fill, self.entry, self.value, wall_speed.ball())
+        if !closing_speed.is_certainly_negative() {
+            return Err(refuse(Rule::Below(self.output(Output::GasSpeed2).low())));
+        }
+        let setting = self.fill.setting(velocity);
+        let mut flows = [None; FLOWS];
+        let mut places = flows.iter_mut();
+        let mut last = None;
+        for flow in self.flows.iter().flatten() {
+            // Flows that differ in their reflection only have the same state 2.
+            if last == Some(flow.second()) {
+                continue;
+            }
+            last = Some(flow.second());
+            for expanded in flow.expanded(&setting.incident, velocity).into_iter().flatten() {
+                if let Some(place) = places.next() {
+                    *place = Some(expanded);
+                }
+            }
+        }
+        if flows.iter().all(Option::is_none) {
+            let (low, high) = setting.incident.range();
+            return Err(refuse(Rule::HeatsBeyondData(low, high)));
+        }
+        Ok(Self { wall_speed: velocity, flows, ..*self })
+    }
+
+    /// The same incident shock, reflected as a shock from a wall of this velocity.
+    fn at_wall(&self, wall_speed: Ball) -> Result<Self, ThermalError> {
+        let missing = ThermalError::Existence { temperature: self.nearest(Output::Temperature2) };
+        let incident = self.flows.iter().flatten().next().ok_or(missing)?.incident();
+        let setting = self.fill.setting(wall_speed);
+        let (flows, steps) = solve(&setting, &incident, self.entry.parameter(), self.value.nominal())?;
+        Ok(Self { wall_speed, flows, steps, ..*self })
+    }
+
+    /// What runs back from the wall.
+    pub fn wave(&self) -> Wave {
+        if self.flows.iter().flatten().any(ThermalFlow::expands) { Wave::Expansion } else { Wave::Shock }
     }
 
     /// The same shock reflected from a massive elastic wall of acoustic impedance Z (Pa·s/m), whose face moves with V = (p5 − p1)/Z until the wave in the
@@ -225,7 +271,7 @@ impl<'a> ThermalShock<'a> {
         positive(Parameter::WallImpedance, impedance)?;
         self.exact_for_wall()?;
         exact(Parameter::WallImpedance, impedance)?;
-        let at = |speed: Ball| Self::solved(&self.fill, self.entry, self.value, speed);
+        let at = |speed: Ball| self.at_wall(speed);
         let wanted = |shock: &Self| shock.ball(Output::Step) / impedance.ball();
         let still = at(Ball::whole(0))?;
         let (mut low, mut high) = (0.0, wanted(&still).nearest().min(self.nearest(Output::GasSpeed2)));
@@ -289,7 +335,8 @@ impl<'a> ThermalShock<'a> {
 
     /// The heat capacity with which state 5 was computed.
     pub fn heat_capacity_5(&self) -> HeatCapacity<Ball> {
-        self.fill.setting(Ball::whole(0)).reflected
+        let setting = self.fill.setting(Ball::whole(0));
+        if self.wave() == Wave::Expansion { setting.incident } else { setting.reflected }
     }
 
     /// An enclosure of the velocity of the end wall, m/s.
@@ -297,9 +344,14 @@ impl<'a> ThermalShock<'a> {
         self.wall_speed.enclosure()
     }
 
+    /// Whether the entry says what this output is. A quantity of state 5 is given for the rigid wall.
+    fn is_given(&self, output: Output) -> bool {
+        output == self.entry.output() && (self.wall_speed.magnitude() == 0.0 || !self.entry.is_reflected())
+    }
+
     /// An enclosure of one output.
     pub fn output(&self, output: Output) -> Enclosure {
-        if output == self.entry.output() {
+        if self.is_given(output) {
             return self.value.enclosure();
         }
         if self.is_box {
@@ -310,7 +362,7 @@ impl<'a> ThermalShock<'a> {
 
     /// The double nearest to the exact answer at the nominal inputs.
     pub fn nearest(&self, output: Output) -> f64 {
-        if output == self.entry.output() {
+        if self.is_given(output) {
             return self.value.nominal();
         }
         let bounds = self.output(output);
@@ -402,6 +454,10 @@ pub(super) fn solve(
     }
     Ok((flows, plain.steps()))
 }
+
+#[cfg(test)]
+#[path = "wall_tests.rs"]
+mod wall_tests;
 
 #[cfg(test)]
 mod tests {
