@@ -4,9 +4,10 @@ use super::driver::{Drive, Driver};
 use super::driver_error::DriverError;
 use super::forward::mach_excess_where;
 use super::proven_root::Side;
+use super::side::ContactSide;
 use super::test_gas::{BehindShock, TestGas};
 use crate::gas::{Gamma, sound_speed_squared};
-use crate::number::{Ball, Enclosure, Positive, Semifield};
+use crate::number::{Ball, Dual, Enclosure, Positive, Semifield};
 use crate::shock::Entry;
 
 /// What comes back from the contact surface after the reflected shock has met it.
@@ -53,8 +54,7 @@ pub enum Tailoring {
 #[derive(Clone, Copy, Debug)]
 pub struct Contact<'a> {
     pub(super) behind: BehindShock<'a>,
-    pub(super) sound_speed_3: Ball,
-    pub(super) gamma_3: Gamma<Ball>,
+    pub(super) side_3: ContactSide<'a>,
 }
 
 /// A tailored Mach number.
@@ -72,30 +72,31 @@ pub struct TailoredMach {
 impl<'a> Contact<'a> {
     /// Between the test gas of a shock and the driver gas that drives it.
     pub fn new(behind: &BehindShock<'a>, drive: &Drive) -> Self {
-        Self { behind: *behind, sound_speed_3: drive.sound_speed_3, gamma_3: drive.gamma }
+        Self { behind: *behind, side_3: drive.side_3 }
     }
 
-    /// (γ3 + 1)P + γ3 − 1.
-    fn factor_3(&self) -> Ball {
-        let Gamma { d, q } = self.gamma_3;
-        (self.gamma_3.plus_one() * self.behind.reflected_over_incident_pressure() + d) / q
+    /// Δu/(P − 1) of a shock from p2 to p5 into the driver gas, m/s: a3 √(2/(γ3[(γ3 + 1)P + γ3 − 1])) for constant heat capacity.
+    fn stopping(&self) -> Ball {
+        let excess = self.behind.reflected_excess;
+        self.side_3.speed(Dual::constant(excess), true).value() / excess
     }
 
     /// Left and right side of the condition, kg/m³.
     pub fn sides(&self) -> [Enclosure; 2] {
         let BehindShock { pressure, gas_speed, reflected_excess, .. } = self.behind;
         let test_gas = pressure.doubled() * (reflected_excess / gas_speed).squared();
-        let density_3 = self.gamma_3.value() * pressure / self.sound_speed_3.squared();
-        [test_gas.enclosure(), (density_3 * self.factor_3()).enclosure()]
+        let driver_gas = pressure.doubled() / self.stopping().squared();
+        [test_gas.enclosure(), driver_gas.enclosure()]
     }
 
     /// Right over left side, less 1: dimensionless, zero where tailored, negative where an expansion comes back.
     ///
-    /// > γ3 u2²[(γ3 + 1)P + γ3 − 1]/(2 a3²(P − 1)²) − 1
+    /// > (u2/Δu)² − 1 = γ3 u2²[(γ3 + 1)P + γ3 − 1]/(2 a3²(P − 1)²) − 1,
+    ///
+    /// Δu that of a shock from p2 to p5 into the driver gas, the last form for constant heat capacity.
     pub fn mismatch(&self) -> Ball {
         let BehindShock { gas_speed, reflected_excess, .. } = self.behind;
-        let speeds = (gas_speed / (self.sound_speed_3 * reflected_excess)).squared();
-        self.gamma_3.value() * self.factor_3() * speeds / Ball::whole(2) - Ball::whole(1)
+        (gas_speed / (self.stopping() * reflected_excess)).squared() - Ball::whole(1)
     }
 
     /// What comes back.
@@ -161,9 +162,9 @@ impl Driver {
             return Err(DriverError::NeverTailored { sound_speed_ratio: over.nearest(), limit: limit.nearest() });
         }
         let mach_excess = mach_excess_where(gas, |behind| {
-            let sound_speed_3 = self.sound_speed_3(behind)?;
-            let mismatch = |sound_speed_3| Contact { behind: *behind, sound_speed_3, gamma_3: gamma_4 }.mismatch();
-            Ok(sound_speed_3.map_or(Side::Beyond, |sound_speed_3| Side::Value(mismatch(sound_speed_3))))
+            let side_3 = self.side_3(behind)?;
+            let mismatch = |side_3| Contact { behind: *behind, side_3 }.mismatch();
+            Ok(side_3.map_or(Side::Beyond, |side_3| Side::Value(mismatch(side_3))))
         })?;
         let (below, above) = ((gamma_1 - one) * gamma_4.plus_one() * Ball::whole(3), gamma_4.d * (Ball::whole(3) - gamma_1));
         let is_only = is_constant && (above - below).enclosure().high() <= 0.0;

@@ -2,6 +2,7 @@
 
 use super::area_change::{Expanded, expand, sonic};
 use super::driver_error::{DriverError, DriverInput};
+use super::side::ContactSide;
 use super::test_gas::{BehindShock, TestGas};
 use super::waves::TubeSpeeds;
 use crate::gas::{Gamma, Gas, Rule, molar_gas_constant, sound_speed_squared};
@@ -63,10 +64,8 @@ pub struct Drive {
     pub mach_before_change: Option<Enclosure>,
     /// Whether the driver gas is sonic at the diaphragm, so that a part of the expansion runs downstream.
     pub is_sonic: bool,
-    /// a3, m/s.
-    pub(super) sound_speed_3: Ball,
-    /// γ4.
-    pub(super) gamma: Gamma<Ball>,
+    /// The gas in state 3, for the waves into it.
+    pub(super) side_3: ContactSide<'static>,
 }
 
 /// A driver and a contact surface, at one point of the tolerances.
@@ -248,8 +247,10 @@ impl Driver {
             mach_3: hull(&mach_3),
             mach_before_change: before(&low).zip(before(&high)).map(|(low, high)| low.hull(high)),
             is_sonic: low.is_sonic && high.is_sonic,
-            sound_speed_3: if a3.enclosure().encloses(sound_speed) { a3 } else { Ball::around(sound_speed) },
-            gamma: least.gamma,
+            side_3: ContactSide::Constant {
+                gamma: least.gamma,
+                sound_speed: if a3.enclosure().encloses(sound_speed) { a3 } else { Ball::around(sound_speed) },
+            },
         })
     }
 
@@ -278,11 +279,12 @@ impl Driver {
         Ok(ratio.is_certainly_positive().then(of_expansion))
     }
 
-    /// a3 at the point of a shock, m/s; `None` where no driver pressure is enough.
-    pub(super) fn sound_speed_3(&self, behind: &BehindShock) -> Result<Option<Ball>, DriverError> {
+    /// State 3 at the point of a shock; `None` where no driver pressure is enough.
+    pub(super) fn side_3(&self, behind: &BehindShock) -> Result<Option<ContactSide<'static>>, DriverError> {
         let point = self.corner(behind, false);
         let ratio = point.expanded()?.sound_speed_ratio;
-        Ok(ratio.is_certainly_positive().then(|| ratio * point.sound_speed()))
+        let side = || ContactSide::Constant { gamma: point.gamma, sound_speed: ratio * point.sound_speed() };
+        Ok(ratio.is_certainly_positive().then(side))
     }
 
     /// The speeds of the wave diagram of this driver and this shock, for a driver of the area of the driven tube.

@@ -1,12 +1,14 @@
-//! The reflected shock meets the contact surface: the waves that follow, constant heat capacities on both sides.
+//! The reflected shock meets the contact surface: the waves that follow.
 
 use super::contact::{Contact, Tailoring};
 use super::driver_error::{DriverError, Unproven};
 use super::proven_root::{newton, search};
+use super::side::{ContactSide, expansion_speed, shock_speed};
+use super::test_gas::BehindShock;
+use super::thermal_side::polished;
 use super::waves::ContactReturn;
 use crate::gas::Gamma;
-use crate::number::{Ball, Dual, Elementary, Enclosure, Positive, Semifield};
-use crate::shock::Jump;
+use crate::number::{Ball, Dual, Enclosure, Semifield};
 
 /// Doublings of p/p5 in search of the pressure at the contact surface, at most.
 const DOUBLINGS: u32 = 100;
@@ -36,68 +38,57 @@ pub struct Interaction {
     pub end_wall_pressure: Enclosure,
 }
 
-/// The speeds that both gases take up with the pressure p5(1 + y), in one kind of number.
+/// The contact surface between both gases.
 ///
-/// > `f_3` = a3 (P(1 + y) − 1) √(2/(γ3[(γ3 + 1)P(1 + y) + γ3 − 1])): a shock stops the driver gas of speed u2;
-/// > `f_5` = a5 y √(2/(γ[2γ + (γ + 1)y])) for a shock into state 5, (2a5/(γ − 1))((1 + y)^((γ−1)/(2γ)) − 1) for an expansion.
-///
-/// The root of `f_3` + `f_5` − u2, which increases with y, is the only one; for y = p2/p5 − 1 it is negative.
-#[derive(Clone, Copy)]
-struct Meeting<S> {
-    gamma: Gamma<S>,
-    gamma_3: Gamma<S>,
-    sound_speed_5: S,
-    sound_speed_3: S,
-    gas_speed: S,
+/// Both take up the same speed with the pressure p5(1 + y) if the change of speed across the shock that stops the driver gas, `f_3`, and that across the
+/// wave into state 5, `f_5`, meet: `f_3` + `f_5` = u2. Both increase with y, so the root is the only one; for y = p2/p5 − 1 the sum falls short.
+struct Meeting<'a> {
+    side_5: ContactSide<'a>,
+    side_3: ContactSide<'a>,
+    gas_speed: Ball,
     /// P − 1.
-    reflected_excess: S,
+    reflected_excess: Ball,
 }
 
-impl<S: Semifield> Meeting<S> {
-    fn map<T: Semifield>(&self, convert: impl Fn(S) -> T + Copy) -> Meeting<T> {
-        let gamma = |Gamma { d, q }: Gamma<S>| Gamma { d: convert(d), q: convert(q) };
-        Meeting {
-            gamma: gamma(self.gamma),
-            gamma_3: gamma(self.gamma_3),
-            sound_speed_5: convert(self.sound_speed_5),
-            sound_speed_3: convert(self.sound_speed_3),
-            gas_speed: convert(self.gas_speed),
-            reflected_excess: convert(self.reflected_excess),
-        }
-    }
+/// p/p2 − 1 at the contact surface.
+fn transmitted_excess<S: Semifield>(reflected_excess: S, y: S) -> S {
+    reflected_excess + (S::whole(1) + reflected_excess) * y
 }
 
-impl<S: Elementary> Meeting<S> {
-    /// p/p2 − 1 at the contact surface.
-    fn transmitted_excess(&self, y: S) -> S {
-        self.reflected_excess + (S::whole(1) + self.reflected_excess) * y
+impl Meeting<'_> {
+    /// (`f_3` + `f_5` − u2)/u2.
+    fn residual(&self, y: Dual<Ball, 1>, is_shock: bool) -> Dual<Ball, 1> {
+        let [gas_speed, reflected_excess] = [self.gas_speed, self.reflected_excess].map(Dual::constant);
+        let stopped = self.side_3.speed(transmitted_excess(reflected_excess, y), true);
+        (stopped - gas_speed + self.side_5.speed(y, is_shock)) / gas_speed
     }
 
-    /// √(2/(γ[2γ + (γ + 1)x])) with x the excess of a pressure ratio.
-    fn stopping(gamma: Gamma<S>, excess: S) -> S {
-        let sum = gamma.ratio().doubled() + gamma.plus_one() * excess;
-        (gamma.q.squared().doubled() / (gamma.ratio() * sum)).sqrt()
+    /// The same without proof, with the heat capacities at T3 and T5.
+    fn plain(&self, y: f64, is_shock: bool) -> f64 {
+        let gamma = |side: &ContactSide<'_>| Gamma { d: side.gamma().d.nearest(), q: side.gamma().q.nearest() };
+        let excess = transmitted_excess(self.reflected_excess.nearest(), y);
+        let stopped = shock_speed(gamma(&self.side_3), self.side_3.sound_speed().nearest(), excess);
+        let wave = if is_shock { shock_speed } else { expansion_speed };
+        let gas_speed = self.gas_speed.nearest();
+        (stopped - gas_speed + wave(gamma(&self.side_5), self.side_5.sound_speed().nearest(), y)) / gas_speed
     }
 
-    /// β = a/a5 behind an expansion, less 1.
-    fn expanded_excess(&self, y: S) -> S {
-        let exponent = y * y.log1p_ratio() * self.gamma.d / self.gamma.ratio().doubled();
-        exponent * exponent.expm1_ratio()
-    }
-
-    /// `f_5`, the speed of the contact surface.
-    fn contact_speed(&self, y: S, is_shock: bool) -> S {
-        if is_shock {
-            self.sound_speed_5 * y * Self::stopping(self.gamma, y)
-        } else {
-            self.sound_speed_5 * self.expanded_excess(y) * self.gamma.q.doubled() / self.gamma.d
+    /// y = p/p5 − 1 at the contact surface.
+    fn root(&self, is_shock: bool) -> Option<Ball> {
+        // p2 from below; from above by doubling.
+        let reflected_excess = self.reflected_excess.nearest();
+        let low = -reflected_excess / (1.0 + reflected_excess);
+        let mut high = 1.0;
+        for _ in 0..DOUBLINGS {
+            if self.plain(high, is_shock) > 0.0 {
+                break;
+            }
+            high *= 2.0;
         }
-    }
-
-    fn evaluate(&self, y: S, is_shock: bool) -> S {
-        let x = self.transmitted_excess(y);
-        let stopped = self.sound_speed_3 * x * Self::stopping(self.gamma_3, x);
-        (stopped - self.gas_speed + self.contact_speed(y, is_shock)) / self.gas_speed
+        let near = search(|y| self.plain(y, is_shock), low, high);
+        let residual = |y| self.residual(y, is_shock);
+        let both_constant = [self.side_3, self.side_5].iter().all(|side| matches!(side, ContactSide::Constant { .. }));
+        newton(residual, if both_constant { near } else { polished(residual, near) })
     }
 }
 
@@ -114,28 +105,11 @@ struct Waves {
     end_wall_pressure: Ball,
 }
 
-/// M² − 1 of a shock with this excess of the pressure ratio.
-fn mach_squared_excess(gamma: Gamma<Ball>, excess: Ball) -> Ball {
-    excess * gamma.plus_one() / gamma.ratio().doubled()
-}
-
-fn mach_of(gamma: Gamma<Ball>, excess: Ball) -> Ball {
-    (Ball::whole(1) + mach_squared_excess(gamma, excess)).sqrt()
-}
-
 impl Contact<'_> {
     /// The kind of wave that comes back, and the waves with either kind where it cannot be told.
     fn both(&self) -> Result<(Tailoring, [Waves; 2]), DriverError> {
-        let behind = &self.behind;
-        let gamma = behind.constant_gamma().ok_or(DriverError::ConstantOnly)?;
-        let meeting = Meeting {
-            gamma,
-            gamma_3: self.gamma_3,
-            sound_speed_5: behind.sound_speed_5,
-            sound_speed_3: self.sound_speed_3,
-            gas_speed: behind.gas_speed,
-            reflected_excess: behind.reflected_excess,
-        };
+        let BehindShock { gas_speed, reflected_excess, .. } = self.behind;
+        let meeting = Meeting { side_5: self.behind.side_5(), side_3: self.side_3, gas_speed, reflected_excess };
         let returned = self.tailoring();
         let waves = |is_shock| self.after(&meeting, is_shock);
         let [first, second] = match returned {
@@ -149,11 +123,12 @@ impl Contact<'_> {
 
     /// The waves that follow when the reflected shock meets the contact surface: a shock into the driver gas, and what comes back.
     ///
-    /// Pressure and speed are the same on both sides of the contact surface (a Riemann problem between state 3 and state 5). Model: constant heat
-    /// capacities, a sharp contact surface.
+    /// Pressure and speed are the same on both sides of the contact surface (a Riemann problem between state 3 and state 5). Model: a sharp contact
+    /// surface; in a thermally perfect gas every wave has the heat capacity of state 5, in equilibrium where that is.
     ///
     /// # Errors
-    /// [`DriverError::ConstantOnly`] for a thermally perfect test gas; [`DriverError::NotProven`] where tolerances are too wide.
+    /// [`DriverError::NotProven`] where tolerances are too wide, where a wave takes a thermally perfect gas outside its data, and where its temperature
+    /// comes so near a joint of the data that the jump of the enthalpy there matters.
     pub fn interaction(&self) -> Result<Interaction, DriverError> {
         let (returned, [first, second]) = self.both()?;
         let hull = |field: fn(&Waves) -> Ball| field(&first).enclosure().hull(field(&second).enclosure());
@@ -190,55 +165,34 @@ impl Contact<'_> {
     }
 
     /// With a returned wave of this kind.
-    fn after(&self, meeting: &Meeting<Ball>, is_shock: bool) -> Result<Waves, DriverError> {
-        let one = Ball::whole(1);
-        let y = root(meeting, is_shock)?;
-        let behind = &self.behind;
-        let Meeting { gamma, gamma_3, sound_speed_5, sound_speed_3, gas_speed, .. } = *meeting;
-        let pressure = behind.pressure_5 * (one + y);
-        let contact_speed = meeting.contact_speed(y, is_shock);
-        let transmitted_mach = mach_of(gamma_3, meeting.transmitted_excess(y));
-        let (returned_mach, end_wall_pressure) = if is_shock {
-            let sound_speed = sound_speed_5 * Jump::new(gamma, mach_squared_excess(gamma, y)).temperature_ratio().sqrt();
-            // The gas that follows the shock is stopped at the wall: as for a moving wall, M = s + √(1 + s²).
-            let s = gamma.plus_one() * contact_speed / (Ball::whole(4) * gamma.q * sound_speed);
-            let mach = s + (one + s.squared()).sqrt();
-            (mach_of(gamma, y), pressure * Jump::new(gamma, (s * mach).doubled()).pressure_ratio())
+    fn after(&self, meeting: &Meeting<'_>, is_shock: bool) -> Result<Waves, DriverError> {
+        self.waves(meeting, is_shock).ok_or(DriverError::NotProven(Unproven::ContactPressure))
+    }
+
+    fn waves(&self, meeting: &Meeting<'_>, is_shock: bool) -> Option<Waves> {
+        let Meeting { side_5, side_3, gas_speed, reflected_excess } = meeting;
+        let y = meeting.root(is_shock)?;
+        let pressure = self.behind.pressure_5 * (Ball::whole(1) + y);
+        let contact_speed = side_5.speed(Dual::constant(y), is_shock).value();
+        let (transmitted, behind_transmitted) = side_3.behind_shock(transmitted_excess(*reflected_excess, y))?;
+        let (returned_speed, end_wall_pressure) = if is_shock {
+            // The gas that follows the shock is stopped at the wall.
+            let (speed, behind) = side_5.behind_shock(y)?;
+            (speed, pressure * behind.stopped(contact_speed)?)
         } else {
-            // The expansion loses as much sound speed again at the wall: a = a5(1 + 2(β − 1)).
-            let exponent = gamma.ratio().doubled() / gamma.d;
-            let ratio = one + meeting.expanded_excess(y).doubled();
-            (one, behind.pressure_5 * ratio.pow(exponent))
+            (side_5.sound_speed(), self.behind.pressure_5 * side_5.expanded_twice(y)?)
         };
-        let behind_transmitted = Jump::new(gamma_3, mach_squared_excess(gamma_3, meeting.transmitted_excess(y)));
-        Ok(Waves {
+        Some(Waves {
             pressure,
             contact_speed,
-            transmitted_mach,
-            transmitted_speed: transmitted_mach * sound_speed_3 - gas_speed,
-            transmitted_sound_speed: sound_speed_3 * behind_transmitted.temperature_ratio().sqrt(),
-            returned_mach,
-            returned_speed: returned_mach * sound_speed_5,
+            transmitted_mach: transmitted / side_3.sound_speed(),
+            transmitted_speed: transmitted - *gas_speed,
+            transmitted_sound_speed: behind_transmitted.sound_speed(),
+            returned_mach: if is_shock { returned_speed / side_5.sound_speed() } else { Ball::whole(1) },
+            returned_speed,
             end_wall_pressure,
         })
     }
-}
-
-/// y = p/p5 − 1 at the contact surface.
-fn root(meeting: &Meeting<Ball>, is_shock: bool) -> Result<Ball, DriverError> {
-    let plain = meeting.map(Ball::nearest);
-    let residual = |y: f64| plain.evaluate(y, is_shock);
-    // p2 from below; from above by doubling.
-    let low = -plain.reflected_excess / (1.0 + plain.reflected_excess);
-    let mut high = 1.0;
-    for _ in 0..DOUBLINGS {
-        if residual(high) > 0.0 {
-            break;
-        }
-        high *= 2.0;
-    }
-    let constant = meeting.map(Dual::constant);
-    newton(|y| constant.evaluate(y, is_shock), search(residual, low, high)).ok_or(DriverError::NotProven(Unproven::ContactPressure))
 }
 
 #[cfg(test)]

@@ -15,8 +15,10 @@ mod load;
 mod proven_root;
 #[cfg(test)]
 mod pure_gases;
+mod side;
 mod test_gas;
 mod test_time;
+mod thermal_side;
 mod viscosity;
 mod wave_diagram;
 mod waves;

@@ -1,6 +1,8 @@
 //! The test gas, as a driver sees it: what the shock into it leaves behind.
 
 use super::driver_error::DriverError;
+use super::side::ContactSide;
+use super::thermal_side::ThermalSide;
 use crate::gas::{Fill, Gamma};
 use crate::number::{Ball, Enclosure, Known, Semifield};
 use crate::shock::{Entry, Flow, Incident, Jump, Output, ThermalFill, ThermalShock};
@@ -94,6 +96,7 @@ pub struct BehindShock<'a> {
     pub(super) reflected_speed: Ball,
     pub(super) pressure_5: Ball,
     pub(super) sound_speed_5: Ball,
+    pub(super) temperature_5: Ball,
     /// p5/p2 − 1.
     pub(super) reflected_excess: Ball,
 }
@@ -135,6 +138,7 @@ impl<'a> BehindShock<'a> {
             reflected_speed: ball(Output::ReflectedSpeed),
             pressure_5: ball(Output::Pressure5),
             sound_speed_5: ball(Output::SoundSpeed5),
+            temperature_5: ball(Output::Temperature5),
             reflected_excess: (step - rise) / pressure,
         }
     }
@@ -182,11 +186,15 @@ impl<'a> BehindShock<'a> {
         }
     }
 
-    /// γ − 1, where it is constant.
-    pub(super) fn constant_gamma(&self) -> Option<Gamma<Ball>> {
+    /// The gas in state 5, for the waves into it.
+    pub(super) fn side_5(&self) -> ContactSide<'a> {
+        let constant = |excess| ContactSide::Constant { gamma: Gamma::from_excess(excess), sound_speed: self.sound_speed_5 };
         match self.gas {
-            TestGas::Constant(fill) => Some(Gamma::from_excess(fill.gas().heat_capacity_ratio().excess().ball())),
-            TestGas::Thermal(_) => None,
+            TestGas::Constant(fill) => constant(fill.gas().heat_capacity_ratio().excess().ball()),
+            TestGas::Thermal(fill) => match fill.constant_heat_capacity_5() {
+                Some(c) => constant(Ball::whole(1) / (c - Ball::whole(1))),
+                None => ContactSide::Thermal(ThermalSide::new(fill.gas(), self.temperature_5)),
+            },
         }
     }
 }

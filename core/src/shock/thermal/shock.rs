@@ -77,6 +77,15 @@ impl<'a> ThermalFill<'a> {
         self.temperature
     }
 
+    /// `c_p`/R across the reflected shock, where the model holds it constant.
+    pub(crate) fn constant_heat_capacity_5(&self) -> Option<Ball> {
+        let reflected = self.setting(Ball::whole(0)).reflected;
+        match self.model {
+            HeatCapacityModel::Constant | HeatCapacityModel::Frozen => Some(reflected.value(0, self.balls.temperature)),
+            HeatCapacityModel::Equilibrium | HeatCapacityModel::FrozenThenEquilibrium => None,
+        }
+    }
+
     /// The same gas at an exact pressure and temperature.
     pub(super) fn at(&self, pressure: Known, temperature: Known) -> Result<Self, InputError> {
         Self::new(self.gas, self.model, pressure, temperature)
