@@ -46,7 +46,7 @@ struct Loads<'a> {
     /// The end wall after a shock came back from the contact surface.
     over_tailored: Option<f64>,
     /// The driver, with p4 at the upper end of its band.
-    driver: Option<(&'a Driver, f64)>,
+    driver: Option<(&'a Driver<'a>, f64)>,
 }
 
 impl Plan {
@@ -161,7 +161,8 @@ impl Plan {
         }
         if let (Some((driver, p4)), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
             let area = core::f64::consts::PI / 4.0 * bore.value().to_f64() * bore.value().to_f64();
-            let energy = stored_energy(driver.gas().heat_capacity_ratio(), p4, ambient, area * length.value().to_f64());
+            let ratio = HeatCapacityRatio::new(driver.heat_capacity_ratio());
+            let energy = ratio.and_then(|ratio| stored_energy(ratio, p4, ambient, area * length.value().to_f64()));
             part.stored_energy = energy.ok().map(|energy| energy.brode.high());
         }
         for rating in &tube.ratings {

@@ -71,7 +71,7 @@ pub struct TailoredMach {
 
 impl<'a> Contact<'a> {
     /// Between the test gas of a shock and the driver gas that drives it.
-    pub fn new(behind: &BehindShock<'a>, drive: &Drive) -> Self {
+    pub fn new(behind: &BehindShock<'a>, drive: &Drive<'a>) -> Self {
         Self { behind: *behind, side_3: drive.side_3 }
     }
 
@@ -112,7 +112,7 @@ impl<'a> Contact<'a> {
     }
 }
 
-impl Driver {
+impl Driver<'_> {
     /// The Mach number that is tailored with this driver in this test gas: see [`Contact`]. It does not depend on the pressures.
     ///
     /// Domain: a4/a1 > γ4/γ1, the limit of the condition for weak shocks. The enclosure lies between doubles at which the sign of the mismatch is proven.

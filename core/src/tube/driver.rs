@@ -1,11 +1,11 @@
 //! The driver: the pressure that it needs, and the driver gas behind the contact surface.
 
-use super::area_change::{Expanded, expand, sonic};
 use super::driver_error::{DriverError, DriverInput};
+use super::driver_point::{Expansion, Point, PointGas};
 use super::side::ContactSide;
 use super::test_gas::{BehindShock, TestGas};
 use super::waves::TubeSpeeds;
-use crate::gas::{Gamma, Gas, Rule, molar_gas_constant, sound_speed_squared};
+use crate::gas::{Gamma, Gas, Parameter, Rule, ThermallyPerfectGas, sound_speed_squared};
 use crate::number::{Ball, Elementary, Enclosure, Known, Positive, Rational, Semifield};
 use crate::shock::{Entry, Output, State, ThermalShock};
 
@@ -14,7 +14,7 @@ const LARGEST_AREA_RATIO: f64 = 1e6;
 /// ln 2²⁰⁰, the logarithm of the greatest pressure: an entry of the relations.
 const LARGEST_LOGARITHM: f64 = 200.0 * core::f64::consts::LN_2;
 
-/// A driver: a gas of constant heat capacity at rest at T4 (K), in a tube of the area of the driven tube or a larger one.
+/// A driver: a gas at rest at T4 (K), in a tube of the area of the driven tube or, for a gas of constant heat capacity, a larger one.
 ///
 /// Model: a diaphragm that vanishes at once, an ideal gas, isentropic expansion, one dimension, the pressure and speed of the test gas at the contact
 /// surface. A real tube reaches less: see [`Efficiency`](super::Efficiency).
@@ -39,11 +39,20 @@ const LARGEST_LOGARITHM: f64 = 200.0 * core::f64::consts::LN_2;
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 #[derive(Clone, Copy, Debug)]
-pub struct Driver {
-    gas: Gas,
+pub struct Driver<'a> {
+    gas: DriverGas<'a>,
     temperature: Known,
     /// `None` for equal areas.
     area_ratio: Option<Known>,
+}
+
+/// The gas of a driver.
+#[derive(Clone, Copy, Debug)]
+pub enum DriverGas<'a> {
+    /// Of constant heat capacity.
+    Constant(Gas),
+    /// Thermally perfect.
+    Thermal(&'a ThermallyPerfectGas<'a>),
 }
 
 /// What a driver does for one shock.
@@ -51,7 +60,7 @@ pub struct Driver {
 /// Enclosures of at most 2 ulp for exact inputs. For tolerances they are the hull over the box of p2, u2, T4, W4 and A4/A1, each taken on its own (every
 /// output is monotone in each of them); a tolerance of γ4 adds its enclosure, which is wider than the range.
 #[derive(Clone, Copy, Debug)]
-pub struct Drive {
+pub struct Drive<'a> {
     /// p4, Pa, absolute.
     pub pressure: Enclosure,
     /// p4/p1.
@@ -65,51 +74,7 @@ pub struct Drive {
     /// Whether the driver gas is sonic at the diaphragm, so that a part of the expansion runs downstream.
     pub is_sonic: bool,
     /// The gas in state 3, for the waves into it.
-    pub(super) side_3: ContactSide<'static>,
-}
-
-/// A driver and a contact surface, at one point of the tolerances.
-#[derive(Clone, Copy)]
-pub(super) struct Point {
-    pub gamma: Gamma<Ball>,
-    pub temperature: Ball,
-    pub molar_mass: Ball,
-    pub area_ratio: Option<Ball>,
-    /// p2, Pa.
-    pub pressure: Ball,
-    /// u2, m/s.
-    pub gas_speed: Ball,
-}
-
-impl Point {
-    /// h = (γ4 − 1)/2.
-    fn half_excess(&self) -> Ball {
-        self.gamma.d / self.gamma.q.doubled()
-    }
-
-    /// a4, m/s.
-    pub fn sound_speed(&self) -> Ball {
-        sound_speed_squared(self.gamma, self.temperature, self.molar_mass).sqrt()
-    }
-
-    fn expanded(&self) -> Result<Expanded, DriverError> {
-        Ok(expand(self.half_excess(), self.gas_speed / self.sound_speed(), self.area_ratio)?)
-    }
-
-    /// The gas speed that the driver gas reaches when it expands to vacuum, g·a4/h, m/s.
-    fn greatest_gas_speed(&self) -> Option<Ball> {
-        let h = self.half_excess();
-        let g = match self.area_ratio {
-            Some(area_ratio) => sonic(h, area_ratio)?.0,
-            None => Ball::whole(1),
-        };
-        Some(g * self.sound_speed() / h)
-    }
-
-    /// ln(p4/p2) = −(2γ4/(γ4 − 1)) ln(a3/a4).
-    fn logarithm_of_expansion(&self, sound_speed_ratio: Ball) -> Ball {
-        -(sound_speed_ratio.ln() * self.gamma.ratio().doubled() / self.gamma.d)
-    }
+    pub(super) side_3: ContactSide<'a>,
 }
 
 /// One end of a ball that stands for a tolerance; a ball of a point is taken as it is.
@@ -121,7 +86,7 @@ fn end(ball: Ball, upper: bool) -> Ball {
     Ball::from(if upper { bounds.high() } else { bounds.low() })
 }
 
-impl Driver {
+impl<'a> Driver<'a> {
     /// A driver of the area of the driven tube.
     ///
     /// # Errors
@@ -129,13 +94,53 @@ impl Driver {
     pub fn new(gas: Gas, temperature: impl Into<Known>) -> Result<Self, DriverError> {
         let temperature = temperature.into();
         check(DriverInput::Temperature, temperature)?;
-        Ok(Self { gas, temperature, area_ratio: None })
+        Ok(Self { gas: DriverGas::Constant(gas), temperature, area_ratio: None })
+    }
+
+    /// A driver of the area of the driven tube whose gas has a heat capacity that depends on temperature. The expansion is isentropic, by proven
+    /// integrals over temperature:
+    ///
+    /// > u2 = ∫ from T3 to T4 of dh/a, ln(p4/p2) = ∫ from T3 to T4 of `c_p`/R dT/T.
+    ///
+    /// T3 must not fall below the data (200 K mostly), which a cold driver gas does soon: its heat capacity hardly changes there, and [`Driver::new`] with
+    /// that at T4 is the way.
+    ///
+    /// # Errors
+    /// [`DriverError::Driver`] for a temperature that is a tolerance, [`DriverError::Gas`] for one outside the data of the gas.
+    ///
+    /// ```
+    /// use endwall::gas::species::table;
+    /// use endwall::gas::{Fill, Gas, HeatCapacityRatio, Portion, ThermallyPerfectGas};
+    /// use endwall::shock::{Entry, Incident};
+    /// use endwall::tube::{BehindShock, Driver};
+    /// let portions = [Portion { species: &table::N2, fraction: "1".parse()? }];
+    /// let nitrogen = ThermallyPerfectGas::new(&portions)?;
+    /// let fill = Fill::new(Gas::new(HeatCapacityRatio::ratio(7, 5)?, 0.0280134)?, 100e3, 295.0)?;
+    /// let shock = Incident::new(&fill, Entry::Mach, 2.0)?;
+    /// let behind = BehindShock::from(&shock);
+    /// // Nitrogen at 1200 K has γ = 1.33 in the driver, and more as it expands.
+    /// let drive = Driver::thermally_perfect(&nitrogen, 1200.0)?.for_shock(&behind)?;
+    /// assert!(drive.pressure.width_in_ulp() <= 2);
+    /// let hot = Gas::new(HeatCapacityRatio::new("1.334".parse::<endwall::number::Rational>()?)?, 0.0280134)?;
+    /// let constant = Driver::new(hot, 1200.0)?.for_shock(&behind)?;
+    /// assert!((drive.pressure.middle() / constant.pressure.middle() - 1.0).abs() < 0.01);
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    pub fn thermally_perfect(gas: &'a ThermallyPerfectGas<'a>, temperature: impl Into<Known>) -> Result<Self, DriverError> {
+        let temperature = temperature.into();
+        check(DriverInput::Temperature, temperature)?;
+        if temperature.exact().is_none() {
+            return Err(DriverError::Driver { input: DriverInput::Temperature, value: temperature.nominal(), rule: Rule::Exact });
+        }
+        gas.check_temperature(Parameter::Temperature, temperature.nominal())?;
+        Ok(Self { gas: DriverGas::Thermal(gas), temperature, area_ratio: None })
     }
 
     /// The same driver in a tube whose area is A4/A1 times that of the driven tube, 1 to 10⁶; for round tubes the square of the ratio of diameters.
     ///
     /// # Errors
-    /// [`DriverError::Driver`] for a ratio outside that: a driver smaller than the driven tube is another flow.
+    /// [`DriverError::Driver`] for a ratio outside that: a driver smaller than the driven tube is another flow; [`DriverError::ConstantOnly`] for a
+    /// thermally perfect gas.
     ///
     /// ```
     /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
@@ -160,12 +165,23 @@ impl Driver {
             return Err(DriverError::Driver { input: DriverInput::AreaRatio, value: area_ratio.nominal(), rule });
         }
         let is_one = area_ratio.exact() == Some(Rational::ONE);
+        if matches!(self.gas, DriverGas::Thermal(_)) && !is_one {
+            return Err(DriverError::ConstantOnly);
+        }
         Ok(Self { area_ratio: if is_one { None } else { Some(area_ratio) }, ..self })
     }
 
     /// The gas.
-    pub fn gas(&self) -> Gas {
+    pub fn gas(&self) -> DriverGas<'a> {
         self.gas
+    }
+
+    /// γ4, at T4.
+    pub fn heat_capacity_ratio(&self) -> Enclosure {
+        match self.gas {
+            DriverGas::Constant(gas) => gas.heat_capacity_ratio().enclosure(),
+            DriverGas::Thermal(_) => self.gamma().value().enclosure(),
+        }
     }
 
     /// T4, K.
@@ -178,26 +194,50 @@ impl Driver {
         self.area_ratio.unwrap_or(Known::from(Rational::ONE))
     }
 
-    /// γ4.
+    /// γ4, at T4.
     pub(super) fn gamma(&self) -> Gamma<Ball> {
-        Gamma::from_excess(self.gas.heat_capacity_ratio().excess().ball())
+        self.at_rest().gamma()
     }
 
     /// a4, m/s.
     pub(super) fn sound_speed(&self) -> Ball {
-        sound_speed_squared(self.gamma(), self.temperature.ball(), self.gas.molar_mass().ball()).sqrt()
+        self.at_rest().sound_speed()
+    }
+
+    /// The driver alone, with its tolerances as balls.
+    fn at_rest(&self) -> Point<'a> {
+        let gas = match self.gas {
+            DriverGas::Constant(gas) => {
+                let gamma = Gamma::from_excess(gas.heat_capacity_ratio().excess().ball());
+                PointGas::Constant { gamma, molar_mass: gas.molar_mass().ball() }
+            }
+            DriverGas::Thermal(gas) => PointGas::Thermal(gas),
+        };
+        Point {
+            gas,
+            temperature: self.temperature.ball(),
+            area_ratio: self.area_ratio.map(Known::ball),
+            pressure: Ball::whole(1),
+            gas_speed: Ball::whole(0),
+        }
     }
 
     /// The corner of the tolerances at which p4 is least or greatest: p4 and ρ3 rise with p2, u2 and W4 and fall with T4 and A4/A1, T3 and a3 the other way
     /// round (T3 is no function of p2).
     ///
     /// With σ(w, α) of `area_change` and w = u2/a4: σ falls with w and rises with α (the implicit function rule on its relations); p4 = p2 σ^(−2γ/(γ−1)),
-    /// a3 = a4 σ, T3 = T4 σ², ρ3 = p2 W/(R T3).
-    pub(super) fn corner(&self, behind: &BehindShock, greatest: bool) -> Point {
+    /// a3 = a4 σ, T3 = T4 σ², ρ3 = p2 W/(R T3). A thermally perfect driver is exact but for p2 and u2.
+    fn corner(&self, behind: &BehindShock, greatest: bool) -> Point<'a> {
+        let point = self.at_rest();
+        let gas = match (self.gas, point.gas) {
+            (DriverGas::Constant(gas), PointGas::Constant { gamma, .. }) => {
+                PointGas::Constant { gamma, molar_mass: gas.molar_mass().end(greatest).ball() }
+            }
+            (_, gas) => gas,
+        };
         Point {
-            gamma: self.gamma(),
+            gas,
             temperature: self.temperature.end(!greatest).ball(),
-            molar_mass: self.gas.molar_mass().end(greatest).ball(),
             area_ratio: self.area_ratio.map(|ratio| ratio.end(!greatest).ball()),
             pressure: end(behind.pressure, greatest),
             gas_speed: end(behind.gas_speed, greatest),
@@ -214,83 +254,89 @@ impl Driver {
     /// Domain: u2 below 2a4/(γ4 − 1) (equal areas), p4 below 2²⁰⁰ Pa.
     ///
     /// # Errors
-    /// [`DriverError::TooFast`] and [`DriverError::PressureBeyondRange`] name the greatest Mach number of this driver in this test gas;
+    /// [`DriverError::TooFast`], [`DriverError::ExpandsBeyondData`] and [`DriverError::PressureBeyondRange`] name the greatest Mach number of this driver in
+    /// this test gas;
     /// [`DriverError::NotProven`] for a flow through the change of area that is sonic to all digits, or nearly no change of area.
-    pub fn for_shock(&self, behind: &BehindShock) -> Result<Drive, DriverError> {
+    pub fn for_shock(&self, behind: &BehindShock) -> Result<Drive<'a>, DriverError> {
         let [least, greatest] = [false, true].map(|upper| self.corner(behind, upper));
-        let [(low, low_logarithm), (high, high_logarithm)] = [self.expansion(&least, behind)?, self.expansion(&greatest, behind)?];
+        let [low, high] = [self.expansion(&least, behind)?, self.expansion(&greatest, behind)?];
         let fill = behind.gas.pressure();
-        let pressure_of = |point: &Point, logarithm: Ball| point.pressure * logarithm.exp();
-        let (low_pressure, high_pressure) = (pressure_of(&least, low_logarithm), pressure_of(&greatest, high_logarithm));
+        let [low_pressure, high_pressure] = [(&least, &low), (&greatest, &high)].map(|(point, own)| point.pressure * own.logarithm.exp());
         // p2/p1 does not depend on p1.
         let ratio = (low_pressure / fill.end(true).ball()).enclosure().hull((high_pressure / fill.end(false).ball()).enclosure());
-        let sound_speed_3 = |point: &Point, expanded: &Expanded| point.sound_speed() * expanded.sound_speed_ratio;
-        let temperature_3 = |point: &Point, expanded: &Expanded| point.temperature * expanded.sound_speed_ratio.squared();
-        let density_3 = |point: &Point, expanded: &Expanded| {
-            point.pressure * point.molar_mass / (molar_gas_constant::<Ball>() * temperature_3(point, expanded))
+        let hull = |f: &dyn Fn(&Point<'a>, &Expansion<'a>) -> Ball| f(&least, &low).enclosure().hull(f(&greatest, &high).enclosure());
+        let sound_speed = hull(&|_, own| own.sound_speed());
+        let temperature = hull(&|_, own| own.temperature);
+        // At a point the ball has more digits than the enclosure.
+        let of = |ball: Ball, bounds: Enclosure| if ball.enclosure().encloses(bounds) { ball } else { Ball::around(bounds) };
+        let side_3 = match low.side {
+            ContactSide::Constant { gamma, sound_speed: own } => ContactSide::Constant { gamma, sound_speed: of(own, sound_speed) },
+            ContactSide::Thermal(side) => ContactSide::Thermal(side.with_temperature(of(side.temperature(), temperature))),
         };
-        let mach_3 = |point: &Point, expanded: &Expanded| point.gas_speed / sound_speed_3(point, expanded);
-        let hull = |f: &dyn Fn(&Point, &Expanded) -> Ball| f(&least, &low).enclosure().hull(f(&greatest, &high).enclosure());
-        let sound_speed = hull(&sound_speed_3);
-        let before = |expanded: &Expanded| expanded.mach_before.map(Ball::enclosure);
-        let a3 = sound_speed_3(&least, &low);
         Ok(Drive {
             pressure: low_pressure.enclosure().hull(high_pressure.enclosure()),
             pressure_ratio: ratio,
             state_3: State {
                 pressure: behind.pressure.enclosure(),
-                temperature: hull(&temperature_3),
-                density: hull(&density_3),
+                temperature,
+                density: hull(&|point, own| own.density(point)),
                 sound_speed,
                 gas_speed: behind.gas_speed.enclosure(),
             },
-            mach_3: hull(&mach_3),
-            mach_before_change: before(&low).zip(before(&high)).map(|(low, high)| low.hull(high)),
+            mach_3: hull(&|point, own| point.gas_speed / own.sound_speed()),
+            mach_before_change: low.mach_before.zip(high.mach_before).map(|(low, high)| low.enclosure().hull(high.enclosure())),
             is_sonic: low.is_sonic && high.is_sonic,
-            side_3: ContactSide::Constant {
-                gamma: least.gamma,
-                sound_speed: if a3.enclosure().encloses(sound_speed) { a3 } else { Ball::around(sound_speed) },
-            },
+            side_3,
         })
     }
 
-    /// The expansion and ln(p4/p2) at one point of the tolerances.
-    fn expansion(&self, point: &Point, behind: &BehindShock) -> Result<(Expanded, Ball), DriverError> {
-        let expanded = point.expanded()?;
-        if !expanded.sound_speed_ratio.is_certainly_positive() {
-            let limit = point.greatest_gas_speed().map_or(f64::NAN, Ball::nearest);
-            let greatest_mach = self.greatest_mach(behind.gas);
-            return Err(DriverError::TooFast { gas_speed: point.gas_speed.nearest(), limit, greatest_mach });
-        }
-        let logarithm = point.logarithm_of_expansion(expanded.sound_speed_ratio);
-        let of_pressure = (logarithm + point.pressure.ln()).enclosure();
+    /// The expansion at one point of the tolerances.
+    fn expansion(&self, point: &Point<'a>, behind: &BehindShock) -> Result<Expansion<'a>, DriverError> {
+        let expansion = point.expand()?.ok_or_else(|| self.too_fast(point, behind.gas))?;
+        let of_pressure = (expansion.logarithm + point.pressure.ln()).enclosure();
         if !(of_pressure.is_proven() && of_pressure.high() <= LARGEST_LOGARITHM) {
             let decimal_logarithm = of_pressure.middle() / core::f64::consts::LN_10;
             return Err(DriverError::PressureBeyondRange { decimal_logarithm, greatest_mach: self.greatest_mach(behind.gas) });
         }
-        Ok((expanded, logarithm))
+        Ok(expansion)
+    }
+
+    /// What the refusal of a shock says that is too fast for this driver.
+    fn too_fast(&self, point: &Point<'a>, gas: TestGas) -> DriverError {
+        let gas_speed = point.gas_speed.nearest();
+        let limit = point.greatest_gas_speed().map_or(f64::NAN, Ball::nearest);
+        let greatest_mach = self.greatest_mach(gas);
+        match self.gas {
+            DriverGas::Constant(_) => DriverError::TooFast { gas_speed, limit, greatest_mach },
+            DriverGas::Thermal(own) => DriverError::ExpandsBeyondData { coldest: own.range().0, gas_speed, limit, greatest_mach },
+        }
+    }
+
+    /// The expansion at the point of a shock; `None` where no driver pressure is enough.
+    fn reached(&self, behind: &BehindShock) -> Result<Option<(Point<'a>, Expansion<'a>)>, DriverError> {
+        let point = self.corner(behind, false);
+        match (point.expand()?, self.gas) {
+            (Some(expansion), _) => Ok(Some((point, expansion))),
+            (None, DriverGas::Constant(_)) => Ok(None),
+            (None, DriverGas::Thermal(_)) => Err(self.too_fast(&point, behind.gas)),
+        }
     }
 
     /// ln(p4/p1) at the point of a shock; `None` where no driver pressure is enough.
     pub(super) fn logarithm_of_pressure_ratio(&self, behind: &BehindShock) -> Result<Option<Ball>, DriverError> {
-        let point = self.corner(behind, false);
-        let ratio = point.expanded()?.sound_speed_ratio;
-        let of_expansion = || point.logarithm_of_expansion(ratio) + (point.pressure / behind.gas.pressure().ball()).ln();
-        Ok(ratio.is_certainly_positive().then(of_expansion))
+        let logarithm = |(point, own): (Point<'a>, Expansion<'a>)| own.logarithm + (point.pressure / behind.gas.pressure().ball()).ln();
+        Ok(self.reached(behind)?.map(logarithm))
     }
 
     /// State 3 at the point of a shock; `None` where no driver pressure is enough.
-    pub(super) fn side_3(&self, behind: &BehindShock) -> Result<Option<ContactSide<'static>>, DriverError> {
-        let point = self.corner(behind, false);
-        let ratio = point.expanded()?.sound_speed_ratio;
-        let side = || ContactSide::Constant { gamma: point.gamma, sound_speed: ratio * point.sound_speed() };
-        Ok(ratio.is_certainly_positive().then(side))
+    pub(super) fn side_3(&self, behind: &BehindShock) -> Result<Option<ContactSide<'a>>, DriverError> {
+        Ok(self.reached(behind)?.map(|(_, own)| own.side))
     }
 
     /// The speeds of the wave diagram of this driver and this shock, for a driver of the area of the driven tube.
     ///
     /// # Errors
-    /// [`DriverError::Driver`] for a larger driver, whose waves are others.
+    /// [`DriverError::Driver`] for a larger driver, whose waves are others; [`DriverError::ConstantOnly`] for a thermally perfect driver gas.
     ///
     /// ```
     /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
@@ -305,6 +351,9 @@ impl Driver {
     /// # Ok::<(), Box<dyn std::error::Error>>(())
     /// ```
     pub fn speeds(&self, behind: &BehindShock) -> Result<TubeSpeeds, DriverError> {
+        if matches!(self.gas, DriverGas::Thermal(_)) {
+            return Err(DriverError::ConstantOnly);
+        }
         if let Some(area_ratio) = self.area_ratio {
             let rule = Rule::Between(1.0, 1.0);
             return Err(DriverError::Driver { input: DriverInput::AreaRatio, value: area_ratio.nominal(), rule });
@@ -320,21 +369,14 @@ impl Driver {
         })
     }
 
-    /// The Mach number that this driver reaches in this test gas at infinite pressure, where the driver gas expands to vacuum:
+    /// The Mach number that this driver reaches in this test gas at infinite pressure, where the driver gas expands to vacuum (a thermally perfect one: to
+    /// the lowest temperature of its data):
     ///
     /// > u2 = 2a4/(γ4 − 1) for equal areas; in a gas of constant heat capacity M − 1/M = (γ1 + 1)/(γ4 − 1) · a4/a1.
     ///
     /// The double nearest to it, at nominal inputs; `None` where the data of the test gas end before it.
     pub fn greatest_mach(&self, gas: TestGas) -> Option<f64> {
-        let point = Point {
-            gamma: self.gamma(),
-            temperature: self.temperature.ball(),
-            molar_mass: self.gas.molar_mass().ball(),
-            area_ratio: self.area_ratio.map(Known::ball),
-            pressure: Ball::whole(1),
-            gas_speed: Ball::whole(0),
-        };
-        let speed = point.greatest_gas_speed()?;
+        let speed = self.at_rest().greatest_gas_speed()?;
         match gas {
             TestGas::Constant(fill) => {
                 let gas = fill.gas();

@@ -84,6 +84,17 @@ pub enum DriverError {
         /// The Mach number that this driver reaches in this test gas at infinite pressure; `None` where the data of the test gas end before.
         greatest_mach: Option<f64>,
     },
+    /// The driver gas would expand below the temperature at which its data begin; its heat capacity is not extrapolated.
+    ExpandsBeyondData {
+        /// Where the data begin, K.
+        coldest: f64,
+        /// u2, m/s.
+        gas_speed: f64,
+        /// The speed of the driver gas at the lowest temperature of its data, m/s.
+        limit: f64,
+        /// The Mach number of that speed in this test gas; `None` where the data of the test gas end before.
+        greatest_mach: Option<f64>,
+    },
     /// The driver pressure is beyond 2²⁰⁰ Pa: the shock is close to the limit of this driver.
     PressureBeyondRange {
         /// log10(p4/Pa).
@@ -105,7 +116,7 @@ pub enum DriverError {
         /// For the second gas alone, m/s.
         second: f64,
     },
-    /// The heat capacities must be constant for this.
+    /// The heat capacity of the driver gas must be constant for this: a change of area, a wave diagram.
     ConstantOnly,
     /// A part of the proof failed.
     NotProven(Unproven),
@@ -160,6 +171,16 @@ impl fmt::Display for DriverError {
                     "the gas behind the shock moves at {gas_speed:.1} m/s, and the driver gas reaches {limit:.1} m/s when it expands to vacuum: {greatest}"
                 )
             }
+            Self::ExpandsBeyondData { coldest, gas_speed, limit, greatest_mach } => {
+                write!(
+                    f,
+                    "the gas behind the shock moves at {gas_speed:.1} m/s, and the driver gas, whose heat capacity is known down to {coldest} K, reaches {limit:.1} m/s there"
+                )?;
+                match greatest_mach {
+                    Some(mach) => write!(f, ": Mach {mach:.4} in this test gas; with constant heat capacity there is no such end"),
+                    None => Ok(()),
+                }
+            }
             Self::PressureBeyondRange { decimal_logarithm, greatest_mach } => {
                 let greatest = Greatest(*greatest_mach);
                 write!(f, "the driver pressure would be 10^{decimal_logarithm:.1} Pa: {greatest}")
@@ -173,7 +194,9 @@ impl fmt::Display for DriverError {
                     if *first > 0.0 { ("a shock", "a lighter gas is needed") } else { ("an expansion", "a heavier gas is needed") };
                 write!(f, "no blend of these driver gases is tailored for this shock: each of them alone returns {wave}; {remedy}")
             }
-            Self::ConstantOnly => write!(f, "the waves at the contact surface are computed for a test gas of constant heat capacity only"),
+            Self::ConstantOnly => {
+                write!(f, "a change of area and the wave diagram are computed for a driver gas of constant heat capacity only")
+            }
             Self::NotProven(part) => part.fmt(f),
         }
     }

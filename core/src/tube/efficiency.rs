@@ -61,7 +61,7 @@ impl Efficiency {
     }
 }
 
-impl Driver {
+impl Driver<'_> {
     /// The driver pressure to set so that a tube of this efficiency reaches a Mach number: p4 of the ideal Mach number M/η, with the band that one
     /// standard uncertainty of η leaves.
     ///

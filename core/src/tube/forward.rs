@@ -1,6 +1,6 @@
 //! The shock that a driver makes: from p4 and p1 to the Mach number.
 
-use super::driver::{Driver, check};
+use super::driver::{Driver, DriverGas, check};
 use super::driver_error::{DriverError, DriverInput, Unproven};
 use super::proven_root::{Side, increasing};
 use super::test_gas::{BehindShock, TestGas};
@@ -11,7 +11,7 @@ use core::cell::Cell;
 /// M − 1 from which the search begins.
 const START: f64 = 1.0;
 
-impl Driver {
+impl Driver<'_> {
     /// The Mach number of the shock that this driver, filled to p4 (Pa, absolute), drives into the test gas, less 1.
     ///
     /// The root of ln(p4(M)/p1) = ln(p4/p1), with p4(M) of [`Driver::for_shock`]. It is the only one: p2 and u2 rise with M (in a thermally perfect gas by
@@ -61,9 +61,10 @@ impl Driver {
             TestGas::Constant(fill) => (fill.pressure(), fill.temperature()),
             TestGas::Thermal(fill) => (fill.pressure(), fill.temperature()),
         };
-        let test_gas = if let TestGas::Constant(fill) = gas { fill.gas() } else { self.gas() };
+        let test_gas = if let TestGas::Constant(fill) = gas { Some(fill.gas()) } else { None };
+        let driver_gas = if let DriverGas::Constant(gas) = self.gas() { Some(gas) } else { None };
         let fill = [(Parameter::FillPressure, pressure), (Parameter::FillTemperature, temperature)];
-        for (parameter, known) in fill.into_iter().chain(of_gas(test_gas)).chain(of_gas(self.gas())) {
+        for (parameter, known) in fill.into_iter().chain(test_gas.into_iter().chain(driver_gas).flat_map(of_gas)) {
             if known.exact().is_none() {
                 return Err(InputError { parameter, value: known.nominal(), rule: Rule::Exact }.into());
             }
@@ -89,16 +90,15 @@ pub(super) fn mach_excess_where<'a>(
     gas: TestGas<'a>,
     quantity: impl Fn(&BehindShock<'a>) -> Result<Side, DriverError>,
 ) -> Result<Enclosure, DriverError> {
-    // Where the data of the test gas end nothing is known; if the search stops there, the error says so.
+    // Where the data of a gas end nothing is known; if the search stops there, the error says so.
     let end_of_data = Cell::new(None);
-    let over = |excess: f64| match gas.behind_mach_excess(excess) {
-        Ok(behind) => quantity(&behind),
-        Err(DriverError::Gas(error)) if matches!(error.rule, Rule::HeatsBeyondData(..)) => {
+    let over = |excess: f64| match gas.behind_mach_excess(excess).and_then(|behind| quantity(&behind)) {
+        Err(error @ (DriverError::Gas(InputError { rule: Rule::HeatsBeyondData(..), .. }) | DriverError::ExpandsBeyondData { .. })) => {
             end_of_data.set(Some(error));
             Ok(Side::Unknown)
         }
-        Err(other) => Err(other),
+        other => other,
     };
     let root = increasing(over, START)?;
-    root.ok_or(end_of_data.get().map_or(Unproven::Mach.into(), DriverError::Gas))
+    root.ok_or(end_of_data.get().unwrap_or(Unproven::Mach.into()))
 }

@@ -6,6 +6,7 @@ mod boundary_layer;
 mod contact;
 mod driver;
 mod driver_error;
+mod driver_point;
 mod efficiency;
 mod event;
 mod forward;
@@ -26,7 +27,7 @@ pub use bifurcation::{Bifurcation, BifurcationBand, BifurcationError, Verdict, b
 pub use blend::tailored_blend;
 pub use boundary_layer::{BoundaryLayer, Separation, TestTimeBand, laminar_separation, turbulent_separation};
 pub use contact::{Contact, TailoredMach, Tailoring};
-pub use driver::{Drive, Driver};
+pub use driver::{Drive, Driver, DriverGas};
 pub use driver_error::{DriverError, DriverInput, Unproven};
 pub use efficiency::{DriverPressureBand, Efficiency};
 pub use event::{Event, Wave, WaveName};

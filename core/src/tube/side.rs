@@ -45,7 +45,7 @@ fn mach_squared_excess(gamma: Gamma<Ball>, excess: Ball) -> Ball {
     excess * gamma.plus_one() / gamma.ratio().doubled()
 }
 
-impl<'a> ContactSide<'a> {
+impl ContactSide<'_> {
     /// a, m/s.
     pub fn sound_speed(&self) -> Ball {
         match self {

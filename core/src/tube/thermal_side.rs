@@ -36,6 +36,16 @@ impl<'a> ThermalSide<'a> {
         }
     }
 
+    /// T, K.
+    pub fn temperature(&self) -> Ball {
+        self.temperature
+    }
+
+    /// The same with another ball for the temperature, in the same range.
+    pub fn with_temperature(self, temperature: Ball) -> Self {
+        Self { temperature, ..self }
+    }
+
     /// `c_p`/R at T.
     fn capacity(&self) -> Ball {
         self.heat_capacity.value(self.range, self.temperature)
@@ -152,6 +162,22 @@ impl<'a> ThermalSide<'a> {
         let speed = unit * self.heat_capacity.speed_rise(self.range, self.temperature, excess, to);
         let slope = after.sound_speed() / after.gamma().value() / (Ball::whole(1) + y.value());
         Some(Dual::with_slopes(speed, y.slopes().map(|own| own * slope)))
+    }
+
+    /// The gas after an isentropic change by which its speed in a simple wave changes so much (m/s; negative in an expansion), and ln(p′/p).
+    pub fn slowed_by(&self, speed: Ball) -> Option<(Self, Ball)> {
+        let rise = speed / self.gas_constant.sqrt();
+        let [Some(Change { excess, to }), None] = self.heat_capacity.changed_by::<Speed>(self.range, self.temperature, rise) else {
+            return None;
+        };
+        Some((self.at(excess, to), self.heat_capacity.entropy_rise(self.range, self.temperature, excess, to)))
+    }
+
+    /// The speed that an expansion to a lower temperature (K) gives the gas, m/s.
+    pub fn expanded_to(&self, temperature: f64) -> Ball {
+        let excess = (Ball::from(temperature) - self.temperature) / self.temperature;
+        let rise = self.heat_capacity.speed_rise(self.range, self.temperature, excess, self.heat_capacity.index_at(temperature));
+        -(self.gas_constant.sqrt() * rise)
     }
 
     /// The speed of a shock relative to the gas ahead, (R T/W) y/Δu by momentum, and the gas behind it.
