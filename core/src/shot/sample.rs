@@ -67,8 +67,7 @@ impl Sample {
             return Err(SampleError::Empty);
         }
         for (index, &value) in observations.iter().enumerate() {
-            // Written so that a NaN is refused.
-            if !(libm::fabs(value) <= LARGEST) {
+            if value.is_nan() || libm::fabs(value) > LARGEST {
                 return Err(SampleError::Observation { index, value });
             }
         }
