@@ -18,9 +18,21 @@
 //! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
 //! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory
 //! sets), `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
+//!
+//! # Past shots against a plan
+//!
+//! A [`Comparison`] takes a plan and shots. From a shot it needs, beside what a reduction takes, `driver.pressure` at the moment of firing for the efficiency (`driver.gas` and
+//! `driver.temperature` where they are not those of the plan) and `stations` without an `attenuation` for the attenuation; `tube` tells that it is the
+//! plan's. The efficiency is the measured over the ideal Mach number at the end wall, as a plan uses it. Its [`CompareReport`] holds values for the fields
+//! `efficiency`, `attenuation` and `tolerance` of the plan.
 
 mod alternatives;
 mod check;
+mod compare;
+mod compare_report;
+mod compare_same;
+mod compare_shot;
+mod compare_text;
 mod digest;
 mod driven;
 mod error;
@@ -51,6 +63,8 @@ mod text_choices;
 mod tree;
 mod unit;
 
+pub use compare::Comparison;
+pub use compare_report::{CompareReport, Counted, Departure, PastShot, Ready, ReadyTolerance, Spread, Wanted};
 pub use digest::input_digest;
 pub use driven::{GAS_DATA, GasNotes};
 pub use error::{ErrorKind, RecordError};

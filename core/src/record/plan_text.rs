@@ -44,7 +44,7 @@ pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
 }
 
 /// Pressures in the unit of the target.
-fn units(plan: &Plan) -> DisplayUnits {
+pub(super) fn units(plan: &Plan) -> DisplayUnits {
     DisplayUnits::like(match &plan.target {
         Target::State { pressure, .. } => pressure.0.unit(),
         Target::Step { step, .. } => step.unit(),

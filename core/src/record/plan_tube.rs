@@ -55,7 +55,7 @@ impl Plan {
         let mut part = TubePart::default();
         let mut over_tailored = None;
         let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| no_driver(&error))?;
-        let driver = self.driver.as_ref().map(|record| self.driver(record)).transpose()?;
+        let driver = self.driver.as_ref().map(|record| ideal_driver(record, self.tube.as_ref())).transpose()?;
         if let (Some(record), Some(driver)) = (&self.driver, &driver) {
             let drive = driver.for_shock(&behind).map_err(|error| no_driver(&error))?;
             self.driver_pressure(&mut part, driver, &drive, gas, &behind)?;
@@ -71,23 +71,6 @@ impl Plan {
             self.loads(&mut part, tube, &Loads { reflected: p5.1, over_tailored, driver });
         }
         Ok(part)
-    }
-
-    /// The driver of the record: its gas with the heat capacity at its temperature.
-    fn driver(&self, record: &DriverRecord) -> Result<Driver, RecordError> {
-        let missing = |path: &str, example: &str| {
-            let remedy = format!("add it, like {example}");
-            RecordError::new(ErrorKind::Field, path, "", "a driver needs its gas and its temperature", remedy)
-        };
-        let temperature = record.temperature.as_ref().ok_or_else(|| missing("driver.temperature", "\"temperature\": \"295 K\""))?.value();
-        let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
-        let driver = Driver::new(driver_gas(gas, temperature)?, temperature).map_err(|error| no_driver(&error))?;
-        let bores = self.tube.as_ref().and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
-        let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
-        match ratio {
-            None => Ok(driver),
-            Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| no_driver(&error)),
-        }
     }
 
     fn driver_pressure(
@@ -190,6 +173,23 @@ impl Plan {
     }
 }
 
+/// The driver of a record in a tube: its gas with the heat capacity at its temperature.
+pub(super) fn ideal_driver(record: &DriverRecord, tube: Option<&TubeRecord>) -> Result<Driver, RecordError> {
+    let missing = |path: &str, example: &str| {
+        let remedy = format!("add it, like {example}");
+        RecordError::new(ErrorKind::Field, path, "", "a driver needs its gas and its temperature", remedy)
+    };
+    let temperature = record.temperature.as_ref().ok_or_else(|| missing("driver.temperature", "\"temperature\": \"295 K\""))?.value();
+    let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
+    let driver = Driver::new(driver_gas(gas, temperature)?, temperature).map_err(|error| no_driver(&error))?;
+    let bores = tube.and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
+    let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
+    match ratio {
+        None => Ok(driver),
+        Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| no_driver(&error)),
+    }
+}
+
 /// The refusal of the faster ideal shock that a driver must be laid out for.
 fn at_efficiency(efficiency: &Quantity, error: &DriverError) -> RecordError {
     let mut refusal = no_driver(error);
@@ -202,7 +202,7 @@ fn at_efficiency(efficiency: &Quantity, error: &DriverError) -> RecordError {
 }
 
 /// The refusal of a driver, with the options.
-fn no_driver(error: &DriverError) -> RecordError {
+pub(super) fn no_driver(error: &DriverError) -> RecordError {
     let remedy = match error {
         DriverError::TooFast { .. } | DriverError::PressureBeyondRange { .. } => {
             "take a lighter driver gas, a hotter driver or a larger driver bore, or a weaker shock"
@@ -232,7 +232,7 @@ fn driver_portions(gas: &GasRecord) -> Result<Vec<Portion<'static>>, RecordError
 }
 
 /// The flag for a driver so dense that its gas is no ideal one.
-fn dense_driver(record: &DriverRecord, pressure: f64) -> Option<Flag> {
+pub(super) fn dense_driver(record: &DriverRecord, pressure: f64) -> Option<Flag> {
     let portions = driver_portions(record.gas.as_ref()?).ok()?;
     let gas = ThermallyPerfectGas::new(&portions).ok()?;
     let departure = departure_from_ideal(&gas, record.temperature.as_ref()?.value().to_f64(), pressure);

@@ -15,6 +15,7 @@ mod monte_carlo_result;
 mod propagate;
 mod random;
 mod reduction;
+mod sample;
 mod station;
 mod thermal;
 mod validate;
@@ -34,5 +35,6 @@ pub use reduction::{
     BudgetLine, Distribution, DrivenGas, EndWall, Estimate, MAX_CHANGES, Measured, Reduction, ReductionError, Shot, Solved, Source,
     SpeedSource, Uncertainty, reduce,
 };
+pub use sample::{Sample, SampleError};
 pub use station::{MAX_STATIONS, Station, seconds_between};
 pub use validation::{Validation, numerical_tolerance, validate_linear};

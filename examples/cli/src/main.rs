@@ -1,8 +1,9 @@
-//! The `endwall` command: reduces record files, plans shots, looks at single shocks, prints tables.
+//! The `endwall` command: reduces record files, plans shots, learns from past ones, looks at single shocks, prints tables.
 //!
 //! Exit codes: 0 for a result, with or without flags; 2 where the input is refused, 1 for any other failure such as a full disk, both with
 //! the reason on standard error.
 
+mod compare;
 mod failure;
 mod file;
 mod gas;
@@ -43,6 +44,7 @@ struct Arguments {
 enum Task {
     Reduce(reduce::Arguments),
     Plan(plan::Arguments),
+    Compare(compare::Arguments),
     Waves(waves::Arguments),
     States(states::Arguments),
     Table(table::Arguments),
@@ -53,6 +55,7 @@ fn main() -> ExitCode {
     let done = match Arguments::parse().task {
         Task::Reduce(arguments) => reduce::run(&arguments),
         Task::Plan(arguments) => plan::run(&arguments),
+        Task::Compare(arguments) => compare::run(&arguments),
         Task::Waves(arguments) => waves::run(&arguments),
         Task::States(arguments) => states::run(&arguments),
         Task::Table(arguments) => table::run(&arguments),
