@@ -241,7 +241,7 @@ fn bores(tube: Option<&TubeRecord>) -> Option<&TubeRecord> {
 /// Slopes of ln M of the ideal shock in ln p4 and in ln T4.
 fn slopes(driver: &Driver, gas: TestGas<'_>, pressure: f64, mach: f64) -> Result<[f64; 2], DriverError> {
     let more = 1.0 + STEP;
-    let hotter = Driver::new(driver.gas(), driver.temperature().nominal() * more)?.with_area_ratio(driver.area_ratio())?;
+    let hotter = driver.with_temperature(driver.temperature().nominal() * more)?;
     let slope = |excess: Enclosure| libm::log((1.0 + excess.middle()) / mach) / libm::log1p(STEP);
     Ok([slope(driver.mach_excess(gas, pressure * more)?), slope(hotter.mach_excess(gas, pressure)?)])
 }

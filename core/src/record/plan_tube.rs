@@ -144,9 +144,9 @@ impl Plan {
         }
         if let (Some((driver, p4)), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
             let area = core::f64::consts::PI / 4.0 * bore.value().to_f64() * bore.value().to_f64();
-            let ratio = HeatCapacityRatio::new(driver.heat_capacity_ratio());
-            let energy = ratio.and_then(|ratio| stored_energy(ratio, p4, ambient, area * length.value().to_f64()));
-            part.stored_energy = energy.ok().map(|energy| energy.brode.high());
+            let energy = |ratio| stored_energy(ratio, p4, ambient, area * length.value().to_f64()).ok();
+            let energy = HeatCapacityRatio::new(driver.heat_capacity_ratio()).ok().and_then(energy);
+            part.stored_energy = energy.map(|energy| energy.brode.high());
         }
         for rating in &tube.ratings {
             let limit = rating.pressure.1.value.to_f64();
@@ -174,7 +174,7 @@ impl Plan {
 }
 
 /// The driver of a record in a tube: its gas with the heat capacity at its temperature.
-pub(super) fn ideal_driver(record: &DriverRecord, tube: Option<&TubeRecord>) -> Result<Driver, RecordError> {
+pub(super) fn ideal_driver(record: &DriverRecord, tube: Option<&TubeRecord>) -> Result<Driver<'static>, RecordError> {
     let missing = |path: &str, example: &str| {
         let remedy = format!("add it, like {example}");
         RecordError::new(ErrorKind::Field, path, "", "a driver needs its gas and its temperature", remedy)

@@ -127,13 +127,23 @@ impl<'a> Driver<'a> {
     /// # Ok::<(), Box<dyn std::error::Error>>(())
     /// ```
     pub fn thermally_perfect(gas: &'a ThermallyPerfectGas<'a>, temperature: impl Into<Known>) -> Result<Self, DriverError> {
+        Self { gas: DriverGas::Thermal(gas), temperature: Known::from(Rational::ONE), area_ratio: None }.with_temperature(temperature)
+    }
+
+    /// The same driver at another temperature T4, K.
+    ///
+    /// # Errors
+    /// As for [`Driver::new`] and [`Driver::thermally_perfect`].
+    pub fn with_temperature(self, temperature: impl Into<Known>) -> Result<Self, DriverError> {
         let temperature = temperature.into();
         check(DriverInput::Temperature, temperature)?;
-        if temperature.exact().is_none() {
-            return Err(DriverError::Driver { input: DriverInput::Temperature, value: temperature.nominal(), rule: Rule::Exact });
+        if let DriverGas::Thermal(gas) = self.gas {
+            if temperature.exact().is_none() {
+                return Err(DriverError::Driver { input: DriverInput::Temperature, value: temperature.nominal(), rule: Rule::Exact });
+            }
+            gas.check_temperature(Parameter::Temperature, temperature.nominal())?;
         }
-        gas.check_temperature(Parameter::Temperature, temperature.nominal())?;
-        Ok(Self { gas: DriverGas::Thermal(gas), temperature, area_ratio: None })
+        Ok(Self { temperature, ..self })
     }
 
     /// The same driver in a tube whose area is A4/A1 times that of the driven tube, 1 to 10⁶; for round tubes the square of the ratio of diameters.
