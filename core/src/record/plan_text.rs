@@ -10,6 +10,7 @@ use super::plan::{Plan, Target};
 use super::plan_report::PlanReport;
 use super::text::DisplayUnits;
 use super::text_choices::choices;
+use super::time_text;
 
 pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
     let mut page = Page::default();
@@ -107,15 +108,8 @@ fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     if let Some(speed) = report.first_station_speed {
         rows.push(row(["Shock speed at the first station", &format!("{} m/s", significant(speed, 4))]));
     }
-    if let Some(time) = &report.test_time {
-        rows.push(row([
-            "Uniform time at the end wall",
-            &format!("{} ms, ended when {}", significant(time.end_wall.value * 1e3, 3), time.cause),
-        ]));
-        if let Some(length) = time.shortest_driver {
-            rows.push(row(["Shortest driver that does not limit it", &format!("{} m", significant(length, 3))]));
-        }
-    }
+    let (layer, bifurcation) = (report.boundary_layer.as_ref(), report.bifurcation.as_ref());
+    rows.extend(time_text::rows(report.test_time.as_ref(), layer, bifurcation));
     if let Some(load) = report.end_load {
         rows.push(row([
             "Load on the end wall at the upper end of p5",
@@ -127,6 +121,9 @@ fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     }
     page.table(&rows);
     page.paragraph("", &uncertainty(report));
+    if let Some(remarks) = time_text::remarks(layer, bifurcation) {
+        page.paragraph("", &remarks);
+    }
 }
 
 /// What stands behind ±, or why nothing does.
