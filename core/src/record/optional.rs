@@ -74,7 +74,7 @@ pub struct Rating {
 }
 
 /// The parts that have ratings.
-const PARTS: [&str; 4] = ["driven", "driver", "window", "sensor"];
+pub(super) const PARTS: [&str; 4] = ["driven", "driver", "window", "sensor"];
 
 /// The driver.
 #[derive(Clone, Debug, PartialEq)]

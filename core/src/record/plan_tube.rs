@@ -29,6 +29,9 @@ use crate::tube::{
 /// Pieces of the one curve of a diagram: more are not seen in a drawing.
 const CURVE: u32 = 24;
 
+/// Scatter of the pressure at which a diaphragm bursts, where the record states none (common practice, no source).
+const BURST_SCATTER: f64 = 0.05;
+
 /// What is found.
 #[derive(Default)]
 pub(super) struct TubePart {
@@ -129,6 +132,11 @@ impl Plan {
             let energy = stored_energy(driver.gas().heat_capacity_ratio(), p4, ambient, area * length.value().to_f64());
             part.stored_energy = energy.ok().map(|energy| energy.brode.high());
         }
+        let burst = tube.burst_pressure.as_ref().map(|(typed, absolute)| {
+            let (value, standard) = (absolute.value.to_f64(), absolute.standard_uncertainty);
+            (typed.typed(), [-1.0, 1.0].map(|sign| value + sign * standard.map_or(BURST_SCATTER * value, |standard| 2.0 * standard)))
+        });
+        let gas = if self.flags.iter().any(|flag| flag.code == "can-burn") { " of the unburnt gas" } else { "" };
         for rating in &tube.ratings {
             let limit = rating.pressure.1.value.to_f64();
             let mut line = |load: &str, pressure: f64| {
@@ -140,13 +148,18 @@ impl Plan {
                     let of = if self.efficiency.is_some() { "p4" } else { "p4 of an ideal tube" };
                     line(&format!("{of}, also where the diaphragm does not burst"), p4);
                 }
+                if let Some((_, [_, high])) = burst {
+                    line("burst pressure of the diaphragm", high);
+                }
                 continue;
             }
-            line("p5", loads.reflected);
+            line(&format!("p5{gas}"), loads.reflected);
             if let Some(pressure) = loads.over_tailored {
-                line("end wall after a shock came back from the contact surface", pressure);
+                line(&format!("end wall after a shock came back from the contact surface{gas}"), pressure);
             }
         }
+        let p4 = part.p4_band.or(part.p4.as_ref().map(|p4| [p4.value; 2]));
+        part.flags.extend(burst.zip(p4).and_then(|((typed, burst), p4)| diaphragm(typed, burst, p4)));
         part.limits.sort_by_key(|line| !line.exceeded);
         if part.limits.iter().any(|line| line.exceeded) {
             part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
@@ -182,6 +195,20 @@ fn waves(diagram: &WaveDiagram) -> Vec<PlannedWave> {
         PlannedWave { name: wave.name.name().to_string(), from, to, between }
     };
     diagram.waves().into_iter().flatten().map(planned).collect()
+}
+
+/// The flag for a diaphragm that does not burst at p4; both with lower and upper end, Pa.
+fn diaphragm(typed: &str, burst: [f64; 2], p4: [f64; 2]) -> Option<Flag> {
+    if burst[0] > p4[1] {
+        let text = format!(
+            "the diaphragm bursts at {typed}, above p4: unless something else opens it, p4 is left standing in the driver. Vent it from a distance before anybody approaches"
+        );
+        return Some(Flag::new("diaphragm-holds", text));
+    }
+    (burst[1] < p4[0]).then(|| {
+        let text = format!("the diaphragm bursts at {typed}, below p4: the driver does not reach p4; take a stronger diaphragm");
+        Flag::new("diaphragm-bursts-early", text)
+    })
 }
 
 /// The refusal of the faster ideal shock that a driver must be laid out for.

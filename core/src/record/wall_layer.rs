@@ -13,7 +13,7 @@ use super::report::States;
 use super::shot::Shot;
 use super::uniform_time::Found;
 use crate::gas::Portion;
-use crate::tube::{BehindShock, Bifurcation, BoundaryLayer, LayerBand, lennard_jones, mixture_viscosity};
+use crate::tube::{BehindShock, Bifurcation, BoundaryLayer, LayerBand, ViscosityError, lennard_jones, mixture_viscosity};
 
 /// Half width of the band of p_stagnation/p5 around 1 in which the criterion, a model of the wall layer, decides nothing.
 const EDGE: f64 = 0.03;
@@ -85,6 +85,17 @@ impl LayerRange {
     }
 }
 
+/// Why there is no viscosity, with the digits of a report.
+fn refused(error: &ViscosityError<'_>) -> String {
+    match error {
+        ViscosityError::Temperature { value, low, high } => {
+            let [value, low, high] = [value, low, high].map(|kelvin| significant(*kelvin, 4));
+            format!("no viscosity is known at {value} K: its model reaches from {low} K to {high} K for this gas")
+        }
+        other => other.to_string(),
+    }
+}
+
 /// The criterion for a shock, with its flag.
 pub(super) fn criterion(behind: &BehindShock<'_>, flags: &mut Vec<Flag>) -> Option<WallLayerCriterion> {
     let found = Bifurcation::behind(behind).ok()?;
@@ -120,10 +131,10 @@ impl Shot {
                 BoundaryLayer { returned_wave: found.and_then(|found| found.returned_speed).unwrap_or(layer.returned_wave), ..layer };
             let bands = layer.test_time().and_then(|time| Ok((time, layer.separation()?)));
             let (time, separation) = bands.map_err(|error| error.to_string())?;
-            let contact_wave = LayerRange::from(&time);
+            let (contact_wave, separation) = (LayerRange::from(&time), LayerRange::from(&separation));
             let ideal = found.filter(|found| found.contact_counts).map(|found| found.time.end_wall.value).filter(|ideal| *ideal > 0.0);
             let uniform_time = ideal.map(|ideal| contact_wave.ends().map(|end| end.min(ideal)));
-            Ok(WallLayer { contact_wave, uniform_time, separation: LayerRange::from(&separation), viscosity })
+            Ok(WallLayer { contact_wave, uniform_time, separation, viscosity })
         });
         layer.map_err(|why| flags.push(Flag::new("no-boundary-layer", format!("the boundary layer is not estimated: {why}")))).ok()
     }
@@ -145,8 +156,7 @@ impl Shot {
             if share > LEFT_OUT {
                 return Err(format!("no viscosity is known for {names}, {} % of the gas", significant(share * 100.0, 2)));
             }
-            let [fill, incident] =
-                temperatures.map(|temperature| mixture_viscosity(&listed, temperature).map_err(|error| error.to_string()));
+            let [fill, incident] = temperatures.map(|temperature| mixture_viscosity(&listed, temperature).map_err(|error| refused(&error)));
             let without = if names.is_empty() { String::new() } else { format!("; without {names}") };
             Ok(LayerViscosity { fill: fill?, incident: incident?, source: format!("{SOURCE}{without}") })
         });
