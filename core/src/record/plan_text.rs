@@ -55,7 +55,7 @@ fn units(plan: &Plan) -> DisplayUnits {
 }
 
 /// Cautions that stand before every pressure.
-const FIRST: [&str; 2] = ["rating-exceeded", "can-burn"];
+const FIRST: [&str; 4] = ["rating-exceeded", "can-burn", "over-tailored-unchecked", "diaphragm-holds"];
 
 /// Exceeded ratings come before every pressure that is to be set.
 fn limits(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {

@@ -68,7 +68,7 @@ fn reflected(ratio: f64, mach: f64) -> f64 {
     300.0 * first * second / ((ratio + 1.0) * (ratio + 1.0) * square)
 }
 
-/// At Mach 2, in units of a1: u2 5/4, U_R 1, a5 √(5/2). The reflected shock meets the contact surface a sixth of the driven length from the end wall.
+/// At Mach 2, in units of a1: u2 5/4, `U_R` 1, a5 √(5/2). The reflected shock meets the contact surface a sixth of the driven length from the end wall.
 #[test]
 fn the_uniform_time_is_that_of_the_wave_diagram_at_the_wall_and_at_the_place_that_is_observed() {
     let report = planned(&plan_of(DIATOMIC, 750.0, &format!("{LONG}, {HELIUM}")));
@@ -130,7 +130,7 @@ fn a_weak_wave_does_not_end_the_time_and_is_named() {
     assert!(wave.kind == "shock" && wave.counts && wave.pressure_change.unwrap() > 0.0);
 }
 
-/// physics of the criterion at γ 7/5: M_bl is 1 at Mach 2, p5/p2 is 10/3; the bounds are at M 1.32266 and 6.49863, for 5/3 at 1.57054 and 2.80509.
+/// At γ 7/5 `M_bl` is 1 at Mach 2, p5/p2 is 10/3; the bounds are at M 1.32266 and 6.49863, for 5/3 at 1.57054 and 2.80509.
 #[test]
 fn bifurcation_is_told_by_the_criterion() {
     let at = |gas: &str, ratio: f64, mach: f64| {
@@ -339,6 +339,20 @@ fn places_and_tolerances_that_make_no_sense_are_refused() {
     }
     // What a shot was set to has its own uncertainties.
     refused(&shot_of(DIATOMIC, r#""tolerance": { "fill": "1 %" }, "shock_speed": "900 m/s""#), &["tolerance.fill", "disturbance"]);
+}
+
+/// Where the strength of a shock that comes back is not known, that is said before the pressures; where it is, it is compared.
+#[test]
+fn an_over_tailored_rise_is_compared_or_said_not_to_be() {
+    let rest = format!(r#""tube": {{ "ratings": {{ "window": "12 bar(g)" }} }}, {HELIUM}"#);
+    let file = plan_of(r#"{ "N2": "balance" }"#, 2600.0, &rest).replace("constant", "equilibrium");
+    let report = planned(&file);
+    let is_compared = report.limits.iter().any(|line| line.load.starts_with("end wall after a shock"));
+    assert!(is_compared != flagged(&report.flags, "over-tailored-unchecked").is_some(), "{:?}", report.flags);
+    let text = text_of(&file);
+    assert!(is_compared || text.find("[over-tailored-unchecked]").unwrap() < text.find("Driven fill p1").unwrap(), "{text}");
+    let weak = planned(&file.replace("2600 K", "1200 K"));
+    assert!(flagged(&weak.flags, "over-tailored-unchecked").is_none() && weak.limits.len() == 1);
 }
 
 /// Ratings, a diaphragm that holds, and the gas that burns.

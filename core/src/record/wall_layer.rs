@@ -15,7 +15,7 @@ use super::uniform_time::Found;
 use crate::gas::Portion;
 use crate::tube::{BehindShock, Bifurcation, BoundaryLayer, LayerBand, ViscosityError, lennard_jones, mixture_viscosity};
 
-/// Half width of the band of p_stagnation/p5 around 1 in which the criterion, a model of the wall layer, decides nothing.
+/// Half width of the band of the stagnation pressure over p5 around 1 in which the criterion, a model of the wall layer, decides nothing.
 const EDGE: f64 = 0.03;
 /// Mole fraction up to which species without a viscosity may be left out: they change that of the mixture by less than its model is good for.
 const LEFT_OUT: f64 = 0.05;

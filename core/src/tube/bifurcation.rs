@@ -155,16 +155,15 @@ impl Bifurcation {
     /// # Ok::<(), Box<dyn std::error::Error>>(())
     /// ```
     pub fn behind(behind: &BehindShock) -> Result<Self, TubeInputError> {
-        let gamma = match behind.constant_gamma() {
-            Some(gamma) => gamma,
-            None => {
-                let density = behind.density * (Ball::from(1.0) - behind.gas_speed / behind.shock_speed);
-                let ratio = density * behind.sound_speed_1.squared() / behind.gas.pressure().ball();
-                if !(ratio - Ball::from(1.0)).is_certainly_positive() {
-                    return Err(TubeInput::HeatCapacityRatio.refuse(ratio.nearest(), Rule::Above(1.0)));
-                }
-                Gamma { d: ratio - Ball::from(1.0), q: Ball::from(1.0) }
+        let gamma = if let Some(gamma) = behind.constant_gamma() {
+            gamma
+        } else {
+            let density = behind.density * (Ball::from(1.0) - behind.gas_speed / behind.shock_speed);
+            let ratio = density * behind.sound_speed_1.squared() / behind.gas.pressure().ball();
+            if !(ratio - Ball::from(1.0)).is_certainly_positive() {
+                return Err(TubeInput::HeatCapacityRatio.refuse(ratio.nearest(), Rule::Above(1.0)));
             }
+            Gamma { d: ratio - Ball::from(1.0), q: Ball::from(1.0) }
         };
         Ok(Self::compare(gamma, behind.reflected_speed / behind.sound_speed_1, behind.reflected_over_incident_pressure()))
     }
