@@ -160,6 +160,8 @@ impl Shot {
             let without = if names.is_empty() { String::new() } else { format!("; without {names}") };
             Ok(LayerViscosity { fill: fill?, incident: incident?, source: format!("{SOURCE}{without}") })
         });
-        found.unwrap_or_else(|| Err("the gas is given by its heat capacity ratio, without species no viscosity is known".into()))
+        found.unwrap_or_else(|| {
+            Err("the gas is given by its heat capacity ratio, which says nothing of its viscosity: give it by its species".into())
+        })
     }
 }
