@@ -18,7 +18,7 @@ const MIXTURES: [&str; 4] = [
 ];
 
 /// Demo files, and short records that reach the branches which those do not.
-const CONSTANT: [&str; 6] = [
+const CONSTANT: [&str; 7] = [
     include_str!("../../examples/records/argon-b0412.json"),
     include_str!("../../examples/records/sensor-step-c17.json"),
     r#"{"record":"shot/1","gas":{"Ar":"balance","He":"10.0 ± 0.1 %"},"heat_capacity":"constant","fill":{"pressure":"-0.9 ± 0.001 bar(g)",
@@ -31,6 +31,9 @@ const CONSTANT: [&str; 6] = [
         {"name":"C","from_end_wall":"2 m","arrival":"9 us","use":false,"reason":"noise"}]}"#,
     r#"{"record":"shot/1","gas":{"heat_capacity_ratio":"5/3","molar_mass":"4.0026 g/mol"},"fill":{"pressure":"1 atm","temperature":"80 K"},
         "confirm":["fill.temperature"],"shock_speed":"3000 m/s","notes":["free","text"]}"#,
+    r#"{"record":"shot/1","gas":{"Ar":"balance"},"heat_capacity":"constant","fill":{"pressure":"8 kPa","temperature":"296 K"},"shock_speed":"950 m/s",
+        "tube":{"driven_length":"6.2 m","driver_length":"2.6 m","driven_bore":"81 mm","driver_bore":"81 mm","observe":"20 mm"},
+        "driver":{"gas":{"He":"balance"},"temperature":"296 K"},"tolerance":{"disturbance":"1 %"}}"#,
 ];
 
 /// Texts that numbers, units and JSON stumble over.

@@ -12,7 +12,7 @@ use super::format::significant;
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
 use super::plan_report::computed;
-use super::plan_tube::{dense_driver, ideal_driver};
+use super::plan_tube::{dense_driver, driver_of};
 use super::reduce::report;
 use super::report::{Report, ReportQuantity};
 use super::shot::{Shot, Speed};
@@ -181,7 +181,7 @@ fn ideal(
     if let Some((field, _)) = missing.into_iter().find(|(_, missing)| *missing) {
         return without(format!("neither the record nor the plan has driver.{field}"));
     }
-    let driver = ideal_driver(&record, bores(shot.tube.as_ref()).or(plan.tube.as_ref()))?;
+    let driver = driver_of(&record, bores(shot.tube.as_ref()).or(plan.tube.as_ref()))?;
     let Some((typed, p4)) = &record.pressure else { return Ok(None) };
     let gas = match reduction.solved() {
         Solved::Constant(incident, _) => TestGas::from(incident.fill()),

@@ -84,6 +84,15 @@ impl Shot {
         compute(DrivenGas::ThermallyPerfect { gas, model, changes: &mixed.changes }, mixed.notes)
     }
 
+    /// Calls a function with the species of the gas, air and leak put in; `None` for a gas given by its heat capacity ratio.
+    pub(super) fn with_portions<T>(&self, compute: impl FnOnce(&[Portion<'_>]) -> T) -> Option<T> {
+        let GasRecord::Mixture(components) = &self.gas else { return None };
+        let mixed = self.mixed(components).ok()?;
+        let portions: Vec<Portion<'_>> =
+            mixed.portions.iter().map(|(species, fraction)| Portion { species, fraction: *fraction }).collect();
+        Some(compute(&portions))
+    }
+
     /// A gas of constant heat capacity, for which closed forms give the narrowest enclosures: given by its ratio, or a mixture of helium, neon and
     /// argon with `"constant"`.
     fn constant_gas(&self, model: HeatCapacityModel) -> Result<Option<(DrivenGas<'static>, GasNotes)>, RecordError> {

@@ -9,15 +9,25 @@
 //! Needed: `record`, `gas`, `fill` (`pressure`, `temperature`), and `stations` or `shock_speed`. Optional: `name`, `heat_capacity` (`constant`,
 //! `equilibrium`, `frozen`, `frozen then equilibrium`), `species` (polynomials of your own), `attenuation`, `clock`, `survey`, `ambient`, `humidity`, `leak`
 //! (a fraction, or `rate` and `waiting`), `wall` (`speed` or `impedance`), `measured` (`pressure_2`, `pressure_5`, `rise`, `pressure_change`), `tube`,
-//! `driver`, `confirm`, and for the audit `date`, `operator`, `instruments`, `notes`. See [`Shot::read`], [`Shot::reduce`] and [`Report`].
+//! `driver`, `tolerance` (`disturbance`), `confirm`, and for the audit `date`, `operator`, `instruments`, `notes`. See [`Shot::read`], [`Shot::reduce`] and [`Report`].
+//!
+//! `tube` and `driver` are those of a plan, below: with gas and temperature of the driver and both lengths the report has the uniform time with its cause,
+//! with bore and length of the driven section what the boundary layer leaves of it, and with either field whether the reflected shock bifurcates.
 //!
 //! # Plans, `plan/1`
 //!
 //! Needed: `record`, `gas`, `temperature` (of the fill) and `target`: `temperature` with `pressure`, or `step` with `fill_pressure`, or
 //! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`), `tube` (`driven_length`,
-//! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
+//! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `observe`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
 //! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory
-//! sets), `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
+//! sets; `disturbance`), `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
+//!
+//! `tube.observe` is a distance from the end wall, `"20 mm"`, at which the uniform time is reported too. `tolerance.disturbance`, `"1 %"`, is the change of p5
+//! up to which a wave that comes back from the contact surface does not end it; such a wave is named and flagged. Without the field every first wave
+//! counts; the expansion always counts from its first wave. See [`UniformTime`], [`WallLayer`] and [`WallLayerCriterion`].
+//!
+//! A rating must be marked, and a gauge value needs `ambient`. Compared are p5 with its upper end, a shock that comes back from an over-tailored contact
+//! surface in proportion, p4 at the upper end of its band, which stands in the driver where the diaphragm does not burst, and `burst_pressure`.
 //!
 //! # Past shots against a plan
 //!
@@ -43,6 +53,7 @@ mod hazard;
 mod input;
 mod leak;
 mod monte_carlo;
+mod observation;
 mod optional;
 mod page;
 mod plan;
@@ -56,12 +67,16 @@ mod read;
 mod reduce;
 mod report;
 mod shot;
+mod shot_tube;
 mod species;
 mod station;
 mod text;
 mod text_choices;
+mod time_text;
 mod tree;
+mod uniform_time;
 mod unit;
+mod wall_layer;
 
 pub use compare::Comparison;
 pub use compare_report::{CompareReport, Counted, Departure, PastShot, Ready, ReadyTolerance, Spread, Wanted};
@@ -74,7 +89,7 @@ pub use gas::{Component, ConstantGas, GasRecord};
 pub use leak::Leak;
 pub use optional::{Driver, Measured, Rating, Survey, Tube, Wall};
 pub use plan::{Plan, Target, Tolerance};
-pub use plan_report::{LimitLine, PlanReport, PlannedFill, PlannedTime, PlannedWave};
+pub use plan_report::{LimitLine, PlanReport, PlannedFill, PlannedWave};
 pub use planning::Planned;
 pub use quantity::{Absolute, Coverage, Mark, Quantity, QuantityError, Uncertainty};
 pub use read::Entry;
@@ -85,4 +100,6 @@ pub use report::{
 pub use shot::{Fill, Shot, Speed};
 pub use species::OwnSpecies;
 pub use station::Station;
+pub use uniform_time::{ObservedTime, ReturnedWave, UniformTime};
 pub use unit::{Dimension, Unit};
+pub use wall_layer::{LayerRange, LayerViscosity, WallLayer, WallLayerCriterion};

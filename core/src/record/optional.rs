@@ -6,6 +6,7 @@ use alloc::vec::Vec;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::gas::{self, GasRecord};
+use super::observation;
 use super::quantity::{Absolute, Mark, Quantity};
 use super::read::{self, Fields, Reading};
 use super::tree::Node;
@@ -55,6 +56,8 @@ pub struct Tube {
     pub driver_bore: Option<Quantity>,
     /// Distances of stations from the end wall.
     pub stations: Vec<Quantity>,
+    /// Distance from the end wall of the place that is observed.
+    pub observe: Option<Quantity>,
     /// Marked ratings of the parts.
     pub ratings: Vec<Rating>,
     /// Pressure at which the diaphragm bursts: as typed (marked), and absolute.
@@ -71,7 +74,7 @@ pub struct Rating {
 }
 
 /// The parts that have ratings.
-const PARTS: [&str; 4] = ["driven", "driver", "window", "sensor"];
+pub(super) const PARTS: [&str; 4] = ["driven", "driver", "window", "sensor"];
 
 /// The driver.
 #[derive(Clone, Debug, PartialEq)]
@@ -332,7 +335,7 @@ pub(super) fn tube(fields: Fields, ambient: Option<&Quantity>, reading: &mut Rea
     let Some(node) = fields.get("tube") else { return Ok(None) };
     let inner = Fields::new(node, "tube")?;
     let lengths = ["driven_length", "driver_length", "driven_bore", "driver_bore"];
-    inner.allow(&["driven_length", "driver_length", "driven_bore", "driver_bore", "stations", "ratings", "burst_pressure"])?;
+    inner.allow(&["driven_length", "driver_length", "driven_bore", "driver_bore", "stations", "observe", "ratings", "burst_pressure"])?;
     let mut found = Vec::new();
     for key in lengths {
         let length = inner.quantity(reading, key, Dimension::Length)?;
@@ -349,8 +352,10 @@ pub(super) fn tube(fields: Fields, ambient: Option<&Quantity>, reading: &mut Rea
     }
     let mut found = found.into_iter();
     let mut next = || found.next().flatten();
+    let driven_length = next();
     Ok(Some(Tube {
-        driven_length: next(),
+        observe: observation::observe(inner, driven_length.as_ref(), reading)?,
+        driven_length,
         driver_length: next(),
         driven_bore: next(),
         driver_bore: next(),

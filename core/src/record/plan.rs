@@ -9,6 +9,7 @@ use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::gas::{self, GasRecord};
 use super::hazard;
+use super::observation;
 use super::optional::{self, Driver, Tube};
 use super::quantity::{Absolute, Mark, Quantity};
 use super::read::{self, Entry, Fields, Reading};
@@ -37,13 +38,15 @@ pub enum Target {
     },
 }
 
-/// How well this laboratory meets what it sets, as relative standard uncertainties.
+/// How well this laboratory meets what it sets, as relative standard uncertainties, and what it takes for a disturbance.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Tolerance {
     /// Of the fill pressure.
     pub fill: Option<Quantity>,
     /// Of the shock speed, from shot to shot.
     pub speed: Option<Quantity>,
+    /// The change of p5 up to which a wave from the contact surface does not end the uniform time, relative; without it every first wave does.
+    pub disturbance: Option<Quantity>,
 }
 
 /// A plan as recorded: every quantity exact and in SI units, with its text.
@@ -249,7 +252,7 @@ fn efficiency(fields: Fields, reading: &mut Reading) -> Result<Option<Quantity>,
 fn tolerance(fields: Fields, reading: &mut Reading) -> Result<Tolerance, RecordError> {
     let Some(node) = fields.get("tolerance") else { return Ok(Tolerance::default()) };
     let inner = Fields::new(node, "tolerance")?;
-    inner.allow(&["fill", "speed"])?;
+    inner.allow(&["fill", "speed", "disturbance"])?;
     let mut one = |key: &str| -> Result<Option<Quantity>, RecordError> {
         let Some(spread) = inner.quantity(reading, key, Dimension::Fraction)? else { return Ok(None) };
         if (0.0..0.2).contains(&spread.value().to_f64()) {
@@ -258,7 +261,8 @@ fn tolerance(fields: Fields, reading: &mut Reading) -> Result<Tolerance, RecordE
         let wrong = "a relative standard uncertainty of what is set lies between 0 and 20 %";
         Err(RecordError::new(ErrorKind::Value, &inner.path_of(key), spread.typed(), wrong, "write it like \"0.3 %\""))
     };
-    Ok(Tolerance { fill: one("fill")?, speed: one("speed")? })
+    let (fill, speed) = (one("fill")?, one("speed")?);
+    Ok(Tolerance { fill, speed, disturbance: observation::disturbance(inner, reading)? })
 }
 
 #[cfg(test)]

@@ -11,6 +11,8 @@ use super::flag::Flag;
 use super::plan::Plan;
 use super::plan_text;
 use super::report::{HeatCapacityChoice, Incident, MadeBy, Reflected, ReportQuantity, States};
+use super::uniform_time::UniformTime;
+use super::wall_layer::{WallLayer, WallLayerCriterion};
 
 /// What the operator sets.
 #[derive(Clone, Debug, PartialEq, Serialize)]
@@ -21,17 +23,6 @@ pub struct PlannedFill {
     pub p4: Option<ReportQuantity>,
     /// Lower and upper end of the driver pressure for twice the standard uncertainty of the efficiency, Pa; `None` without a stated one.
     pub p4_band: Option<[f64; 2]>,
-}
-
-/// How long the state at the end wall lasts in an ideal tube, and what ends it.
-#[derive(Clone, Debug, PartialEq, Serialize)]
-pub struct PlannedTime {
-    /// s.
-    pub end_wall: ReportQuantity,
-    /// What ends it.
-    pub cause: String,
-    /// The shortest driver that does not limit it, m.
-    pub shortest_driver: Option<f64>,
 }
 
 /// A wave in distance from the diaphragm (m) and time from its opening (s).
@@ -83,7 +74,11 @@ pub struct PlanReport {
     /// Expected shock speed at the first station, m/s; `None` without attenuation and stations.
     pub first_station_speed: Option<f64>,
     /// `None` without a driver and the lengths of the tube.
-    pub test_time: Option<PlannedTime>,
+    pub test_time: Option<UniformTime>,
+    /// What the boundary layer leaves of it; `None` without bore and length of the driven section, or without a viscosity.
+    pub boundary_layer: Option<WallLayer>,
+    /// Whether the reflected shock bifurcates.
+    pub bifurcation: Option<WallLayerCriterion>,
     /// Waves; empty without a driver and the lengths of the tube.
     pub waves: Vec<PlannedWave>,
     /// Load on the end wall, N; `None` without the bore.

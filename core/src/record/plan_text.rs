@@ -2,21 +2,24 @@
 
 use alloc::format;
 use alloc::string::{String, ToString};
+use alloc::vec::Vec;
 
 use super::format::significant;
 use super::hazard::CAUTIONS;
+use super::optional::PARTS;
 use super::page::{Page, row};
 use super::plan::{Plan, Target};
 use super::plan_report::PlanReport;
 use super::text::DisplayUnits;
 use super::text_choices::choices;
+use super::time_text;
 
 pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
     let mut page = Page::default();
     let units = units(plan);
     let name = if plan.name.is_empty() { "without a name" } else { plan.name.as_str() };
     page.line(&format!("Plan {name}: what to set for a wanted state at the end wall"));
-    limits(&mut page, report, units);
+    limits(&mut page, report, plan, units);
     set(&mut page, report, plan, units);
     expected(&mut page, report, units);
     page.heading("Flags");
@@ -52,16 +55,16 @@ pub(super) fn units(plan: &Plan) -> DisplayUnits {
 }
 
 /// Cautions that stand before every pressure.
-const FIRST: [&str; 2] = ["rating-exceeded", "can-burn"];
+const FIRST: [&str; 4] = ["rating-exceeded", "can-burn", "over-tailored-unchecked", "diaphragm-holds"];
 
 /// Exceeded ratings come before every pressure that is to be set.
-fn limits(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
+fn limits(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {
     page.heading("Ratings");
     for flag in report.flags.iter().filter(|flag| FIRST.contains(&flag.code.as_str())) {
         page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
     }
     if report.limits.is_empty() {
-        page.line("ratings not checked: the record gives none");
+        page.line("ratings not checked: the record gives none that a pressure of this plan acts on");
     } else {
         let mut rows = alloc::vec![row(["part", "load", "upper end", "rating", ""])];
         for line in &report.limits {
@@ -69,8 +72,21 @@ fn limits(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
             rows.push(row([&line.part, &line.load, &units.pressure(line.pressure), &units.pressure(line.rating), verdict]));
         }
         page.table(&rows);
-        page.paragraph("", "Pressures and ratings are absolute. A rating is a gauge value at room temperature as marked on the part; whether it holds for a sudden load is for the person who rated it to say.");
+        let unchecked = unchecked(report, plan);
+        if !unchecked.is_empty() {
+            page.paragraph("", &format!("Not checked: {unchecked}."));
+        }
+        page.paragraph("", "Pressures and ratings are absolute; without a stated uncertainty the upper end is the value itself. A rating is a gauge value at room temperature as marked on the part; whether it holds for a sudden load is for the person who rated it to say.");
     }
+}
+
+/// Parts that no line compares, with the reason.
+fn unchecked(report: &PlanReport, plan: &Plan) -> String {
+    let rated = |part: &str| plan.tube.iter().flat_map(|tube| &tube.ratings).any(|rating| rating.part == part);
+    let compared = |part: &str| report.limits.iter().any(|line| line.part == part);
+    let why = |part: &str| if rated(part) { "no pressure is planned for it" } else { "no rating is given" };
+    let parts: Vec<String> = PARTS.iter().filter(|part| !compared(part)).map(|part| format!("{part} ({})", why(part))).collect();
+    parts.join(", ")
 }
 
 fn set(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {
@@ -97,9 +113,10 @@ fn set(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {
 
 fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     page.heading("Wanted and expected");
+    let burns = report.flags.iter().any(|flag| flag.code == "can-burn");
     let mut rows = alloc::vec![
         row(["Temperature T5", &units.show(&report.states.reflected.temperature)]),
-        row(["Pressure p5", &units.show(&report.states.reflected.pressure)]),
+        row([if burns { "Pressure p5, unburnt gas" } else { "Pressure p5" }, &units.show(&report.states.reflected.pressure)]),
         row(["Step p5 - p1", &units.show(&report.step)]),
         row(["Shock speed at the end wall", &units.show(&report.incident.speed)]),
         row(["Mach number", &units.show(&report.incident.mach)]),
@@ -107,15 +124,8 @@ fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     if let Some(speed) = report.first_station_speed {
         rows.push(row(["Shock speed at the first station", &format!("{} m/s", significant(speed, 4))]));
     }
-    if let Some(time) = &report.test_time {
-        rows.push(row([
-            "Uniform time at the end wall",
-            &format!("{} ms, ended when {}", significant(time.end_wall.value * 1e3, 3), time.cause),
-        ]));
-        if let Some(length) = time.shortest_driver {
-            rows.push(row(["Shortest driver that does not limit it", &format!("{} m", significant(length, 3))]));
-        }
-    }
+    let (layer, bifurcation) = (report.boundary_layer.as_ref(), report.bifurcation.as_ref());
+    rows.extend(time_text::rows(report.test_time.as_ref(), layer, bifurcation));
     if let Some(load) = report.end_load {
         rows.push(row([
             "Load on the end wall at the upper end of p5",
@@ -127,6 +137,9 @@ fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     }
     page.table(&rows);
     page.paragraph("", &uncertainty(report));
+    if let Some(remarks) = time_text::remarks(layer, bifurcation) {
+        page.paragraph("", &remarks);
+    }
 }
 
 /// What stands behind ±, or why nothing does.

@@ -11,27 +11,34 @@ use super::format::significant;
 use super::gas::{Component, GasRecord};
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
-use super::plan_report::{LimitLine, PlannedTime, PlannedWave, computed};
+use super::plan_report::{LimitLine, PlannedWave, computed};
 use super::quantity::Quantity;
-use super::report::ReportQuantity;
+use super::report::{ReportQuantity, States};
+use super::shot::Shot;
+use super::shot_tube::Layers;
+use super::uniform_time::{Setting, UniformTime};
 use crate::gas::species::named;
 use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas, departure_from_ideal};
-use crate::number::{Ball, Enclosure, Rational};
+use crate::number::Rational;
 use crate::shock::Entry;
 use crate::tube::{
-    BehindShock, Contact, ContactReturn, Drive, Driver, DriverError, Efficiency, Event, Lengths, TestGas, Tube, WaveDiagram, WaveName,
-    end_load, stored_energy,
+    BehindShock, Contact, Drive, Driver, DriverError, Efficiency, Event, Tailoring, TestGas, Wave, WaveDiagram, WaveName, end_load,
+    stored_energy,
 };
 
 /// Pieces of the one curve of a diagram: more are not seen in a drawing.
 const CURVE: u32 = 24;
+
+/// Scatter of the pressure at which a diaphragm bursts, where the record states none (common practice, no source).
+const BURST_SCATTER: f64 = 0.05;
 
 /// What is found.
 #[derive(Default)]
 pub(super) struct TubePart {
     pub p4: Option<ReportQuantity>,
     pub p4_band: Option<[f64; 2]>,
-    pub time: Option<PlannedTime>,
+    pub time: Option<UniformTime>,
+    pub layers: Layers,
     pub waves: Vec<PlannedWave>,
     pub end_load: Option<f64>,
     pub stored_energy: Option<f64>,
@@ -50,21 +57,39 @@ struct Loads<'a> {
 }
 
 impl Plan {
-    /// All of it, for a shock of this speed (m/s) whose p5 has this upper end (Pa).
-    pub(super) fn tube_part(&self, gas: TestGas<'_>, speed: f64, p5: (f64, f64)) -> Result<TubePart, RecordError> {
+    /// All of it, for a shock of this speed (m/s) whose p5 has this upper end (Pa), and the planned shot with its states.
+    pub(super) fn tube_part(
+        &self,
+        gas: TestGas<'_>,
+        speed: f64,
+        p5: (f64, f64),
+        (shot, states): (&Shot, &States),
+    ) -> Result<TubePart, RecordError> {
         let mut part = TubePart::default();
-        let mut over_tailored = None;
+        let (mut over_tailored, mut found) = (None, None);
         let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| no_driver(&error))?;
-        let driver = self.driver.as_ref().map(|record| ideal_driver(record, self.tube.as_ref())).transpose()?;
+        let driver = self.driver.as_ref().map(|record| driver_of(record, self.tube.as_ref())).transpose()?;
         if let (Some(record), Some(driver)) = (&self.driver, &driver) {
             let drive = driver.for_shock(&behind).map_err(|error| no_driver(&error))?;
             self.driver_pressure(&mut part, driver, &drive, gas, &behind)?;
             part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
             let contact = Contact::new(&behind, &drive);
             let met = contact.interaction();
-            over_tailored = met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|pressure| *pressure > p5.0);
-            self.diagram(&mut part, driver, &behind, &contact)?;
+            // In proportion to p5, of which the upper end counts.
+            over_tailored =
+                met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|high| *high > p5.0).map(|high| high / p5.0 * p5.1);
+            if met.is_err() && contact.tailoring() != Tailoring::Expansion {
+                let text = "the contact surface is over-tailored: a shock comes back and raises the pressure at the end wall above p5 by an amount that is not computed for this test gas, nor compared with a rating";
+                part.flags.push(Flag::new("over-tailored-unchecked", text));
+            }
+            let disturbance = self.tolerance.disturbance.as_ref().map_or(0.0, |change| change.value().to_f64());
+            let (tube, contact) = (self.tube.as_ref(), &contact);
+            found = Setting { behind: &behind, driver, contact, tube, reflected_pressure: p5.0, disturbance }.find(&mut part.flags)?;
+            part.waves = found.as_ref().map_or(Vec::new(), |found| waves(&found.diagram));
         }
+        part.layers = shot.layers(&behind, states, found.as_ref(), &mut part.flags);
+        part.time = found.map(|found| found.time);
+        shot.nothing_observed(part.time.is_some(), &mut part.flags);
         if let Some(tube) = &self.tube {
             let p4 = part.p4_band.map(|[_, high]| high).or(part.p4.as_ref().map(|p4| p4.value));
             let driver = driver.as_ref().zip(p4);
@@ -96,46 +121,6 @@ impl Plan {
         Ok(())
     }
 
-    fn diagram(&self, part: &mut TubePart, driver: &Driver, behind: &BehindShock<'_>, contact: &Contact<'_>) -> Result<(), RecordError> {
-        let lengths =
-            self.tube.as_ref().and_then(|tube| Some((tube.driven_length.as_ref()?.value(), tube.driver_length.as_ref()?.value())));
-        let Some((driven, driver_length)) = lengths else { return Ok(()) };
-        let speeds = match driver.speeds(behind) {
-            Ok(speeds) => speeds,
-            Err(error) => {
-                part.flags.push(Flag::new("no-wave-diagram", format!("no wave diagram: {error}")));
-                return Ok(());
-            }
-        };
-        let contact = contact.contact_return().unwrap_or_else(|_| {
-            let text = "the wave that comes back from the contact surface is taken as a sound wave: the heat capacity of the test gas depends on temperature; a returned shock would be faster";
-            part.flags.push(Flag::new("returned-wave", text));
-            ContactReturn::Wave { speed: speeds.sound_speed_5 }
-        });
-        let lengths = Lengths { driven: Ball::from(driven), driver: Ball::from(driver_length) };
-        let refused = |error: crate::tube::TubeInputError| {
-            RecordError::new(ErrorKind::Value, "tube", "", format!("{error}"), "check the lengths of the tube")
-        };
-        let diagram = WaveDiagram::new(Tube { speeds, lengths, contact }).map_err(refused)?;
-        let time = diagram.test_time(0.0).map_err(refused)?;
-        part.time = Some(PlannedTime {
-            end_wall: computed(time.duration.middle(), "s", Some(time.duration)),
-            cause: time.limit.name().to_string(),
-            shortest_driver: diagram.shortest_driver(0.0).ok().filter(|length| length.is_proven()).map(Enclosure::middle),
-        });
-        let text = "ideal tube: the diaphragm opens at once, without boundary layers; both shorten the uniform time. A disturbance counts from its first wave";
-        part.flags.push(Flag::new("ideal-waves", text));
-        for wave in diagram.waves().into_iter().flatten() {
-            let at = |event: Event| [event.position.middle(), event.time.middle()];
-            let (from, to) = (at(wave.from), at(wave.to));
-            let curved = if wave.name == WaveName::HeadInFan { CURVE } else { 1 };
-            let between = (1..curved).map(|point| at(diagram.fan_point(f64::from(point) / f64::from(CURVE))));
-            let between = between.filter(|point| point[1] < to[1]).collect();
-            part.waves.push(PlannedWave { name: wave.name.name().to_string(), from, to, between });
-        }
-        Ok(())
-    }
-
     fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads<'_>) {
         let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map_or(101_325.0, |ambient| ambient.value.to_f64());
         if let Some(bore) = &tube.driven_bore {
@@ -148,6 +133,11 @@ impl Plan {
             let energy = HeatCapacityRatio::new(driver.heat_capacity_ratio()).ok().and_then(energy);
             part.stored_energy = energy.map(|energy| energy.brode.high());
         }
+        let burst = tube.burst_pressure.as_ref().map(|(typed, absolute)| {
+            let (value, standard) = (absolute.value.to_f64(), absolute.standard_uncertainty);
+            (typed.typed(), [-1.0, 1.0].map(|sign| value + sign * standard.map_or(BURST_SCATTER * value, |standard| 2.0 * standard)))
+        });
+        let gas = if self.flags.iter().any(|flag| flag.code == "can-burn") { " of the unburnt gas" } else { "" };
         for rating in &tube.ratings {
             let limit = rating.pressure.1.value.to_f64();
             let mut line = |load: &str, pressure: f64| {
@@ -159,13 +149,18 @@ impl Plan {
                     let of = if self.efficiency.is_some() { "p4" } else { "p4 of an ideal tube" };
                     line(&format!("{of}, also where the diaphragm does not burst"), p4);
                 }
+                if let Some((_, [_, high])) = burst {
+                    line("burst pressure of the diaphragm", high);
+                }
                 continue;
             }
-            line("p5", loads.reflected);
+            line(&format!("p5{gas}"), loads.reflected);
             if let Some(pressure) = loads.over_tailored {
-                line("end wall after a shock came back from the contact surface", pressure);
+                line(&format!("end wall after a shock came back from the contact surface{gas}"), pressure);
             }
         }
+        let p4 = part.p4_band.or(part.p4.as_ref().map(|p4| [p4.value; 2]));
+        part.flags.extend(burst.zip(p4).and_then(|((typed, burst), p4)| diaphragm(typed, burst, p4)));
         part.limits.sort_by_key(|line| !line.exceeded);
         if part.limits.iter().any(|line| line.exceeded) {
             part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
@@ -173,8 +168,8 @@ impl Plan {
     }
 }
 
-/// The driver of a record in a tube: its gas with the heat capacity at its temperature.
-pub(super) fn ideal_driver(record: &DriverRecord, tube: Option<&TubeRecord>) -> Result<Driver<'static>, RecordError> {
+/// The driver of a record: its gas with the heat capacity at its temperature.
+pub(super) fn driver_of(record: &DriverRecord, tube: Option<&TubeRecord>) -> Result<Driver<'static>, RecordError> {
     let missing = |path: &str, example: &str| {
         let remedy = format!("add it, like {example}");
         RecordError::new(ErrorKind::Field, path, "", "a driver needs its gas and its temperature", remedy)
@@ -188,6 +183,33 @@ pub(super) fn ideal_driver(record: &DriverRecord, tube: Option<&TubeRecord>) -> 
         None => Ok(driver),
         Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| no_driver(&error)),
     }
+}
+
+/// The waves of a diagram, with points on the curved one.
+fn waves(diagram: &WaveDiagram) -> Vec<PlannedWave> {
+    let at = |event: Event| [event.position.middle(), event.time.middle()];
+    let planned = |wave: Wave| {
+        let (from, to) = (at(wave.from), at(wave.to));
+        let curved = if wave.name == WaveName::HeadInFan { CURVE } else { 1 };
+        let between = (1..curved).map(|point| at(diagram.fan_point(f64::from(point) / f64::from(CURVE))));
+        let between = between.filter(|point| point[1] < to[1]).collect();
+        PlannedWave { name: wave.name.name().to_string(), from, to, between }
+    };
+    diagram.waves().into_iter().flatten().map(planned).collect()
+}
+
+/// The flag for a diaphragm that does not burst at p4; both with lower and upper end, Pa.
+fn diaphragm(typed: &str, burst: [f64; 2], p4: [f64; 2]) -> Option<Flag> {
+    if burst[0] > p4[1] {
+        let text = format!(
+            "the diaphragm bursts at {typed}, above p4: unless something else opens it, p4 is left standing in the driver. Vent it from a distance before anybody approaches"
+        );
+        return Some(Flag::new("diaphragm-holds", text));
+    }
+    (burst[1] < p4[0]).then(|| {
+        let text = format!("the diaphragm bursts at {typed}, below p4: the driver does not reach p4; take a stronger diaphragm");
+        Flag::new("diaphragm-bursts-early", text)
+    })
 }
 
 /// The refusal of the faster ideal shock that a driver must be laid out for.

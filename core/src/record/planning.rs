@@ -5,14 +5,14 @@ use alloc::string::String;
 use super::error::{ErrorKind, RecordError};
 use super::plan::{Plan, Target};
 use super::plan_report::{PlanReport, PlannedFill, computed};
-use super::reduce::report;
+use super::reduce::without_tube;
 use super::report::{Report, ReportQuantity};
 use super::shot::Shot;
+use super::shot_tube::test_gas;
 use crate::gas::{Fill, Gas, HeatCapacityRatio, ThermallyPerfectGas};
 use crate::number::{Enclosure, Known};
 use crate::shock::{Entry, Incident, Output, ThermalError, ThermalFill, ThermalShock};
-use crate::shot::{DrivenGas, Reduction, Solved};
-use crate::tube::TestGas;
+use crate::shot::{DrivenGas, Reduction};
 
 /// The fill and the shock that reach a target.
 #[derive(Clone, Debug, PartialEq)]
@@ -121,7 +121,9 @@ impl Plan {
     /// As for [`Plan::solve`], and for a driver that cannot drive this shock.
     pub fn report(&self) -> Result<PlanReport, RecordError> {
         let planned = self.solve()?;
-        planned.shot.with_reduction(|reduction, notes| self.report_of(&planned, reduction, report(&planned.shot, reduction, notes)))?
+        planned
+            .shot
+            .with_reduction(|reduction, notes| self.report_of(&planned, reduction, without_tube(&planned.shot, reduction, notes)))?
     }
 
     fn report_of(&self, planned: &Planned, reduction: &Reduction<'_>, report: Report) -> Result<PlanReport, RecordError> {
@@ -134,11 +136,7 @@ impl Plan {
             self.attenuation.as_ref().filter(|_| farthest > 0.0).map(|attenuation| speed * (1.0 + attenuation.value().to_f64() * farthest));
         let p5 = &report.states.reflected.pressure;
         let upper = (p5.value, p5.value + p5.expanded.unwrap_or(0.0));
-        let gas = match reduction.solved() {
-            Solved::Constant(incident, _) => TestGas::from(incident.fill()),
-            Solved::Thermal(shock) => TestGas::from(shock.fill()),
-        };
-        let part = self.tube_part(gas, speed, upper)?;
+        let part = self.tube_part(test_gas(reduction), speed, upper, (&planned.shot, &report.states))?;
         let mut flags = part.flags;
         flags.extend(report.flags.iter().cloned());
         flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube")));
@@ -152,6 +150,8 @@ impl Plan {
             heat_capacity: report.heat_capacity,
             first_station_speed,
             test_time: part.time,
+            boundary_layer: part.layers.boundary_layer,
+            bifurcation: part.layers.bifurcation,
             waves: part.waves,
             end_load: part.end_load,
             stored_energy: part.stored_energy,

@@ -115,6 +115,13 @@ fn measured(quantity: &Quantity) -> Measured {
 
 /// The report of a shot from its reduction.
 pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
+    let mut report = without_tube(shot, reduction, notes);
+    shot.add_tube(reduction, &mut report);
+    report
+}
+
+/// The same without what driver and tube add.
+pub(super) fn without_tube(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
     let estimate = |output, unit| figure(&reduction.estimate(output), unit);
     let state = |pressure, temperature, outputs: [Output; 2], gas_speed| ReportState {
         pressure,
@@ -160,6 +167,9 @@ pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -
         fit: reduction.fit().map(|fit| fit_lines(shot, fit)),
         budget: budget(reduction),
         correlation: Correlation { temperature_pressure: reduction.correlation(Output::Temperature5, Output::Pressure5) },
+        test_time: None,
+        boundary_layer: None,
+        bifurcation: None,
         flags,
         made_by: MadeBy::this_version(shot, &notes.source),
     }

@@ -10,6 +10,8 @@ use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::shot::Shot;
 use super::text;
+use super::uniform_time::UniformTime;
+use super::wall_layer::{WallLayer, WallLayerCriterion};
 
 /// A reported quantity, in SI units.
 #[derive(Clone, Debug, PartialEq, Serialize)]
@@ -257,6 +259,12 @@ pub struct Report {
     pub budget: Vec<BudgetLine>,
     /// Correlation of outputs.
     pub correlation: Correlation,
+    /// How long the state at the end wall lasts; `None` without gas and temperature of a driver and the lengths of the tube.
+    pub test_time: Option<UniformTime>,
+    /// What the boundary layer leaves of it; `None` without bore and length of the driven section, or without a viscosity.
+    pub boundary_layer: Option<WallLayer>,
+    /// Whether the reflected shock bifurcates; `None` without tube and driver.
+    pub bifurcation: Option<WallLayerCriterion>,
     /// Everything that the reader must know; the flags of the record come first.
     pub flags: Vec<Flag>,
     /// How it came about.

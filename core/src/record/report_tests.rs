@@ -74,6 +74,9 @@ fn report(shot: &Shot) -> Report {
             unit: "m/s",
         }],
         correlation: Correlation { temperature_pressure: Some(0.87) },
+        test_time: None,
+        boundary_layer: None,
+        bifurcation: None,
         flags: alloc::vec![Flag::not_used("leak")],
         made_by: MadeBy::this_version(shot, "constant heat capacity"),
     }
@@ -91,7 +94,21 @@ fn the_object_has_the_keys_in_their_order() {
     let keys = |value: &serde_json::Value| value.as_object().unwrap().keys().cloned().collect::<Vec<_>>();
     assert_eq!(
         keys(&json),
-        ["incident", "states", "reflected", "step", "heat_capacity", "fit", "budget", "correlation", "flags", "made_by"]
+        [
+            "incident",
+            "states",
+            "reflected",
+            "step",
+            "heat_capacity",
+            "fit",
+            "budget",
+            "correlation",
+            "test_time",
+            "boundary_layer",
+            "bifurcation",
+            "flags",
+            "made_by"
+        ]
     );
     assert_eq!(keys(&json["incident"]), ["speed", "mach", "attenuation"]);
     assert_eq!(keys(&json["states"]), ["1", "2", "5"]);

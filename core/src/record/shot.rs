@@ -10,6 +10,7 @@ use super::flag::Flag;
 use super::gas::{self, GasRecord};
 use super::hazard;
 use super::leak::{self, Leak};
+use super::observation;
 use super::optional::{self, Driver, Measured, Survey, Tube, Wall};
 use super::plan::Plan;
 use super::quantity::{Absolute, Mark, Quantity};
@@ -76,6 +77,8 @@ pub struct Shot {
     pub tube: Option<Tube>,
     /// The driver.
     pub driver: Option<Driver>,
+    /// The change of p5 up to which a wave from the contact surface does not end the uniform time, relative; without it every first wave does.
+    pub disturbance: Option<Quantity>,
     /// Doubtful values that the record confirms.
     pub confirmed: Vec<String>,
     /// What the reader of a report must know about the record.
@@ -86,7 +89,7 @@ pub struct Shot {
     pub input_digest: String,
 }
 
-const FIELDS: [&str; 23] = [
+const FIELDS: [&str; 24] = [
     "record",
     "name",
     "gas",
@@ -105,6 +108,7 @@ const FIELDS: [&str; 23] = [
     "measured",
     "tube",
     "driver",
+    "tolerance",
     "date",
     "operator",
     "instruments",
@@ -155,6 +159,7 @@ impl Shot {
         let measured = optional::measured(fields, ambient.as_ref(), &mut reading)?;
         let tube = optional::tube(fields, ambient.as_ref(), &mut reading)?;
         let driver = optional::driver(fields, ambient.as_ref(), &mut reading, &mut flags)?;
+        let disturbance = observation::of_shot(fields, &mut reading)?;
         optional::free_text(fields)?;
         if matches!(speed, Speed::Given(_)) {
             for key in ["attenuation", "clock", "survey"].into_iter().filter(|key| fields.get(key).is_some()) {
@@ -162,9 +167,7 @@ impl Shot {
                 flags.push(Flag::new("not-used", text));
             }
         }
-        for key in ["tube", "driver"].into_iter().filter(|key| fields.get(key).is_some()) {
-            flags.push(Flag::not_used(key));
-        }
+        flags.extend(left_to_plans(tube.as_ref(), driver.as_ref()));
         if let Some(flag) = hazard::can_burn(&gas, &species, driver.as_ref()) {
             flags.insert(0, flag);
         }
@@ -187,6 +190,7 @@ impl Shot {
             measured,
             tube,
             driver,
+            disturbance,
             confirmed: reading.answered,
             flags,
             entries,
@@ -214,12 +218,24 @@ impl Shot {
             measured: None,
             tube: plan.tube.clone(),
             driver: plan.driver.clone(),
+            disturbance: plan.tolerance.disturbance.clone(),
             confirmed: plan.confirmed.clone(),
             flags: plan.flags.clone(),
             entries: plan.entries.clone(),
             input_digest: plan.input_digest.clone(),
         }
     }
+}
+
+/// Flags for what of tube and driver serves to plan a shot and not to reduce one.
+fn left_to_plans(tube: Option<&Tube>, driver: Option<&Driver>) -> Vec<Flag> {
+    let stated = [
+        ("tube.stations", tube.is_some_and(|tube| !tube.stations.is_empty())),
+        ("tube.ratings", tube.is_some_and(|tube| !tube.ratings.is_empty())),
+        ("tube.burst_pressure", tube.is_some_and(|tube| tube.burst_pressure.is_some())),
+        ("driver.pressure", driver.is_some_and(|driver| driver.pressure.is_some())),
+    ];
+    stated.into_iter().filter(|(_, stated)| *stated).map(|(path, _)| Flag::not_used(path)).collect()
 }
 
 /// Refuses a record of another kind than the wanted one.

@@ -88,7 +88,7 @@ fn every_field_is_read_and_every_unused_one_is_said() {
     assert!(matches!(shot.driver.as_ref().unwrap().gas, Some(GasRecord::Mixture(_))));
     let unused: Vec<&str> =
         shot.flags.iter().filter(|flag| flag.code == "not-used").map(|flag| flag.text.split(' ').next().unwrap()).collect();
-    assert_eq!(unused, ["tube", "driver"]);
+    assert_eq!(unused, ["tube.ratings", "driver.pressure"]);
     assert_eq!(shot.flags[0].code, "can-burn");
     assert!(codes(&shot).contains(&"station-left-out") && codes(&shot).contains(&"gauge-pressure"));
 }

@@ -11,6 +11,7 @@ use super::quantity::Mark;
 use super::report::{Fit, Report, ReportQuantity, ReportState};
 use super::shot::{Shot, Speed};
 use super::text_choices::choices;
+use super::time_text;
 use super::unit::Unit;
 
 pub(super) fn render(report: &Report, shot: &Shot) -> String {
@@ -25,6 +26,7 @@ pub(super) fn render(report: &Report, shot: &Shot) -> String {
         fit_section(&mut page, fit, report, shot);
     }
     states(&mut page, report, units);
+    times(&mut page, report);
     if !report.heat_capacity.beside.is_empty() {
         page.heading("Choice of the heat capacity");
         choices(&mut page, &report.heat_capacity, units);
@@ -108,9 +110,10 @@ fn result(page: &mut Page, report: &Report, units: DisplayUnits) {
     for flag in report.flags.iter().filter(|flag| flag.code == FIRST) {
         page.paragraph("! ", &format!("[{}] {}", flag.code, flag.text));
     }
+    let burns = report.flags.iter().any(|flag| flag.code == FIRST);
     let state = &report.states.reflected;
     page.table(&[
-        row(["Pressure p5", &units.show_with_factor(&state.pressure)]),
+        row([if burns { "Pressure p5, unburnt gas" } else { "Pressure p5" }, &units.show_with_factor(&state.pressure)]),
         row(["Temperature T5", &units.show_with_factor(&state.temperature)]),
         row(["Step p5 - p1", &units.show_with_factor(&report.step)]),
         row(["Incident shock speed", &units.show_with_factor(&report.incident.speed)]),
@@ -218,6 +221,18 @@ fn states(page: &mut Page, report: &Report, units: DisplayUnits) {
         row(["Reflected shock, speed in the laboratory", &units.show_with_factor(&report.reflected.speed)]),
         row(["Reflected shock, Mach number relative to gas 2", &units.show_with_factor(&report.reflected.mach)]),
     ]);
+}
+
+fn times(page: &mut Page, report: &Report) {
+    let (layer, bifurcation) = (report.boundary_layer.as_ref(), report.bifurcation.as_ref());
+    let rows = time_text::rows(report.test_time.as_ref(), layer, bifurcation);
+    if !rows.is_empty() {
+        page.heading("How long state 5 lasts");
+        page.table(&rows);
+        if let Some(remarks) = time_text::remarks(layer, bifurcation) {
+            page.paragraph("", &remarks);
+        }
+    }
 }
 
 /// What an uncertainty without a unit is an uncertainty of.

@@ -1,8 +1,9 @@
 //! Whether the reflected shock bifurcates in the boundary layer of the side wall, by Mark's criterion.
 
 use super::input::{TubeInput, TubeInputError};
+use super::test_gas::BehindShock;
 use crate::gas::{Gamma, HeatCapacityRatio, Rule};
-use crate::number::{Ball, Elementary, Enclosure, Function, Known, RootError, Signed, root};
+use crate::number::{Ball, Elementary, Enclosure, Function, Known, RootError, Semifield, Signed, root};
 use crate::shock::Jump;
 use core::fmt;
 
@@ -133,6 +134,38 @@ impl Bifurcation {
             return Err(TubeInput::ReflectedOverIncidentPressure.refuse(ratio.nearest(), Rule::Above(1.0)));
         }
         Ok(Self::compare(Gamma::from_excess(heat_capacity_ratio.excess().ball()), mach, ratio))
+    }
+
+    /// The criterion for the gas behind a shock, of constant heat capacity or thermally perfect, reflected from a rigid wall.
+    ///
+    /// > γ = ρ1 a1²/p1 with ρ1 = ρ2(1 − u2/`U_S`)
+    ///
+    /// # Errors
+    /// [`TubeInputError`] for a γ that is not above 1.
+    ///
+    /// ```
+    /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
+    /// use endwall::shock::{Entry, Incident};
+    /// use endwall::tube::{BehindShock, Bifurcation, Verdict};
+    /// let fill = Fill::new(Gas::new(HeatCapacityRatio::ratio(7, 5)?, 0.0280134)?, 10e3, 295.0)?;
+    /// let shock = Incident::new(&fill, Entry::Mach, 2.0)?;
+    /// let found = Bifurcation::behind(&BehindShock::from(&shock))?;
+    /// assert_eq!(found.verdict, Verdict::Bifurcates);
+    /// assert!((found.stagnation_over_reflected.middle() - 1.2_f64.powf(3.5) * 0.3).abs() < 1e-14);
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    pub fn behind(behind: &BehindShock) -> Result<Self, TubeInputError> {
+        let gamma = if let Some(gamma) = behind.constant_gamma() {
+            gamma
+        } else {
+            let density = behind.density * (Ball::from(1.0) - behind.gas_speed / behind.shock_speed);
+            let ratio = density * behind.sound_speed_1.squared() / behind.gas.pressure().ball();
+            if !(ratio - Ball::from(1.0)).is_certainly_positive() {
+                return Err(TubeInput::HeatCapacityRatio.refuse(ratio.nearest(), Rule::Above(1.0)));
+            }
+            Gamma { d: ratio - Ball::from(1.0), q: Ball::from(1.0) }
+        };
+        Ok(Self::compare(gamma, behind.reflected_speed / behind.sound_speed_1, behind.reflected_over_incident_pressure()))
     }
 
     fn compare(gamma: Gamma<Ball>, mach: Ball, reflected_over_incident_pressure: Ball) -> Self {

@@ -2,6 +2,8 @@
 //! f64: nothing here is proven, and no single number is given.
 
 use super::input::{TubeInput, TubeInputError};
+use super::test_gas::BehindShock;
+use crate::number::{Ball, Semifield};
 
 /// How well the laminar limit is known, relative: the assumed profile of the wall layer.
 const LAMINAR_SPREAD: f64 = 0.27;
@@ -97,23 +99,57 @@ pub struct BoundaryLayer {
     pub viscosity_2: f64,
 }
 
-/// The uniform time at the end wall as the boundary layer leaves it: a band, since neither the state of the layer nor its theory is known better.
+/// What the boundary layer leaves of a time (s) or of a length (m): a band, since neither the state of the layer nor its theory is known better.
 #[derive(Clone, Copy, Debug, PartialEq)]
 #[cfg_attr(feature = "serde", derive(serde::Serialize))]
-pub struct TestTimeBand {
-    /// Without a boundary layer, s.
+pub struct LayerBand {
+    /// Without a boundary layer.
     pub ideal: f64,
-    /// With a laminar layer, s: for `l_m` less and more by 27 %.
+    /// With a laminar layer: for `l_m` less and more by 27 %.
     pub laminar: [f64; 2],
-    /// With a turbulent layer, s: for a film at T1 and at T2.
+    /// With a turbulent layer: for a film at T1 and at T2.
     pub turbulent: [f64; 2],
-    /// The least of all, s.
+    /// The least of those with a layer.
     pub lowest: f64,
-    /// The greatest of those with a layer, s.
+    /// The greatest of those with a layer.
     pub highest: f64,
 }
 
 impl BoundaryLayer {
+    /// Of the shock that leaves this gas behind it, in a tube of a diameter d and a length L1 (m), with the viscosities μ(T1) and μ(T2) (Pa·s); the
+    /// returned wave is taken as weak, c = a5.
+    ///
+    /// > ρ1 = ρ2(1 − u2/`U_S`), conservation of mass
+    ///
+    /// ```
+    /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
+    /// use endwall::shock::{Entry, Incident};
+    /// use endwall::tube::{BehindShock, BoundaryLayer};
+    /// let fill = Fill::new(Gas::new(HeatCapacityRatio::ratio(7, 5)?, 0.0280134)?, 10e3, 295.0)?;
+    /// let shock = Incident::new(&fill, Entry::Mach, 2.0)?;
+    /// let layer = BoundaryLayer::behind(&BehindShock::from(&shock), [0.05, 5.0], [17.7e-6, 25.3e-6]);
+    /// // For γ 7/5 and Mach 2 p2/p1 is 9/2 and ρ2/ρ1 is 8/3.
+    /// assert!((layer.pressure_ratio - 4.5).abs() < 1e-14 && (layer.density_ratio - 8.0 / 3.0).abs() < 1e-14);
+    /// // Without a layer the contact surface is L1 ρ1/ρ2 behind the shock.
+    /// assert!((layer.separation()?.ideal - 1.875).abs() < 1e-14);
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    pub fn behind(behind: &BehindShock, [diameter, driven_length]: [f64; 2], [viscosity_1, viscosity_2]: [f64; 2]) -> Self {
+        let rest = Ball::whole(1) - behind.gas_speed / behind.shock_speed;
+        Self {
+            diameter,
+            driven_length,
+            incident_shock: behind.shock_speed.nearest(),
+            reflected_shock: behind.reflected_speed.nearest(),
+            returned_wave: behind.sound_speed_5.nearest(),
+            fill_density: (behind.density * rest).nearest(),
+            pressure_ratio: (behind.pressure / behind.gas.pressure().ball()).nearest(),
+            density_ratio: (Ball::whole(1) / rest).nearest(),
+            viscosity_1,
+            viscosity_2,
+        }
+    }
+
     fn check(&self) -> Result<(), TubeInputError> {
         TubeInput::Diameter.positive(self.diameter)?;
         TubeInput::DrivenLength.positive(self.driven_length)?;
@@ -149,16 +185,41 @@ impl BoundaryLayer {
         })
     }
 
-    /// The uniform time at the end wall, s, for one law of separation and its limit.
+    /// Separation of shock and contact surface with its slope, when the shock is at the end wall, for one law and its limit (m).
+    fn at_end_wall(&self, limit: f64, law: impl Fn(f64) -> Separation) -> Separation {
+        law(self.driven_length / self.density_ratio / limit)
+    }
+
+    /// The uniform time at the end wall, s, for a separation in parts of a limit (m).
     ///
     /// At the end wall the contact surface is l = T·`l_m` behind the shock and runs with `U_S`(1 − dl/dx); the reflected shock meets it after
     /// l/(that + `U_R`), and the returned wave comes after as much again times `U_R`/c.
-    fn time(&self, limit: f64, law: impl Fn(f64) -> Separation) -> f64 {
-        let ideal_separation = self.driven_length / self.density_ratio;
-        let separation = law(ideal_separation / limit);
+    fn time(&self, limit: f64, separation: Separation) -> f64 {
         let contact_speed = self.incident_shock * (1.0 - separation.slope / self.density_ratio);
         let meeting = separation.value * limit / (contact_speed + self.reflected_shock);
         meeting * (1.0 + self.reflected_shock / self.returned_wave)
+    }
+
+    /// What follows from the separation, for every state of the layer.
+    fn band(&self, result: impl Fn(f64, Separation) -> f64) -> Result<LayerBand, TubeInputError> {
+        self.check()?;
+        let no_layer = Separation { value: 1.0, slope: 1.0 };
+        let ideal = result(self.driven_length / self.density_ratio, no_layer);
+        let with = |limit: f64, law: fn(f64) -> Separation| result(limit, self.at_end_wall(limit, law));
+        let limit = self.laminar_limit();
+        let laminar = [1.0 - LAMINAR_SPREAD, 1.0 + LAMINAR_SPREAD].map(|part| with(limit * part, laminar_separation));
+        let turbulent = self.turbulent_limits().map(|limit| with(limit, turbulent_separation));
+        let all = [laminar[0], laminar[1], turbulent[0], turbulent[1]];
+        let (lowest, highest) = all.into_iter().fold((f64::INFINITY, 0.0_f64), |(low, high), one| (low.min(one), high.max(one)));
+        Ok(LayerBand { ideal, laminar, turbulent, lowest, highest })
+    }
+
+    /// The band of the separation of shock and contact surface as the shock meets the end wall, m: T·`l_m`, without a layer L1 ρ1/ρ2.
+    ///
+    /// # Errors
+    /// As for [`test_time`](Self::test_time).
+    pub fn separation(&self) -> Result<LayerBand, TubeInputError> {
+        self.band(|limit, separation| separation.value * limit)
     }
 
     /// The band of the uniform time at the end wall, s. The expansion can end it earlier.
@@ -185,16 +246,8 @@ impl BoundaryLayer {
     /// assert!(0.0 < band.lowest && band.lowest < band.highest && band.highest < band.ideal);
     /// # Ok::<(), endwall::tube::TubeInputError>(())
     /// ```
-    pub fn test_time(&self) -> Result<TestTimeBand, TubeInputError> {
-        self.check()?;
-        let no_layer = Separation { value: 1.0, slope: 1.0 };
-        let ideal = self.time(self.driven_length / self.density_ratio, |_| no_layer);
-        let limit = self.laminar_limit();
-        let laminar = [1.0 - LAMINAR_SPREAD, 1.0 + LAMINAR_SPREAD].map(|part| self.time(limit * part, laminar_separation));
-        let turbulent = self.turbulent_limits().map(|limit| self.time(limit, turbulent_separation));
-        let all = [laminar[0], laminar[1], turbulent[0], turbulent[1]];
-        let (lowest, highest) = all.into_iter().fold((f64::INFINITY, 0.0_f64), |(low, high), time| (low.min(time), high.max(time)));
-        Ok(TestTimeBand { ideal, laminar, turbulent, lowest, highest })
+    pub fn test_time(&self) -> Result<LayerBand, TubeInputError> {
+        self.band(|limit, separation| self.time(limit, separation))
     }
 }
 
@@ -278,6 +331,21 @@ mod tests {
         assert!(wide.lowest > 0.99 * ideal && wide.highest < ideal, "{wide:?}");
         let narrow = BoundaryLayer { diameter: 0.01, ..LAYER }.test_time().unwrap();
         assert!(narrow.highest < 0.5 * ideal, "{narrow:?}");
+    }
+
+    /// √T = 1/2 at X = 2 ln 2 − 1: the separation is a quarter of its laminar limit, here where the limit is less by 27 %.
+    #[test]
+    fn the_separation_is_a_part_of_its_limit() {
+        let limit = LAYER.laminar_limit();
+        let driven_length = (2.0 * libm::log(2.0) - 1.0) * limit * 0.73 * LAYER.density_ratio;
+        let band = BoundaryLayer { driven_length, ..LAYER }.separation().unwrap();
+        assert!((band.laminar[0] / (0.25 * 0.73 * limit) - 1.0).abs() < 1e-12, "{band:?}");
+        assert!((band.ideal * LAYER.density_ratio / driven_length - 1.0).abs() < 1e-14);
+        assert!(band.lowest <= band.laminar[0] && band.laminar[0] < band.laminar[1] && band.highest < band.ideal);
+        // The limits by hand: d² ρ1 U_S/(41.8 (p2/p1) μ1), and (8d/(4.04·7.5625))^(5/4)·(800·7.5625·0.0813/μ1)^(1/4) for a film at T1.
+        assert!((limit - 0.0025 * 0.0813 * 800.0 / (41.8 * 7.5625 * 22.5e-6)).abs() < 1e-13);
+        let turbulent = libm::pow(0.4 / (4.04 * 7.5625), 1.25) * libm::pow(800.0 * 7.5625 * 0.0813 / 22.5e-6, 0.25);
+        assert!((LAYER.turbulent_limits()[0] / turbulent - 1.0).abs() < 1e-13);
     }
 
     #[test]

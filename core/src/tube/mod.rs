@@ -25,7 +25,7 @@ mod wave_diagram;
 mod waves;
 pub use bifurcation::{Bifurcation, BifurcationBand, BifurcationError, Verdict, bifurcation_band};
 pub use blend::tailored_blend;
-pub use boundary_layer::{BoundaryLayer, Separation, TestTimeBand, laminar_separation, turbulent_separation};
+pub use boundary_layer::{BoundaryLayer, LayerBand, Separation, laminar_separation, turbulent_separation};
 pub use contact::{Contact, TailoredMach, Tailoring};
 pub use driver::{Drive, Driver, DriverGas};
 pub use driver_error::{DriverError, DriverInput, Unproven};

@@ -186,6 +186,14 @@ impl<'a> BehindShock<'a> {
         }
     }
 
+    /// γ − 1, where it is constant.
+    pub(super) fn constant_gamma(&self) -> Option<Gamma<Ball>> {
+        match self.gas {
+            TestGas::Constant(fill) => Some(Gamma::from_excess(fill.gas().heat_capacity_ratio().excess().ball())),
+            TestGas::Thermal(_) => None,
+        }
+    }
+
     /// The gas in state 5, for the waves into it.
     pub(super) fn side_5(&self) -> ContactSide<'a> {
         let constant = |excess| ContactSide::Constant { gamma: Gamma::from_excess(excess), sound_speed: self.sound_speed_5 };

@@ -14,7 +14,8 @@ use crate::output;
 /// Plan a shot: from a wanted state at the end wall to fill pressures, waves and limits
 ///
 /// Reads one plan from a JSON record and prints what to set: ratings that would be exceeded first, then fill and driver pressure, the shock, the
-/// states, the uniform time with its cause, the waves and cautions.
+/// states, the uniform time with its cause at the end wall and at the place that the record observes, what the boundary layer leaves of it,
+/// whether the reflected shock bifurcates, the waves and cautions.
 #[derive(Args)]
 pub struct Arguments {
     /// Record file of the plan; - reads standard input

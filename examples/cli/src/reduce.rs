@@ -13,7 +13,8 @@ use crate::progress::Bar;
 /// Reduce a shot: from its record file to the states, their uncertainties and the budget
 ///
 /// Reads one shot from a JSON record and prints its report: the state behind the reflected shock with expanded uncertainties, flags, the
-/// input as it was understood, the fit of the arrival times, the uncertainty budget and cautions.
+/// input as it was understood, the fit of the arrival times, the uncertainty budget and cautions. A record with driver and tube, as in a plan, has
+/// the uniform time with its cause, the boundary layer and the bifurcation too.
 #[derive(Args)]
 pub struct Arguments {
     /// Record file of the shot; - reads standard input

@@ -84,5 +84,5 @@ fn table(plan: &Plan, report: &PlanReport) -> String {
 
 /// Flags that a reader of the waves must know; all stand in the plan.
 fn concerns_waves(code: &str) -> bool {
-    matches!(code, "returned-wave" | "ideal-waves" | "rating-exceeded")
+    matches!(code, "returned-wave" | "ideal-waves" | "rating-exceeded" | "incident-overtaken" | "weak-disturbance")
 }

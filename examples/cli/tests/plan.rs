@@ -34,6 +34,8 @@ fn the_json_object_has_these_keys() {
         "heat_capacity",
         "first_station_speed",
         "test_time",
+        "boundary_layer",
+        "bifurcation",
         "waves",
         "end_load",
         "stored_energy",
@@ -47,7 +49,12 @@ fn the_json_object_has_these_keys() {
         ("/incident", &["attenuation", "mach", "speed"]),
         ("/states", &["1", "2", "5"]),
         ("/reflected", &["mach", "speed"]),
-        ("/test_time", &["cause", "end_wall", "shortest_driver"]),
+        ("/test_time", &["cause", "disturbance_tolerance", "end_wall", "observed", "returned_wave", "shortest_driver"]),
+        ("/test_time/observed", &["cause", "from_end_wall", "time"]),
+        ("/boundary_layer", &["contact_wave", "separation", "uniform_time", "viscosity"]),
+        ("/boundary_layer/separation", &["laminar", "turbulent", "without"]),
+        ("/boundary_layer/viscosity", &["1", "2", "source"]),
+        ("/bifurcation", &["bifurcates", "stagnation_over_reflected", "wall_layer_mach"]),
         ("/waves/0", &["from", "name", "to"]),
         ("/flags/0", &["code", "text"]),
         ("/limits/0", &["exceeded", "load", "part", "pressure", "rating"]),
@@ -57,7 +64,9 @@ fn the_json_object_has_these_keys() {
         found.sort_unstable();
         assert_eq!(found, wanted, "{object}");
     }
-    for (path, unit) in [("/fill/p1", "Pa"), ("/fill/p4", "Pa"), ("/test_time/end_wall", "s"), ("/step", "Pa")] {
+    for (path, unit) in
+        [("/fill/p1", "Pa"), ("/fill/p4", "Pa"), ("/test_time/end_wall", "s"), ("/test_time/observed/time", "s"), ("/step", "Pa")]
+    {
         assert_eq!(report.pointer(path).unwrap()["unit"], unit, "{path}");
     }
     // Absent is null.
@@ -65,6 +74,8 @@ fn the_json_object_has_these_keys() {
     let bare = json(&bare);
     assert!(bare["fill"]["p4"].is_null() && bare["test_time"].is_null());
     assert_eq!(bare["waves"], serde_json::json!([]));
+    let narrow = json(&changed(PLAN, "\"driven_bore\": \"81.0 mm\",", ""));
+    assert!(narrow["boundary_layer"].is_null() && !narrow["bifurcation"].is_null());
 }
 
 /// What `plan` says to set, given to `reduce`, is the state that was wanted.

@@ -83,6 +83,18 @@ fn a_rating_stands_in_its_row() {
     assert!(rows[2][10].starts_with("RATING EXCEEDED (driver): do not fire; "), "{csv}");
 }
 
+/// The fields for the place that is observed and for disturbances change no column, present or absent.
+#[test]
+fn what_is_observed_changes_no_column() {
+    let bare = changed(&changed(PLAN, "    \"observe\": \"20 mm\",\n", ""), ", \"disturbance\": \"1 %\"", "");
+    let [with, without] = [PLAN, &bare].map(|record| sweep(record, "1200 K..2000 K", "2").good());
+    assert_eq!(with.lines().next(), Some(HEADER));
+    for (with, without) in rows(&with).iter().zip(&rows(&without)) {
+        assert_eq!((with.len(), &with[..8]), (11, &without[..8]));
+    }
+    sweep(&changed(PLAN, "\"20 mm\"", "\"20 m\""), "1200 K..2000 K", "2").refused(&["tube.observe", "20 m", "6.20 m long"]);
+}
+
 #[test]
 fn a_step_is_swept_in_its_unit() {
     let record = r#"{ "record": "plan/1", "gas": { "heat_capacity_ratio": "7/5", "molar_mass": "28.014 g/mol" }, "temperature": "300 K",
@@ -93,7 +105,7 @@ fn a_step_is_swept_in_its_unit() {
     // γ 7/5 at Mach 2: the step is 14 times the fill pressure, T5/T1 is 5/2, p2/p1 is 9/2.
     assert_eq!(rows[3][..8], ["750.000", "150.000", "10.000", "", rows[3][4].as_str(), "2.0000", "506.25", "45.000"]);
     // No driver, no time; what the plan flags is named.
-    assert_eq!(rows[3][8..], ["", "", "flags constant-heat-capacity"]);
+    assert_eq!(rows[3][8..], ["", "", "flags bifurcation constant-heat-capacity"]);
 }
 
 #[test]

@@ -24,8 +24,10 @@ fn the_json_object_has_exactly_the_keys_of_the_format_in_their_order() {
     let fitted = ["value", "unit", "standard_uncertainty", "expanded", "coverage_factor"];
     for record in [ARGON, SENSOR, KINETICS, NITROGEN] {
         let report = json(record);
-        let top = ["incident", "states", "reflected", "step", "heat_capacity", "fit", "budget", "correlation", "flags", "made_by"];
-        assert_eq!(keys(&report), top);
+        let top = ["incident", "states", "reflected", "step", "heat_capacity", "fit", "budget", "correlation"];
+        let end = ["test_time", "boundary_layer", "bifurcation", "flags", "made_by"];
+        assert_eq!(keys(&report), [&top[..], &end].concat());
+        assert!(end[..3].iter().all(|key| report[key].is_null()));
         assert_eq!(keys(&report["incident"]), ["speed", "mach", "attenuation"]);
         assert_eq!(keys(&report["incident"]["speed"]), fitted);
         assert_eq!(keys(&report["incident"]["attenuation"]), fitted);
@@ -273,6 +275,27 @@ fn doubts_about_a_result_are_flags_and_no_failure() {
     let question = changed(BY_SPEED, "296.2 ± 0.5 K", "80 ± 0.5 K");
     reduce(&question, &[]).refused(&["fill.temperature", "80 ± 0.5 K", "\"confirm\": [\"fill.temperature\"]"]);
     flagged(&changed(&question, "\"record\"", "\"confirm\": [\"fill.temperature\"], \"record\""), "confirmed");
+}
+
+/// Tube and driver as in a plan: how long state 5 lasts, and what the boundary layer does.
+#[test]
+fn a_shot_with_tube_and_driver_has_its_test_time() {
+    let fields = "\"tube\": { \"driven_length\": \"6.2 m\", \"driver_length\": \"2.6 m\", \"driven_bore\": \"81 mm\", \"observe\": \"20 mm\" }, \"driver\": { \"gas\": { \"He\": \"balance\" }, \"temperature\": \"296 K\" }, \"tolerance\": { \"disturbance\": \"1 %\" }, \"record\"";
+    let record = changed(BY_SPEED, "\"record\"", fields);
+    let report = json(&record);
+    let number = |path: &str| report.pointer(path).and_then(Value::as_f64).unwrap_or_else(|| panic!("{path}: {report}"));
+    assert!(number("/test_time/end_wall/value") > number("/test_time/observed/time/value"));
+    assert_eq!(number("/test_time/disturbance_tolerance"), 0.01);
+    assert!(number("/boundary_layer/uniform_time/0") < number("/boundary_layer/uniform_time/1"));
+    assert!(number("/boundary_layer/uniform_time/1") <= number("/test_time/end_wall/value"));
+    assert!(number("/bifurcation/wall_layer_mach") > 1.0);
+    let text = reduce(&record, &[]).good();
+    for words in ["How long state 5 lasts", "Uniform time 20.0 mm from the end wall", "laminar, ", "by Mark's criterion", "[ideal-waves]"] {
+        assert!(text.contains(words), "{words}\n{text}");
+    }
+    let seeded = reduce(&record, &["--monte-carlo", "20000", "--json"]).good();
+    assert_eq!(serde_json::from_str::<Value>(&seeded).unwrap()["test_time"], report["test_time"]);
+    reduce(&changed(&record, "20 mm", "-20 mm"), &[]).refused(&["tube.observe", "-20 mm", "not negative"]);
 }
 
 #[test]
