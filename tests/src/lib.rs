@@ -6,6 +6,7 @@
 pub mod data;
 pub mod euler;
 pub mod glenn;
+pub mod lagrangian;
 pub mod oracle;
 pub mod random;
 pub mod same_bits;
