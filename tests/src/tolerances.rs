@@ -143,3 +143,10 @@ pub const TWO_GASES_DRIVER_LENGTH_TIMES_CELLS: f64 = 0.2;
 
 /// Mean change of p5 while the reflected shock crosses those few cells around a tailored contact surface, relative, times cells. Largest seen: 1.3.
 pub const TWO_GASES_NOTCH_TIMES_CELLS: f64 = 2.5;
+
+/// A plan in plain doubles against a proven one, relative: some dozens of roundings, and what a fifth or seventh power and the distance to the limit of the
+/// driver make of them.
+pub const PLAIN_PLAN: f64 = 1e-12;
+
+/// Target and reduced planned shot, relative: fill pressure and shock speed are rounded to doubles, or enclosed by a few.
+pub const PLANNED_SHOT: f64 = 1e-13;
