@@ -123,11 +123,11 @@ impl PlainGas {
 }
 
 impl Wanted {
-    /// p4/p2 and a3/a4 for gas of this speed.
+    /// p4/p2 and a3/a4 for gas of this speed; no pressure where the driver gas does not reach it.
     fn expansion(&self, gas_speed: f64, sound_speed_4: f64) -> [f64; 2] {
         let g = self.driver.0.gamma;
         let ratio = 1.0 - 0.5 * (g - 1.0) * gas_speed / sound_speed_4;
-        [ratio.powf(-2.0 * g / (g - 1.0)), ratio]
+        [if ratio > 0.0 { ratio.powf(-2.0 * g / (g - 1.0)) } else { f64::NAN }, ratio]
     }
 
     /// The plan.

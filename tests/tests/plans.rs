@@ -114,7 +114,7 @@ fn compare(wanted: &Wanted, typed: [Typed; 2], plan: &PlainPlan) -> Result<(), T
 
 #[test]
 fn a_plan_in_plain_doubles_has_the_same_numbers() {
-    let inputs = (test_gas(), driver_gas(), 250.0f64..450.0, 0.02f64..2.0, 1e4f64..1e7, 280.0f64..600.0, 2.0f64..12.0, 0.5f64..12.0);
+    let inputs = (test_gas(), driver_gas(), 250.0f64..450.0, 0.02f64..3.0, 1e4f64..1e7, 280.0f64..600.0, 2.0f64..12.0, 0.5f64..12.0);
     let (kinds, driven) = (std::cell::Cell::new([0; 2]), std::cell::Cell::new(0));
     check(41, 500, &inputs, |(test_gas, driver, temperature, excess, pressure, driver_temperature, driven_length, driver_length)| {
         let wanted = Wanted {
@@ -125,7 +125,7 @@ fn a_plan_in_plain_doubles_has_the_same_numbers() {
             efficiency: [0.9, 0.02],
         };
         let plan = wanted.plan();
-        // NaN where the driver does not reach the Mach number at its efficiency.
+        // The ideal shock that an efficiency asks for may be beyond the driver.
         if !plan.driver_pressures.iter().all(|pressure| pressure.is_finite()) {
             return Ok(());
         }
@@ -136,7 +136,7 @@ fn a_plan_in_plain_doubles_has_the_same_numbers() {
         kinds.set(seen);
         compare(&wanted, [test_gas, driver], &plan)
     });
-    println!("{} plans, ended by the head and by the contact surface: {:?}", driven.get(), kinds.get());
+    println!("{} plans with a driver that is fast enough, ended by the head and by the contact surface: {:?}", driven.get(), kinds.get());
     assert!(kinds.get().into_iter().all(|count| count > 50), "{:?}", kinds.get());
 }
 

@@ -277,7 +277,7 @@ fn an_expansion_returns_from_an_under_tailored_contact_surface() {
 
 #[test]
 fn a_shock_returns_from_an_over_tailored_contact_surface() {
-    let finest = OVER_TAILORED.check([100, 200, 400]);
+    let finest = OVER_TAILORED.check([200, 400, 800]);
     assert_eq!(finest.predicted.met.returned, Tailoring::Shock);
     finest.contact_surface();
     finest.after_returned_wave();
