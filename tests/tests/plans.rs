@@ -8,7 +8,7 @@ use endwall::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio, ThermallyPer
 use endwall::number::{Ball, Enclosure, Rational};
 use endwall::record::Plan;
 use endwall::shock::{Entry, Incident, Output, ThermalFill, ThermalShock};
-use endwall::tube::{BehindShock, Contact, Driver, DriverError, Efficiency, Lengths, Limit, TestGas, Tube, WaveDiagram};
+use endwall::tube::{BehindShock, Contact, Driver, DriverError, Efficiency, Event, Lengths, Limit, TestGas, Tube, WaveDiagram};
 use endwall_tests::plain_plan::{PlainGas, PlainPlan, Wanted};
 use endwall_tests::tolerances::{PLAIN_PLAN, PLANNED_SHOT};
 use proptest::prelude::{Just, Strategy, prop_oneof};
@@ -95,7 +95,7 @@ fn compare(wanted: &Wanted, typed: [Typed; 2], plan: &PlainPlan) -> Result<(), T
     let tube = Tube { speeds, lengths, contact: contact.contact_return().map_err(fail)? };
     let diagram = WaveDiagram::new(tube).map_err(fail)?;
     let crossings = [tube.contact_meeting(), tube.head_leaves_fan(), tube.head_meets_contact(), tube.head_meets_reflected_shock()]
-        .map(|event| event.enclosure());
+        .map(Event::enclosure);
     for ([place, time], proven) in plan.crossings.into_iter().zip(crossings) {
         close("place of a crossing", place, proven.position.middle(), wanted.lengths[0] + wanted.lengths[1])?;
         near("time of a crossing", time, proven.time.middle())?;
@@ -181,7 +181,7 @@ fn target() -> impl Strategy<Value = (f64, [f64; 2])> {
 fn reducing_a_planned_shot_returns_the_target() {
     check(42, 200, &(test_gas(), target()), |(typed, (temperature, target))| {
         let ((n, d), mass) = typed;
-        let described = format!(r#"{{ "heat_capacity_ratio": "{n}/{d}", "molar_mass": "{}e-6 kg/mol" }}"#, mass);
+        let described = format!(r#"{{ "heat_capacity_ratio": "{n}/{d}", "molar_mass": "{mass}e-6 kg/mol" }}"#);
         let plan = record(&described, "", temperature, target)?;
         returns(&plan, target, |pressure, speed| {
             let fill = Fill::new(gas(typed), pressure, temperature).map_err(fail)?;
