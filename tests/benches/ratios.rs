@@ -148,6 +148,17 @@ fn main() {
         128,
     );
     println!("Newton steps of both shocks, at most: {}", ways::thermal::most_steps(&ways::thermal::fill()));
+    let planner = ways::plan::Planner::new;
+    let (plain, proven, thermal) = (planner(), planner(), planner());
+    table(
+        "a whole plan",
+        vec![
+            Row::repeated("plain, constant heat capacity", move |turn| plain.plain(turn)),
+            Row::repeated("proven, constant heat capacity", move |turn| proven.proven(turn)),
+            Row::repeated("proven, heat capacity of T", move |turn| thermal.thermal(turn)),
+        ],
+        16,
+    );
     table(
         "a record, five stations",
         vec![

@@ -6,7 +6,9 @@
 pub mod data;
 pub mod euler;
 pub mod glenn;
+pub mod lagrangian;
 pub mod oracle;
+pub mod plain_plan;
 pub mod random;
 pub mod same_bits;
 pub mod tolerances;

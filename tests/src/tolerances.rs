@@ -121,3 +121,32 @@ pub const COLLISION_INTEGRAL: f64 = 0.0017;
 /// Arrival of a wave at the end wall in a finite-volume run, relative, times the number of cells: the kink in the pressure is smeared over a few cells,
 /// and found from two levels behind it. Largest seen on 500 to 1500 cells: 5.8.
 pub const EULER_ARRIVAL_TIMES_CELLS: f64 = 8.0;
+
+/// Times of waves in a run of two gases whose cells move with the gas, relative, times the number of cells in the driven section: shocks are captured over
+/// two to three cells, bends smeared over a few, and the gas next to the contact surface keeps what the opening of the diaphragm left in a few cells, where
+/// waves run faster or slower. Largest seen on 100 to 400 cells: 2.7.
+pub const TWO_GASES_TIME_TIMES_CELLS: f64 = 4.0;
+
+/// The same for the slow rise that the tail of the fan brings, whose beginning is told from the first per cent. Largest seen on 75 to 300 cells: 4.4.
+pub const TWO_GASES_TAIL_TIMES_CELLS: f64 = 8.0;
+
+/// Plateau pressure in such a run, relative, times cells. Largest seen: 0.075.
+pub const TWO_GASES_PRESSURE_TIMES_CELLS: f64 = 0.15;
+
+/// Place of the contact surface, and pressure and speed after the reflected shock has passed it, relative, times cells: the same few cells around it send
+/// echoes. Largest seen: 1.8 (behind a shock of Mach 4.5).
+pub const TWO_GASES_CONTACT_TIMES_CELLS: f64 = 3.0;
+
+/// How much later the plateau ends with a longer driver, relative to the time at which it ends, times cells: most of the error is that of both runs.
+/// Largest seen: 0.06.
+pub const TWO_GASES_DRIVER_LENGTH_TIMES_CELLS: f64 = 0.2;
+
+/// Mean change of p5 while the reflected shock crosses those few cells around a tailored contact surface, relative, times cells. Largest seen: 1.3.
+pub const TWO_GASES_NOTCH_TIMES_CELLS: f64 = 2.5;
+
+/// A plan in plain doubles against a proven one, relative: some dozens of roundings, and what a fifth or seventh power and the distance to the limit of the
+/// driver make of them.
+pub const PLAIN_PLAN: f64 = 1e-12;
+
+/// Target and reduced planned shot, relative: fill pressure and shock speed are rounded to doubles, or enclosed by a few.
+pub const PLANNED_SHOT: f64 = 1e-13;

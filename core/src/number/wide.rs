@@ -41,8 +41,8 @@ impl Wide {
     pub(crate) fn checked_add(&self, other: &Self) -> Option<Self> {
         let mut sum = [0; LIMBS];
         let mut carry = false;
-        for ((out, a), b) in sum.iter_mut().zip(self.0).zip(other.0) {
-            let (partial, first) = a.overflowing_add(b);
+        for ((out, a), b) in sum.iter_mut().zip(&self.0).zip(&other.0) {
+            let (partial, first) = a.overflowing_add(*b);
             let (limb, second) = partial.overflowing_add(u64::from(carry));
             *out = limb;
             carry = first || second;
@@ -54,8 +54,8 @@ impl Wide {
     pub(crate) fn checked_sub(&self, other: &Self) -> Option<Self> {
         let mut difference = [0; LIMBS];
         let mut borrow = false;
-        for ((out, a), b) in difference.iter_mut().zip(self.0).zip(other.0) {
-            let (partial, first) = a.overflowing_sub(b);
+        for ((out, a), b) in difference.iter_mut().zip(&self.0).zip(&other.0) {
+            let (partial, first) = a.overflowing_sub(*b);
             let (limb, second) = partial.overflowing_sub(u64::from(borrow));
             *out = limb;
             borrow = first || second;
@@ -92,7 +92,7 @@ impl Wide {
     }
 
     pub(crate) fn checked_shl(&self, bits: u32) -> Option<Self> {
-        if self.is_zero() {
+        if bits == 0 || self.is_zero() {
             return Some(*self);
         }
         if self.length().checked_add(bits)? > LIMBS as u32 * 64 {
@@ -101,8 +101,8 @@ impl Wide {
         let (limbs, bits) = ((bits / 64) as usize, bits % 64);
         let mut shifted = [0; LIMBS];
         let mut carry = 0;
-        for (out, limb) in shifted.iter_mut().skip(limbs).zip(self.0) {
-            let total = (u128::from(limb) << bits) | carry;
+        for (out, limb) in shifted.iter_mut().skip(limbs).zip(&self.0) {
+            let total = (u128::from(*limb) << bits) | carry;
             *out = total as u64;
             carry = total >> 64;
         }
@@ -111,6 +111,9 @@ impl Wide {
 
     /// self/2ⁿ, rounded down.
     pub(crate) fn shr(&self, bits: u32) -> Self {
+        if bits == 0 {
+            return *self;
+        }
         let (limbs, bits) = ((bits / 64) as usize, bits % 64);
         let mut shifted = [0; LIMBS];
         let above = self.0.iter().skip(limbs + 1).chain(core::iter::once(&0));

@@ -54,8 +54,8 @@ pub struct Incident {
 /// How the strength of the shock is known.
 #[derive(Clone, Copy, Debug)]
 enum Strength {
-    /// All inputs exact and z a rational function of them: counted pairs, integers in doubt.
-    Rational,
+    /// All inputs exact and z a rational function of them, as a pair where it is in its range: counted pairs, integers in doubt.
+    Rational { z: Option<Counted> },
     /// All inputs exact, z the root of a quadratic.
     Algebraic { z: Ball, mach: Enclosure, mach_excess: Enclosure },
     /// Some input is a tolerance.
@@ -94,7 +94,7 @@ impl Incident {
             return self.value.enclosure();
         }
         match self.strength {
-            Strength::Rational => self.counted(output).unwrap_or_else(|| self.ball(output).enclosure()),
+            Strength::Rational { z } => self.counted(output, z).unwrap_or_else(|| self.ball(output).enclosure()),
             Strength::Algebraic { mach, .. } if output == Output::Mach => mach,
             Strength::Algebraic { mach_excess, .. } if output == Output::MachExcess => mach_excess,
             Strength::Algebraic { .. } => self.ball(output).enclosure(),
@@ -249,12 +249,13 @@ impl Incident {
 
     /// An output at a point, as a ball.
     pub(crate) fn ball(&self, output: Output) -> Ball {
-        self.ball_flow(self.z()).evaluate(output)
+        self.ball_flow().evaluate(output)
     }
 
-    fn ball_flow(&self, z: Ball) -> Flow<Ball> {
+    /// All of them.
+    pub(crate) fn ball_flow(&self) -> Flow<Ball> {
         let problem = self.ball_problem();
-        Flow::new(Jump::new(problem.gamma, z), problem.gamma, problem.pressure, problem.temperature, problem.molar_mass)
+        Flow::new(Jump::new(problem.gamma, self.z()), problem.gamma, problem.pressure, problem.temperature, problem.molar_mass)
     }
 
     /// The shock that the same quantity fixes in another exact fill.
@@ -264,16 +265,16 @@ impl Incident {
 
     /// The same shock with its strength computed, for exact inputs.
     fn solved(self) -> Self {
-        if self.exact_jump().is_some() {
-            return Self { strength: Strength::Rational, ..self };
+        if let Some(jump) = self.exact_jump() {
+            return Self { strength: rational(&jump), ..self };
         }
         let this = Self { branch: self.nominal().branch(self.entry), ..self };
         let z = this.ball_z();
         let excess = mach_excess(z);
         let mach_excess = this.settled(excess.enclosure(), Some);
         if mach_excess.is_exact() {
-            let basis = (Entry::MachExcess, Known::from(mach_excess.low()));
-            return Self { basis, strength: Strength::Rational, ..this };
+            let this = Self { basis: (Entry::MachExcess, Known::from(mach_excess.low())), ..this };
+            return Self { strength: this.exact_jump().map_or(Strength::Rational { z: None }, |jump| rational(&jump)), ..this };
         }
         let mach = this.settled((excess + Ball::whole(1)).enclosure(), |mach| mach.checked_sub(Rational::ONE));
         Self { strength: Strength::Algebraic { z, mach, mach_excess }, ..this }
@@ -298,7 +299,7 @@ impl Incident {
     }
 
     /// One output by counted pairs, the last bit by integers.
-    fn counted(&self, output: Output) -> Option<Enclosure> {
+    fn counted(&self, output: Output, z: Option<Counted>) -> Option<Enclosure> {
         let entry = |x: Known| Counted::from_rational(x.exact()?, -Counted::ENTRY, Counted::ENTRY);
         let gamma = self.fill.gas().heat_capacity_ratio().counted()?;
         let jump = match self.basis {
@@ -307,7 +308,7 @@ impl Incident {
                 let excess = if basis == Entry::Mach { value.checked_sub(Rational::ONE)? } else { value };
                 Jump::from_mach_excess(gamma, Counted::from_rational(excess, -Counted::ENTRY, MACH_EXPONENT)?)
             }
-            _ => Jump::new(gamma, self.exact_jump()?.mach_squared_excess().counted(Z_RANGE.0, Z_RANGE.1)?),
+            _ => Jump::new(gamma, z?),
         };
         let [_, _, pressure, temperature, molar_mass] = self.inputs();
         let flow = Flow::new(jump, gamma, entry(pressure)?, entry(temperature)?, entry(molar_mass)?);
@@ -321,12 +322,17 @@ impl Incident {
 
     /// z = M² − 1 at a point.
     pub(super) fn z(&self) -> Ball {
-        let rational = || self.exact_jump()?.mach_squared_excess().counted(Z_RANGE.0, Z_RANGE.1);
         match self.strength {
             Strength::Algebraic { z, .. } => z,
-            _ => rational().map_or_else(|| self.ball_z(), Ball::from),
+            Strength::Rational { z: Some(z) } => Ball::from(z),
+            _ => self.ball_z(),
         }
     }
+}
+
+/// The strength of a jump that integers formed.
+fn rational(jump: &Jump<Exact>) -> Strength {
+    Strength::Rational { z: jump.mach_squared_excess().counted(Z_RANGE.0, Z_RANGE.1) }
 }
 
 /// The optimal enclosure of a counted output.

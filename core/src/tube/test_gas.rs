@@ -107,7 +107,8 @@ impl<'a> BehindShock<'a> {
         let inputs =
             [shock.entry().1, fill.pressure(), fill.temperature(), fill.gas().molar_mass(), fill.gas().heat_capacity_ratio().known()];
         if inputs.iter().all(|input| input.exact().is_some()) {
-            Self::new(gas, |output| shock.ball(output))
+            let flow = shock.ball_flow();
+            Self::new(gas, |output| flow.evaluate(output))
         } else {
             Self::new(gas, |output| Ball::around(shock.output(output)))
         }

@@ -6,6 +6,7 @@
 pub mod interval;
 pub mod inverse;
 pub mod iterate;
+pub mod plan;
 pub mod record;
 pub mod thermal;
 pub mod timing;
