@@ -17,13 +17,24 @@
 //! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`), `tube` (`driven_length`,
 //! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
 //! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory
-//! sets), `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
+//! sets), `filling`, `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
+//!
+//! `filling` asks for the steps in which the mixture is made by partial pressures. Needed: `vessel` (`mixing vessel`, or `driven section`, which is filled up to
+//! the planned fill pressure at its temperature), in a mixing vessel `pressure` (final, marked), and for a mixture that can burn `rating` (marked; that of the driven
+//! section stands in `tube.ratings`). Optional: `temperature` (of a mixing vessel), `order` (otherwise that of `gas`), `residual` (pressure that the pump left,
+//! taken as air), `gauge` (standard uncertainty of a reading, `"0.1 %"` or `"20 Pa"`, or both as `{ "relative": …, "absolute": … }`, independent from one
+//! reading to the next), `temperature_scatter` (standard uncertainty by which the gas misses the temperature of the vessel at a reading, `"0.2 K"`),
+//! `vapour_pressures` (of species that are not built in, at the temperature of the filling: `{ "heptane": "5.3 kPa" }`). See [`FillingRecord`] and
+//! [`FillingReport`]. A gas above its vapour pressure is refused, in the vessel and in every planned fill.
 
 mod alternatives;
 mod check;
 mod digest;
 mod driven;
 mod error;
+mod filling;
+mod filling_report;
+mod filling_text;
 mod flag;
 mod format;
 mod gas;
@@ -54,6 +65,8 @@ mod unit;
 pub use digest::input_digest;
 pub use driven::{GAS_DATA, GasNotes};
 pub use error::{ErrorKind, RecordError};
+pub use filling::{FillingRecord, Gauge, Vessel};
+pub use filling_report::{FillingLine, FillingReport, FillingResidual};
 pub use flag::Flag;
 pub use format::value_with_uncertainty;
 pub use gas::{Component, ConstantGas, GasRecord};

@@ -6,6 +6,7 @@ use alloc::vec::Vec;
 
 use super::digest::input_digest;
 use super::error::{ErrorKind, RecordError};
+use super::filling::{self, FillingRecord};
 use super::flag::Flag;
 use super::gas::{self, GasRecord};
 use super::hazard;
@@ -71,6 +72,8 @@ pub struct Plan {
     pub efficiency: Option<Quantity>,
     /// How well the laboratory meets what it sets.
     pub tolerance: Tolerance,
+    /// How the mixture is made.
+    pub filling: Option<FillingRecord>,
     /// Ambient pressure, Pa, absolute.
     pub ambient: Option<Quantity>,
     /// Doubtful values that the record confirms.
@@ -83,7 +86,7 @@ pub struct Plan {
     pub input_digest: String,
 }
 
-const FIELDS: [&str; 18] = [
+const FIELDS: [&str; 19] = [
     "record",
     "name",
     "gas",
@@ -96,6 +99,7 @@ const FIELDS: [&str; 18] = [
     "attenuation",
     "efficiency",
     "tolerance",
+    "filling",
     "ambient",
     "date",
     "operator",
@@ -139,13 +143,14 @@ impl Plan {
         let attenuation = optional::attenuation(fields, &mut reading)?;
         let efficiency = efficiency(fields, &mut reading)?;
         let tolerance = tolerance(fields, &mut reading)?;
+        let filling = filling::read(fields, &gas, ambient.as_ref(), &mut reading)?;
         optional::free_text(fields)?;
         if let Some(flag) = hazard::can_burn(&gas, &species, driver.as_ref()) {
             flags.insert(0, flag);
         }
         let entries = read::entries(&node, &reading);
         shot::confirmations(&reading, &entries, &mut flags);
-        Ok(Self {
+        let plan = Self {
             name,
             gas,
             heat_capacity,
@@ -157,12 +162,15 @@ impl Plan {
             attenuation,
             efficiency,
             tolerance,
+            filling,
             ambient,
             confirmed: reading.answered,
             flags,
             entries,
             input_digest: input_digest(file),
-        })
+        };
+        plan.check_filling()?;
+        Ok(plan)
     }
 
     /// A shot into this gas at a fill pressure (Pa) and a shock speed (m/s), with the tolerances of the laboratory as standard uncertainties.

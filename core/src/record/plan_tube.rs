@@ -182,10 +182,6 @@ impl Plan {
                 line("end wall after a shock came back from the contact surface", pressure);
             }
         }
-        part.limits.sort_by_key(|line| !line.exceeded);
-        if part.limits.iter().any(|line| line.exceeded) {
-            part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
-        }
     }
 }
 
