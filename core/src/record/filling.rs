@@ -1,7 +1,7 @@
 //! How a plan's mixture is to be made: the record of it.
 
 use alloc::format;
-use alloc::string::{String, ToString};
+use alloc::string::String;
 use alloc::vec::Vec;
 
 use super::error::{ErrorKind, RecordError};
@@ -223,7 +223,7 @@ fn vapour_pressures(filling: Fields, components: &[Component], reading: &mut Rea
             let wrong = "a vapour pressure is absolute and greater than zero";
             return Err(RecordError::new(ErrorKind::Value, &path, pressure.typed(), wrong, "write it like \"5.5 kPa\""));
         }
-        found.push((name.to_string(), pressure));
+        found.push((name.clone(), pressure));
     }
     Ok(found)
 }

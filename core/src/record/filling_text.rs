@@ -51,8 +51,8 @@ pub(super) fn section(page: &mut Page, report: &PlanReport, units: DisplayUnits)
         page.paragraph(
             "",
             &format!(
-                "The pump left {}, taken as air: {} of the mixture. It is counted in the fractions above; the states are those of the gas without it.",
-                units.show(&left.pressure),
+                "The pump left {} Pa, taken as air: {} of the mixture. It is counted in the fractions above; the states are those of the gas without it.",
+                significant(left.pressure.value, 3),
                 percent(&left.fraction)
             ),
         );
@@ -64,7 +64,7 @@ pub(super) fn section(page: &mut Page, report: &PlanReport, units: DisplayUnits)
     if filling.steps.iter().any(|step| step.fraction.expanded.is_some()) {
         page.paragraph(
             "",
-            "Behind ± stands the expanded uncertainty (k=2) from the readings of the gauge, each with an error of its own; an error in proportion that all readings share cancels.",
+            "Behind ± stands the expanded uncertainty (k=2) from the readings of the gauge, each with an error of its own; an error in proportion that all readings share cancels. For the states to have it too, type it beside the fractions in gas.",
         );
     }
 }

@@ -33,6 +33,7 @@ mod digest;
 mod driven;
 mod error;
 mod filling;
+mod filling_flags;
 mod filling_report;
 mod filling_text;
 mod flag;

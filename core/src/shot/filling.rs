@@ -111,9 +111,9 @@ impl<'a> Filling<'a> {
             share(fraction, added, divisor)
         };
         Some(FillingStep {
-            partial_pressure: best(partial, exactly(one)),
+            partial_pressure: best(partial, &exactly(one)),
             reading: self.reading(number + 1)?,
-            fraction: best(share(fraction.ball(), added, pressure), exactly(self.pressure)),
+            fraction: best(share(fraction.ball(), added, pressure), &exactly(self.pressure)),
         })
     }
 
@@ -121,7 +121,7 @@ impl<'a> Filling<'a> {
     pub fn residual_fraction(&self) -> (f64, Enclosure) {
         let [residual, one, pressure] = [self.residual, Known::from(1), self.pressure];
         let ball = share(residual.ball(), one.ball(), pressure.ball());
-        best(ball, share(exact(residual), exact(one), exact(pressure)))
+        best(ball, &share(exact(residual), exact(one), exact(pressure)))
     }
 
     /// The pressure with this many gases in.
@@ -129,7 +129,7 @@ impl<'a> Filling<'a> {
         let filled = self.fractions.get(..count)?.iter().try_fold(Rational::ZERO, |sum, x| sum.checked_add(*x))?;
         let ends = [self.residual, self.pressure];
         let weights = [filled, Rational::ONE.checked_sub(filled)?].map(Known::from);
-        Some(best(reading(ends.map(Known::ball), weights.map(Known::ball)), reading(ends.map(exact), weights.map(exact))))
+        Some(best(reading(ends.map(Known::ball), weights.map(Known::ball)), &reading(ends.map(exact), weights.map(exact))))
     }
 
     /// Standard uncertainty of the fraction that the gas of this step has in the vessel, from those of the readings: given the number of a reading (0 before
@@ -168,7 +168,7 @@ fn exact(input: Known) -> Exact {
 }
 
 /// The nearest double, and the exact number itself as its enclosure where it is that double.
-fn best(ball: Ball, exact: Exact) -> (f64, Enclosure) {
+fn best(ball: Ball, exact: &Exact) -> (f64, Enclosure) {
     let nearest = ball.nearest();
     let met = exact.compare_double(nearest) == Some(core::cmp::Ordering::Equal);
     (nearest, if met { Enclosure::from(nearest) } else { ball.enclosure() })
