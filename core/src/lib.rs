@@ -25,7 +25,7 @@
 //! | [`gas`] | heat capacity, mixtures, fills; the only place that knows what a gas is |
 //! | [`shock`] | stationary, incident and reflected shock, moving wall, inverses |
 //! | [`tube`] | driver, contact surface and tailoring, wave diagram and test time, boundary layer, bifurcation, loads |
-//! | [`shot`] | arrival times to shock speed, reduction, uncertainty budget, Monte Carlo |
+//! | [`shot`] | filling steps, arrival times to shock speed, reduction, uncertainty budget, Monte Carlo |
 //! | `record` | (feature `record`) quantities with units, record files, reports |
 //!
 //! # Units

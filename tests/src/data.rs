@@ -75,6 +75,8 @@ tables! {
     heat_capacity_library;
     /// Viscosity of dilute gases and the collision integral from property libraries.
     viscosity_library;
+    /// Vapour pressure of pure liquids, and critical points, from property libraries.
+    vapour_pressure_library;
 }
 
 impl Table {

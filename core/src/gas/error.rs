@@ -60,6 +60,8 @@ pub enum Parameter {
     PressureFactor,
     /// Relative humidity.
     RelativeHumidity,
+    /// What a pump left in a vessel before it is filled.
+    ResidualPressure,
 }
 
 impl Parameter {
@@ -93,6 +95,7 @@ impl Parameter {
             Self::Pressure => "pressure",
             Self::PressureFactor => "pressure factor",
             Self::RelativeHumidity => "relative humidity",
+            Self::ResidualPressure => "residual pressure",
         }
     }
 
@@ -100,7 +103,9 @@ impl Parameter {
     pub const fn unit(self) -> &'static str {
         match self {
             Self::MolarMass => " kg/mol",
-            Self::FillPressure | Self::PressureRise | Self::ReflectedPressure | Self::Step | Self::Pressure => " Pa",
+            Self::FillPressure | Self::PressureRise | Self::ReflectedPressure | Self::Step | Self::Pressure | Self::ResidualPressure => {
+                " Pa"
+            }
             Self::FillTemperature | Self::Temperature2 | Self::ReflectedTemperature | Self::DataRange | Self::Temperature => " K",
             Self::ShockSpeed | Self::GasSpeed | Self::WallSpeed | Self::UpstreamSpeed => " m/s",
             Self::WallImpedance => " Pa s/m",

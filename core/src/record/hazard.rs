@@ -28,21 +28,30 @@ pub(super) const CAUTIONS: [&str; 9] = [
 
 /// The flag for a mixture that can burn, by itself or with a hydrogen driver. What a species of the record's own can do is not known.
 pub(super) fn can_burn(gas: &GasRecord, own: &[OwnSpecies], driver: Option<&Driver>) -> Option<Flag> {
-    let oxidiser = find(gas, |species| OXIDISERS.contains(&species))?;
-    let fuel = find(gas, is_fuel);
-    let unknown = find(gas, |species| own.iter().any(|own| own.name == species));
     let driver_gas = driver.and_then(|driver| driver.gas.as_ref());
     let of_driver = driver_gas.and_then(|gas| find(gas, |species| matches!(species, "H2" | "D2" | "HD")));
-    let why = match (fuel, of_driver, unknown) {
-        (Some(species), ..) => format!("this mixture can burn: it holds {species} and {oxidiser}"),
-        (None, Some(species), _) => format!("this mixture can burn: it holds {oxidiser} and the driver holds {species}"),
-        (None, None, Some(species)) => format!("this mixture can burn if {species} is a fuel: it holds {oxidiser}"),
-        (None, None, None) => return None,
-    };
+    let why = reason(gas, own, of_driver)?;
     let text = format!(
         "{why}. All pressures here, and every comparison with a rating, are for the unburnt gas; burning or detonation exceeds them several times"
     );
     Some(Flag::new("can-burn", text))
+}
+
+/// Why the mixture burns by itself; `None` where it does not.
+pub(super) fn mixture_can_burn(gas: &GasRecord, own: &[OwnSpecies]) -> Option<String> {
+    reason(gas, own, None)
+}
+
+fn reason(gas: &GasRecord, own: &[OwnSpecies], of_driver: Option<&String>) -> Option<String> {
+    let oxidiser = find(gas, is_oxidiser)?;
+    let fuel = find(gas, is_fuel);
+    let unknown = find(gas, |species| own.iter().any(|own| own.name == species));
+    match (fuel, of_driver, unknown) {
+        (Some(species), ..) => Some(format!("this mixture can burn: it holds {species} and {oxidiser}")),
+        (None, Some(species), _) => Some(format!("this mixture can burn: it holds {oxidiser} and the driver holds {species}")),
+        (None, None, Some(species)) => Some(format!("this mixture can burn if {species} is a fuel: it holds {oxidiser}")),
+        (None, None, None) => None,
+    }
 }
 
 fn find(gas: &GasRecord, wanted: impl Fn(&str) -> bool) -> Option<&String> {
@@ -51,8 +60,12 @@ fn find(gas: &GasRecord, wanted: impl Fn(&str) -> bool) -> Option<&String> {
     components.iter().find(present).map(|component| &component.species)
 }
 
+pub(super) fn is_oxidiser(species: &str) -> bool {
+    OXIDISERS.contains(&species)
+}
+
 /// Hydrocarbons and their relatives have carbon and hydrogen in their formula.
-fn is_fuel(species: &str) -> bool {
+pub(super) fn is_fuel(species: &str) -> bool {
     FUELS.contains(&species) || (species.starts_with('C') && species.contains('H'))
 }
 

@@ -20,7 +20,7 @@
 //! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`), `tube` (`driven_length`,
 //! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `observe`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
 //! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory
-//! sets; `disturbance`), `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
+//! sets; `disturbance`), `filling`, `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
 //!
 //! `tube.observe` is a distance from the end wall, `"20 mm"`, at which the uniform time is reported too. `tolerance.disturbance`, `"1 %"`, is the change of p5
 //! up to which a wave that comes back from the contact surface does not end it; such a wave is named and flagged. Without the field every first wave
@@ -28,6 +28,14 @@
 //!
 //! A rating must be marked, and a gauge value needs `ambient`. Compared are p5 with its upper end, a shock that comes back from an over-tailored contact
 //! surface in proportion, p4 at the upper end of its band, which stands in the driver where the diaphragm does not burst, and `burst_pressure`.
+//!
+//! `filling` asks for the steps in which the mixture is made by partial pressures. Needed: `vessel` (`mixing vessel`, or `driven section`, which is filled up to
+//! the planned fill pressure at its temperature), in a mixing vessel `pressure` (final, marked), and for a mixture that can burn `rating` (marked; that of the driven
+//! section stands in `tube.ratings`). Optional: `temperature` (of a mixing vessel), `order` (otherwise that of `gas`), `residual` (pressure that the pump left,
+//! taken as air), `gauge` (standard uncertainty of a reading, `"0.1 %"` or `"20 Pa"`, or both as `{ "relative": …, "absolute": … }`, independent from one
+//! reading to the next), `temperature_scatter` (standard uncertainty by which the gas misses the temperature of the vessel at a reading, `"0.2 K"`),
+//! `vapour_pressures` (of species that are not built in, at the temperature of the filling: `{ "heptane": "5.3 kPa" }`). See [`FillingRecord`] and
+//! [`FillingReport`]. A gas above its vapour pressure is refused, in the vessel and in every planned fill.
 //!
 //! # Past shots against a plan
 //!
@@ -46,6 +54,10 @@ mod compare_text;
 mod digest;
 mod driven;
 mod error;
+mod filling;
+mod filling_flags;
+mod filling_report;
+mod filling_text;
 mod flag;
 mod format;
 mod gas;
@@ -83,6 +95,8 @@ pub use compare_report::{CompareReport, Counted, Departure, PastShot, Ready, Rea
 pub use digest::input_digest;
 pub use driven::{GAS_DATA, GasNotes};
 pub use error::{ErrorKind, RecordError};
+pub use filling::{FillingRecord, Gauge, Vessel};
+pub use filling_report::{FillingLine, FillingReport, FillingResidual};
 pub use flag::Flag;
 pub use format::value_with_uncertainty;
 pub use gas::{Component, ConstantGas, GasRecord};

@@ -288,7 +288,12 @@ pub(super) fn pressure(inner: Fields, key: &str, ambient: Option<&Quantity>, rea
 }
 
 /// A pressure on which safety hangs: unmarked, it could be read as either.
-fn marked_pressure(inner: Fields, key: &str, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Pressure, RecordError> {
+pub(super) fn marked_pressure(
+    inner: Fields,
+    key: &str,
+    ambient: Option<&Quantity>,
+    reading: &mut Reading,
+) -> Result<Pressure, RecordError> {
     let found = pressure(inner, key, ambient, reading)?;
     if let Some((typed, _)) = found.as_ref().filter(|(typed, _)| typed.mark() == Mark::Unmarked) {
         let wrong = "this pressure must be marked as gauge or absolute";

@@ -6,6 +6,7 @@ use alloc::vec::Vec;
 
 use super::digest::input_digest;
 use super::error::{ErrorKind, RecordError};
+use super::filling::{self, FillingRecord};
 use super::flag::Flag;
 use super::gas::{self, GasRecord};
 use super::hazard;
@@ -74,6 +75,8 @@ pub struct Plan {
     pub efficiency: Option<Quantity>,
     /// How well the laboratory meets what it sets.
     pub tolerance: Tolerance,
+    /// How the mixture is made.
+    pub filling: Option<FillingRecord>,
     /// Ambient pressure, Pa, absolute.
     pub ambient: Option<Quantity>,
     /// Doubtful values that the record confirms.
@@ -86,7 +89,7 @@ pub struct Plan {
     pub input_digest: String,
 }
 
-const FIELDS: [&str; 18] = [
+const FIELDS: [&str; 19] = [
     "record",
     "name",
     "gas",
@@ -99,6 +102,7 @@ const FIELDS: [&str; 18] = [
     "attenuation",
     "efficiency",
     "tolerance",
+    "filling",
     "ambient",
     "date",
     "operator",
@@ -142,13 +146,14 @@ impl Plan {
         let attenuation = optional::attenuation(fields, &mut reading)?;
         let efficiency = efficiency(fields, &mut reading)?;
         let tolerance = tolerance(fields, &mut reading)?;
+        let filling = filling::read(fields, &gas, ambient.as_ref(), &mut reading)?;
         optional::free_text(fields)?;
         if let Some(flag) = hazard::can_burn(&gas, &species, driver.as_ref()) {
             flags.insert(0, flag);
         }
         let entries = read::entries(&node, &reading);
         shot::confirmations(&reading, &entries, &mut flags);
-        Ok(Self {
+        let plan = Self {
             name,
             gas,
             heat_capacity,
@@ -160,12 +165,15 @@ impl Plan {
             attenuation,
             efficiency,
             tolerance,
+            filling,
             ambient,
             confirmed: reading.answered,
             flags,
             entries,
             input_digest: input_digest(file),
-        })
+        };
+        plan.check_filling()?;
+        Ok(plan)
     }
 
     /// A shot into this gas at a fill pressure (Pa) and a shock speed (m/s), with the tolerances of the laboratory as standard uncertainties.

@@ -7,6 +7,7 @@ use alloc::vec::Vec;
 use serde::Serialize;
 
 use super::error::{ErrorKind, RecordError};
+use super::filling_report::FillingReport;
 use super::flag::Flag;
 use super::plan::Plan;
 use super::plan_text;
@@ -61,6 +62,8 @@ pub struct PlanReport {
     pub limits: Vec<LimitLine>,
     /// What the operator sets.
     pub fill: PlannedFill,
+    /// The steps in which the mixture is made; `None` where the record does not ask for them.
+    pub filling: Option<FillingReport>,
     /// The incident shock at the end wall.
     pub incident: Incident,
     /// States 1, 2 and 5.

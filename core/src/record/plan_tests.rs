@@ -186,10 +186,13 @@ fn ratings_are_marked_or_not_checked() {
         ",\n    \"ratings\": { \"driven\": \"40 bar(g)\", \"driver\": \"60 bar(g)\", \"window\": \"25 bar(g)\", \"sensor\": \"70 bar(g)\" }",
         "",
     );
-    assert!(planned(&none).limits.is_empty());
+    // A rating of the mixing vessel says nothing of the tube.
+    assert!(planned(&none).limits.iter().all(|line| line.part == "mixing vessel"));
     let flat = |text: String| text.split_whitespace().collect::<Vec<_>>().join(" ");
     let unchecked = flat(text(&none));
     assert!(unchecked.contains("ratings not checked") && unchecked.contains("compare every pressure, with its upper end"));
+    let neither = flat(text(&none.lines().filter(|line| !line.contains("\"filling\"")).collect::<String>()));
+    assert!(neither.contains("ratings not checked: the record gives none"), "{neither}");
     let checked = flat(text(DEMO)).to_lowercase();
     assert!(!checked.contains("not checked"), "{checked}");
 }

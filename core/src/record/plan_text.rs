@@ -4,6 +4,9 @@ use alloc::format;
 use alloc::string::{String, ToString};
 use alloc::vec::Vec;
 
+use super::filling_report::LOAD;
+use super::filling_text;
+use super::flag::Flag;
 use super::format::significant;
 use super::hazard::CAUTIONS;
 use super::optional::PARTS;
@@ -21,9 +24,10 @@ pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
     page.line(&format!("Plan {name}: what to set for a wanted state at the end wall"));
     limits(&mut page, report, plan, units);
     set(&mut page, report, plan, units);
+    filling_text::section(&mut page, report, units);
     expected(&mut page, report, units);
     page.heading("Flags");
-    let mut others = report.flags.iter().filter(|flag| !FIRST.contains(&flag.code.as_str())).peekable();
+    let mut others = report.flags.iter().filter(|flag| !is_above(flag)).peekable();
     if others.peek().is_none() {
         page.line(if report.flags.is_empty() { "none" } else { "none but those above" });
     }
@@ -37,7 +41,7 @@ pub(super) fn render(report: &PlanReport, plan: &Plan) -> String {
     }
     waves(&mut page, report);
     page.heading("Before anybody acts on these numbers");
-    for caution in CAUTIONS.iter().filter(|caution| report.limits.is_empty() || !caution.starts_with("Ratings are not checked")) {
+    for caution in CAUTIONS.iter().filter(|caution| !tube_is_rated(report) || !caution.starts_with("Ratings are not checked")) {
         page.paragraph("- ", caution);
     }
     page.heading("Made by");
@@ -57,6 +61,16 @@ pub(super) fn units(plan: &Plan) -> DisplayUnits {
 /// Cautions that stand before every pressure.
 const FIRST: [&str; 4] = ["rating-exceeded", "can-burn", "over-tailored-unchecked", "diaphragm-holds"];
 
+/// False where nothing but the filling is compared with a rating.
+fn tube_is_rated(report: &PlanReport) -> bool {
+    report.limits.iter().any(|line| line.load != LOAD)
+}
+
+/// True for a flag that stands beside the pressures of which it warns.
+fn is_above(flag: &Flag) -> bool {
+    FIRST.contains(&flag.code.as_str()) || filling_text::FIRST.contains(&flag.code.as_str())
+}
+
 /// Exceeded ratings come before every pressure that is to be set.
 fn limits(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {
     page.heading("Ratings");
@@ -68,12 +82,18 @@ fn limits(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits
     } else {
         let mut rows = alloc::vec![row(["part", "load", "upper end", "rating", ""])];
         for line in &report.limits {
-            let verdict = if line.exceeded { "EXCEEDED: do not fire" } else { "within" };
+            let verdict = match (line.exceeded, line.load.as_str()) {
+                (false, _) => "within",
+                (true, LOAD) => "EXCEEDED: do not fill",
+                (true, _) => "EXCEEDED: do not fire",
+            };
             rows.push(row([&line.part, &line.load, &units.pressure(line.pressure), &units.pressure(line.rating), verdict]));
         }
         page.table(&rows);
         let unchecked = unchecked(report, plan);
-        if !unchecked.is_empty() {
+        if !tube_is_rated(report) {
+            page.line("tube ratings not checked: the record gives none");
+        } else if !unchecked.is_empty() {
             page.paragraph("", &format!("Not checked: {unchecked}."));
         }
         page.paragraph("", "Pressures and ratings are absolute; without a stated uncertainty the upper end is the value itself. A rating is a gauge value at room temperature as marked on the part; whether it holds for a sudden load is for the person who rated it to say.");

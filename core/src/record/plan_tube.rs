@@ -161,10 +161,6 @@ impl Plan {
         }
         let p4 = part.p4_band.or(part.p4.as_ref().map(|p4| [p4.value; 2]));
         part.flags.extend(burst.zip(p4).and_then(|((typed, burst), p4)| diaphragm(typed, burst, p4)));
-        part.limits.sort_by_key(|line| !line.exceeded);
-        if part.limits.iter().any(|line| line.exceeded) {
-            part.flags.insert(0, Flag::new("rating-exceeded", "a marked rating is exceeded: do not fire this shot"));
-        }
     }
 }
 

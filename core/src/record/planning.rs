@@ -1,8 +1,10 @@
 //! From a wanted state to what the operator sets.
 
 use alloc::string::String;
+use alloc::vec::Vec;
 
 use super::error::{ErrorKind, RecordError};
+use super::flag::Flag;
 use super::plan::{Plan, Target};
 use super::plan_report::{PlanReport, PlannedFill, computed};
 use super::reduce::without_tube;
@@ -136,13 +138,26 @@ impl Plan {
             self.attenuation.as_ref().filter(|_| farthest > 0.0).map(|attenuation| speed * (1.0 + attenuation.value().to_f64() * farthest));
         let p5 = &report.states.reflected.pressure;
         let upper = (p5.value, p5.value + p5.expanded.unwrap_or(0.0));
-        let part = self.tube_part(test_gas(reduction), speed, upper, (&planned.shot, &report.states))?;
-        let mut flags = part.flags;
+        self.check_condensation(nominal)?;
+        let mut part = self.tube_part(test_gas(reduction), speed, upper, (&planned.shot, &report.states))?;
+        let filling = self.filling_part(&planned.shot, enclosure)?;
+        if let Some(filling) = &filling {
+            part.limits.extend(filling.limit.clone());
+            part.flags.extend(filling.flags.iter().cloned());
+        }
+        part.limits.sort_by_key(|line| !line.exceeded);
+        let mut flags = Vec::new();
+        if part.limits.iter().any(|line| line.exceeded) {
+            let text = "a marked rating is exceeded: neither fill the vessel nor fire this shot before that is settled";
+            flags.push(Flag::new("rating-exceeded", text));
+        }
+        flags.extend(part.flags);
         flags.extend(report.flags.iter().cloned());
         flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube")));
         Ok(PlanReport {
             limits: part.limits,
             fill: PlannedFill { p1, p4: part.p4, p4_band: part.p4_band },
+            filling: filling.map(|filling| filling.report),
             incident: report.incident,
             states: report.states,
             reflected: report.reflected,

@@ -1,9 +1,10 @@
-//! Floor 5: a shot. Arrival times to a shock speed, reduction to states, uncertainty, Monte Carlo.
+//! Floor 5: a shot. Filling steps, arrival times to a shock speed, reduction to states, uncertainty, Monte Carlo.
 mod arrival;
 mod constant;
 mod coverage;
 mod coverage_interval;
 mod estimate;
+mod filling;
 mod fit;
 mod fit_error;
 mod fit_lines;
@@ -22,6 +23,7 @@ mod validate;
 mod validation;
 pub use coverage::{CoverageError, LEVEL_TWO_SIGMA, coverage_factor, effective_degrees_of_freedom};
 pub use coverage_interval::CoverageInterval;
+pub use filling::{Filling, FillingStep};
 pub use fit::{Allowance, FitSettings, fit};
 pub use fit_error::{FitError, FitField};
 pub use fit_result::{AllowanceFit, Fit, FitFlags, FitLine, FitMatrix, FitSource, Outlier, Refit, StationFit};

@@ -27,6 +27,7 @@ fn the_json_object_has_these_keys() {
     let mut wanted = [
         "limits",
         "fill",
+        "filling",
         "incident",
         "states",
         "reflected",
@@ -47,6 +48,9 @@ fn the_json_object_has_these_keys() {
     for (object, wanted) in [
         ("/fill", &["p1", "p4", "p4_band"][..]),
         ("/incident", &["attenuation", "mach", "speed"]),
+        ("/filling", &["can_burn", "departure", "residual", "steps", "temperature", "vessel"]),
+        ("/filling/steps/0", &["fraction", "gas", "gauge_reading", "partial_pressure", "reading"]),
+        ("/filling/residual", &["fraction", "pressure"]),
         ("/states", &["1", "2", "5"]),
         ("/reflected", &["mach", "speed"]),
         ("/test_time", &["cause", "disturbance_tolerance", "end_wall", "observed", "returned_wave", "shortest_driver"]),
