@@ -18,6 +18,14 @@ struct Range<S> {
     a: [S; 7],
 }
 
+impl<S: Semifield> Range<S> {
+    /// The same in another kind of number.
+    #[inline(always)]
+    fn map<T: Semifield>(&self, convert: impl Fn(S) -> T) -> Range<T> {
+        Range { low: self.low, high: self.high, start: convert(self.start), jump: convert(self.jump), a: self.a.map(convert) }
+    }
+}
+
 impl<S: Signed> Range<S> {
     /// `c_p`/R.
     #[inline(always)]
@@ -84,14 +92,7 @@ pub struct HeatCapacity<S> {
 impl<S: Semifield> HeatCapacity<S> {
     /// The same in another kind of number.
     pub fn map<T: Semifield>(&self, convert: impl Fn(S) -> T) -> HeatCapacity<T> {
-        let ranges = self.ranges.map(|range| Range {
-            low: range.low,
-            high: range.high,
-            start: convert(range.start),
-            jump: convert(range.jump),
-            a: range.a.map(&convert),
-        });
-        HeatCapacity { ranges, used: self.used }
+        HeatCapacity { ranges: self.ranges.map(|range| range.map(&convert)), used: self.used }
     }
 
     /// The temperatures between which it is known, K.
@@ -151,6 +152,12 @@ impl<S: Signed> HeatCapacity<S> {
         self.at(index).value(temperature)
     }
 
+    /// `c_p`/R by the polynomial of one range, in another kind of number.
+    #[inline(always)]
+    pub(crate) fn value_as<T: Signed + From<S>>(&self, index: usize, temperature: T) -> T {
+        self.at(index).map(T::from).value(temperature)
+    }
+
     /// T d(`c_p`/R)/dT by the polynomial of one range.
     #[inline(always)]
     pub fn scaled_slope(&self, index: usize, temperature: S) -> S {
@@ -183,6 +190,20 @@ impl<S: Elementary> HeatCapacity<S> {
         });
         let last = self.at(to);
         (sum + part(last, last.start, end)) / temperature
+    }
+
+    /// [`HeatCapacity::mean`] in another kind of number.
+    pub(crate) fn mean_as<T: Elementary + From<S>>(&self, from: usize, temperature: T, excess: T, to: usize) -> T {
+        if from == to { self.at(from).map(T::from).mean(temperature, excess) } else { self.map(T::from).mean(from, temperature, excess, to) }
+    }
+
+    /// [`HeatCapacity::rise`] in another kind of number.
+    pub(crate) fn rise_as<T: Elementary + From<S>>(&self, from: usize, temperature: T, excess: T, to: usize) -> T {
+        if from == to {
+            excess * self.at(from).map(T::from).mean(temperature, excess)
+        } else {
+            self.map(T::from).rise(from, temperature, excess, to)
+        }
     }
 
     /// (s(T(1 + x)) − s(T))/R = ∫ `c_p`/R dT/T at constant pressure, between a temperature T in range `from` and T(1 + x) in range `to`.

@@ -4,7 +4,7 @@ use super::counted::Counted;
 use super::enclosure::{Enclosure, Quality};
 use super::rational::Rational;
 use super::round::{UNIT, add_down, add_up, in_range, power_of_two, sqrt, two_product, two_sum};
-use super::traits::{Positive, Semifield};
+use super::traits::{Decided, Positive, Semifield};
 use core::ops::{Add, Div, Mul, Neg, Sub};
 
 /// A real number within `radius` of head + tail: about 30 digits, and a bound that is computed along.
@@ -30,11 +30,16 @@ pub struct Ball {
 /// Added wherever a rounding may have underflowed: products here are at least 2⁻⁹⁶⁰, their tails' errors at most 2⁻¹⁰⁷⁴ each.
 const TINY: f64 = f64::from_bits(1 << 52);
 
-/// u times a sum of magnitudes of rounded results, rounded up, with what may have underflowed; 0 only where nothing was rounded. That the result
-/// is 0 does not tell: it may have underflowed whole.
+/// u times a sum of magnitudes of rounded results, rounded up, with what may have underflowed; 0 only where nothing was rounded.
 #[inline(always)]
 fn roundings(magnitudes: f64, nothing_rounded: bool) -> f64 {
     if nothing_rounded { 0.0 } else { up(magnitudes * UNIT) + 64.0 * TINY }
+}
+
+/// What may have underflowed in an operation; 0 only where nothing was rounded. That the result is 0 does not tell: it may have underflowed whole.
+#[inline(always)]
+fn underflow(inexact: f64) -> f64 {
+    if inexact == 0.0 { 0.0 } else { 64.0 * TINY }
 }
 
 /// Covers the at most 2⁶ roundings by which a sum of non-negative terms may be too small.
@@ -68,8 +73,8 @@ impl From<Counted> for Ball {
 impl From<Rational> for Ball {
     /// An exact rational number within 2^±900, else unknown.
     fn from(x: Rational) -> Self {
-        if x.is_zero() {
-            return Self::from(0.0);
+        if let Some(exact) = x.as_double() {
+            return Self::from(exact);
         }
         let nearest = x.to_f64();
         if Rational::from(nearest) == x {
@@ -93,8 +98,8 @@ impl Ball {
     #[inline(always)]
     fn computed(head: f64, tail: f64, radius: f64) -> Self {
         let (head, tail) = two_sum(head, tail);
-        // A radius that is not a number fails the comparison.
-        if head.is_finite() && tail.is_finite() && radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
+        // Of a head that is not finite the tail is not a number, and that fails the comparison as a radius does that is not one.
+        if tail.abs() + radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
     }
 
     /// A double that lies on the same side of every double as the number, as far as the ball tells: the nearest one, or the next one above if the number
@@ -126,6 +131,12 @@ impl Ball {
     #[inline(always)]
     pub fn nearest(self) -> f64 {
         self.head
+    }
+
+    /// A bound on the distance between the number and the nearest double.
+    #[inline(always)]
+    pub(super) fn radius_about_nearest(self) -> f64 {
+        up(self.tail.abs() + self.radius)
     }
 
     /// The bound on the distance between the number and the middle.
@@ -169,6 +180,17 @@ impl Ball {
     #[inline(always)]
     pub(crate) fn magnitude(self) -> f64 {
         up(self.head.abs() + self.tail.abs() + self.radius)
+    }
+
+    /// A product of which a factor or the result is zero or beyond the range of error-free products.
+    #[cold]
+    fn product_at_the_ends(self, other: Self) -> Self {
+        // Zero times what is not known, and may have no value, is not zero; nor is anything known beyond the range.
+        if self.head != 0.0 && other.head != 0.0 || self.radius.max(other.radius) == f64::INFINITY {
+            return Self::UNKNOWN;
+        }
+        // A zero head means a zero middle: all that is left is the spread.
+        Self::computed(0.0, 0.0, up(product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius)))
     }
 
     /// A positive bound on |x| from below, or something ≤ 0.
@@ -235,28 +257,22 @@ impl Mul for Ball {
     /// head·head exactly as two doubles, plus both cross products; what is dropped is tail·tail.
     #[inline(always)]
     fn mul(self, other: Self) -> Self {
-        let spread = product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius);
-        if self.head == 0.0 || other.head == 0.0 {
-            // Zero times what is not known, and may have no value, is not zero.
-            if self.radius.max(other.radius) == f64::INFINITY {
-                return Self::UNKNOWN;
-            }
-            // A zero head means a zero middle: all that is left is the spread.
-            return Self::computed(0.0, 0.0, up(spread));
-        }
+        let (size, other_size) = (self.head.abs(), other.head.abs());
         let head = self.head * other.head;
-        if !(in_range(head) && in_range(self.head) && in_range(other.head)) {
-            return Self::UNKNOWN;
+        if !(in_range(head) && in_range(size) && in_range(other_size)) {
+            return self.product_at_the_ends(other);
         }
         let (head, error) = two_product(self.head, other.head);
         let first = self.head * other.tail;
         let second = self.tail * other.head;
         let (cross, third) = two_sum(first, second);
         let (tail, fourth) = two_sum(error, cross);
-        let dropped = product_up(self.tail.abs(), other.tail.abs());
-        let exact = self.tail == 0.0 && other.tail == 0.0;
-        let lost = roundings(first.abs() + second.abs(), exact) + third.abs() + fourth.abs() + dropped;
-        Self::computed(head, tail, up(spread + lost))
+        // |tail| ≤ u·|head|, which `up` covers.
+        let spread = size * other.radius + (other_size + other.radius) * self.radius;
+        let dropped = (self.tail * other.tail).abs();
+        let lost = (first.abs() + second.abs()) * UNIT + third.abs() + fourth.abs() + dropped;
+        let inexact = self.tail.abs() + other.tail.abs() + self.radius + other.radius;
+        Self::computed(head, tail, up(spread + lost) + underflow(inexact))
     }
 }
 
@@ -265,7 +281,7 @@ impl Div for Ball {
     /// q = RN(head/head) with its exact remainder r; A/B − q = (r + a.tail − q·b.tail + …)/B.
     #[inline(always)]
     fn div(self, other: Self) -> Self {
-        let divisor = other.mignitude();
+        let divisor = other.head.abs() * (1.0 - 8.0 * f64::EPSILON) - other.radius;
         // A divisor that is not a number, or that may be zero, fails here.
         if !(divisor > 0.0 && divisor < f64::INFINITY) {
             return Self::UNKNOWN;
@@ -284,17 +300,17 @@ impl Div for Ball {
         let (tails, first) = two_sum(self.tail, -shift);
         let (numerator, second) = two_sum(remainder, tails);
         let tail = numerator / other.head;
-        // The quotient of the remainder is exact only if there is none.
-        let last = roundings(tail.abs(), numerator == 0.0);
         let spread = self.radius
-            + product_up(quotient.abs(), other.radius)
-            + roundings(shift.abs(), other.tail == 0.0)
+            + quotient.abs() * other.radius
+            + shift.abs() * UNIT
             + first.abs()
             + second.abs()
             // Divided by head instead of by the true divisor.
-            + product_up(tail.abs(), other.tail.abs() + other.radius);
-        let spread = if spread == 0.0 { 0.0 } else { up(spread) / divisor + TINY };
-        Self::computed(quotient, tail, up(spread + last))
+            + tail.abs() * (other.tail.abs() + other.radius);
+        // The quotient of the remainder is exact only if there is none.
+        let inexact = self.radius + other.radius + other.tail.abs() + first.abs() + numerator.abs();
+        let tiny = underflow(inexact);
+        Self::computed(quotient, tail, up((spread + tiny) / divisor + tail.abs() * UNIT) + tiny)
     }
 }
 
@@ -318,6 +334,16 @@ impl Positive for Ball {
         let spread = up(self.radius + first.abs()) / (root + root) + curvature;
         let spread = if spread == 0.0 { 0.0 } else { up(spread) + TINY };
         Self::computed(root, tail, up(spread + roundings(tail.abs(), numerator == 0.0)))
+    }
+}
+
+impl Decided for Ball {
+    fn is_positive(self) -> bool {
+        self.is_certainly_positive()
+    }
+
+    fn is_zero(self) -> bool {
+        self.magnitude() == 0.0
     }
 }
 

@@ -15,6 +15,9 @@ const SMALL: f64 = power_of_two(-110);
 /// The exponential's argument is halved this often before its series; each halving costs one squaring and one bit.
 const HALVINGS: i32 = 6;
 
+/// Up to this distance from 1 the logarithm is a series in it; beyond it what cancels between the terms of the other form is four bits at most.
+const NEAR_ONE: f64 = power_of_two(-4);
+
 /// A constant of the table, good to 2⁻¹⁰⁶ of its value; exact where nothing is left for the tail.
 #[inline(always)]
 fn constant((head, tail): (f64, f64)) -> Ball {
@@ -38,28 +41,39 @@ fn exp_reduced(r: Ball) -> Ball {
     (0..HALVINGS).fold(series, |power, _| power * power)
 }
 
-/// The terms of artanh(s)/s = Σ qⁿ/(2n + 1), q = s², before the term `first` as balls, that one and `count` after it in plain f64.
+/// The doubles nearest 1/(2n + 1).
+const ODD_NEAREST: [f64; 16] = {
+    let mut table = [0.0; 16];
+    let mut n = 0;
+    while n < table.len() {
+        table[n] = 1.0 / (2 * n + 1) as f64;
+        n += 1;
+    }
+    table
+};
+
+/// The terms of artanh(s)/s = Σ qⁿ/(2n + 1), q = s², before the term `FIRST` as balls, that one and those before the term `END` in plain f64.
 ///
-/// The plain part is below |q|^first/(2·first + 1)/(1 − q) and has a relative error below 2⁻⁴⁷, with what is left out: less than
-/// |q|^first·2⁻⁴⁸, for first ≥ 3.
+/// Of the roundings of the plain part those of the first coefficient and of the last sum count, u times 1/5 each at most for `FIRST` ≥ 2, those before
+/// weigh q times as much: less than 2⁻⁵². It moves with q by less than 64 times. What is left out, q^(`END` − `FIRST`)/(2·`END` + 1)/(1 − q), has to be
+/// less than 2⁻⁵¹.
 #[inline(always)]
-fn artanh_ratio(s: Ball, first: u32, count: u32) -> Ball {
+fn artanh_ratio<const FIRST: usize, const END: usize>(s: Ball) -> Ball {
     let q = s * s;
     let x = q.nearest();
-    let plain = (first..=first + count).rev().fold(0.0, |sum, n| sum * x + 1.0 / f64::from(2 * n + 1));
-    let power = (0..first).fold(1.0, |power, _| power * x);
-    let sum = ODD.iter().take(first as usize).rev().fold(Ball::from(plain), |sum, term| constant(*term) + q * sum);
-    sum.widened(power * power_of_two(-48) + q.radius() * power * 64.0)
+    let plain = ODD_NEAREST[FIRST..END].iter().rev().fold(0.0, |sum, term| sum * x + term);
+    let rest = Ball::from(plain).widened(power_of_two(-50) + q.radius() * 64.0);
+    ODD[..FIRST].iter().rev().fold(rest, |sum, term| constant(*term) + q * sum)
 }
 
-/// artanh(s)/s for |s| ≤ 0.145: q⁸ < 2⁻⁴⁴, and the terms after n = 21 sum to less than 2⁻¹²⁵.
+/// artanh(s)/s for |s| ≤ 1/31: q < 2⁻⁹·⁹, so q⁵ < 2⁻⁴⁹, and q⁶ < 2⁻⁵⁹ is left out.
 fn artanh_ratio_of_fraction(s: Ball) -> Ball {
-    artanh_ratio(s, 8, 13)
+    artanh_ratio::<5, 11>(s)
 }
 
-/// artanh(s)/s for |s| ≤ 2⁻⁸ (1 + 2⁻²⁰): q³ < 2⁻⁴⁷, and the terms after n = 8 sum to less than 2⁻¹⁴⁰.
+/// artanh(s)/s for |s| ≤ 2⁻⁸ (1 + 2⁻²⁰): q² < 2⁻³¹, and q⁴ < 2⁻⁶³ is left out.
 fn artanh_ratio_of_trace(s: Ball) -> Ball {
-    artanh_ratio(s, 3, 5)
+    artanh_ratio::<2, 6>(s)
 }
 
 /// True where two terms of a Taylor series leave less than 2⁻²⁴⁰, and products could leave the range of error-free transforms.
@@ -102,7 +116,7 @@ impl Elementary for Ball {
         }
         let one = Self::whole(1);
         let from_one = self - one;
-        if from_one.magnitude() <= 0.25 {
+        if from_one.magnitude() <= NEAR_ONE {
             return from_one * from_one.log1p_ratio();
         }
         // From the ends of the range, where a double may be subnormal, by 2^±200 into the middle.
@@ -148,16 +162,15 @@ impl Elementary for Ball {
         exp_reduced(r).scaled(n as i32)
     }
 
-    /// 2·artanh(s)/x with s = x/(2+x), that is (2/(2+x))·artanh(s)/s, for x near zero; elsewhere by the quotient.
+    /// 2·artanh(s)/x with s = x/(2+x), that is (2/(2+x))·artanh(s)/s, for |x| ≤ 1/16; elsewhere by the quotient.
     fn log1p_ratio(self) -> Self {
-        let x = self.nearest();
         if is_tiny(self) {
             return linear(Self::whole(1), -self.halved(), self);
         }
         if !is_narrow(self) && self.radius() > power_of_two(-60) {
             return by_ends(self, Self::log1p_ratio);
         }
-        if x.abs() <= 0.25 && self.radius() <= power_of_two(-10) {
+        if self.magnitude() <= NEAR_ONE {
             let below = Self::whole(2) + self;
             return (Self::whole(2) / below) * artanh_ratio_of_fraction(self / below);
         }

@@ -54,6 +54,20 @@ pub trait Elementary: Signed {
     }
 }
 
+/// [`Elementary`] numbers that come with a bound of their error, so that a sign is certain or not.
+pub(crate) trait Decided: Elementary {
+    /// True if the number is certainly positive.
+    fn is_positive(self) -> bool;
+
+    /// True if the number is certainly negative.
+    fn is_negative(self) -> bool {
+        (-self).is_positive()
+    }
+
+    /// True if the number is certainly zero.
+    fn is_zero(self) -> bool;
+}
+
 /// The slopes of the two ratios of [`Elementary`], which a [`Dual`](crate::number::Dual) over this kind needs.
 ///
 /// They are separate because the quotient rule cancels near x = 0, where a series must be used.

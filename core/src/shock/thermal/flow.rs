@@ -58,7 +58,7 @@ fn ratio<S: Signed>(heat_capacity: S) -> S {
     heat_capacity / (heat_capacity - S::whole(1))
 }
 
-/// The stage of the reflected shock, and T2, for an incident shock of given compression.
+/// The stage of the reflected shock, T2, and u2 − V, for an incident shock of given compression.
 pub(super) fn reflected_stage<S: Elementary>(
     setting: &Setting<S>,
     incident: &GivenSpeed<S>,
@@ -67,9 +67,22 @@ pub(super) fn reflected_stage<S: Elementary>(
 ) -> (GivenSpeedChange<S>, S, S) {
     let excess = incident.temperature_excess(compression);
     let behind = setting.temperature + setting.temperature * excess;
+    let (stage, change) = reflected_stage_at(setting, incident, ranges, compression, excess);
+    (stage, behind, change)
+}
+
+/// The same where the temperature excess is known; without T2.
+#[inline(always)]
+pub(super) fn reflected_stage_at<S: Elementary>(
+    setting: &Setting<S>,
+    incident: &GivenSpeed<S>,
+    ranges: Ranges,
+    compression: S,
+    excess: S,
+) -> (GivenSpeedChange<S>, S) {
     let change = setting.closing_speed(incident.m, compression);
-    let k = change.squared() / (setting.scale() * (S::whole(1) + excess));
-    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, behind, change)
+    let k = change.squared() / (setting.scale * (S::whole(1) + excess));
+    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, change)
 }
 
 impl<S: Elementary> ThermalFlow<S> {
@@ -81,12 +94,12 @@ impl<S: Elementary> ThermalFlow<S> {
         compression: S,
         (reflected_compression, reflected_mean): (S, S),
     ) -> Self {
-        let (reflected, behind, _) = reflected_stage(setting, incident, ranges, compression);
+        let (reflected, behind, closing_speed) = reflected_stage(setting, incident, ranges, compression);
         let both = [
             (compression, incident.temperature_excess(compression)),
             (reflected_compression, reflected.temperature_excess(reflected_compression)),
         ];
-        Self::from_parts(setting, incident, &reflected, ranges, both, (behind, reflected_mean))
+        Self::from_parts(setting, incident, &reflected, ranges, both, (behind, closing_speed, reflected_mean))
     }
 
     /// From compressions, temperature excesses and what else was formed of them.
@@ -96,9 +109,9 @@ impl<S: Elementary> ThermalFlow<S> {
         reflected: &GivenSpeedChange<S>,
         ranges: Ranges,
         [(compression, excess), (reflected_compression, reflected_excess)]: [(S, S); 2],
-        (behind, reflected_mean): (S, S),
+        (behind, closing_speed, reflected_mean): (S, S, S),
     ) -> Self {
-        let scale = setting.scale();
+        let scale = setting.scale;
         Self {
             pressure: setting.pressure,
             temperature: setting.temperature,
@@ -108,7 +121,7 @@ impl<S: Elementary> ThermalFlow<S> {
             m_excess: incident.m_excess,
             compression,
             excess,
-            closing_speed: setting.closing_speed(incident.m, compression),
+            closing_speed,
             wall_speed: setting.wall_speed,
             k: reflected.k,
             reflected_compression,

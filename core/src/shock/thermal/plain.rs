@@ -61,7 +61,8 @@ impl<S: Elementary> PlainFill<S> {
         };
         let lagging = (self.model == HeatCapacityModel::FrozenThenEquilibrium).then_some(first);
         let Self { pressure, temperature, molar_mass, .. } = *self;
-        Setting { pressure, temperature, molar_mass, wall_speed, incident, reflected, lagging }
+        let scale = ThermalFlow::scale_of(temperature, molar_mass);
+        Setting { pressure, temperature, molar_mass, scale, wall_speed, incident, reflected, lagging }
     }
 }
 

@@ -1,6 +1,6 @@
 //! The fill with the heat capacities that hold across each shock, in one kind of number.
 
-use super::flow::{Ranges, ThermalFlow};
+use super::flow::Ranges;
 use super::stage::GivenSpeed;
 use crate::gas::HeatCapacity;
 use crate::number::{Ball, Elementary, Semifield};
@@ -15,6 +15,8 @@ pub(super) struct Setting<S> {
     pub temperature: S,
     /// W, kg/mol.
     pub molar_mass: S,
+    /// R T1, m²/s², R for the gas.
+    pub scale: S,
     /// V, m/s, along the incident direction.
     pub wall_speed: S,
     /// Across the incident shock.
@@ -33,6 +35,7 @@ impl<S: Semifield> Setting<S> {
             pressure: convert(self.pressure),
             temperature: convert(self.temperature),
             molar_mass: convert(self.molar_mass),
+            scale: convert(self.scale),
             wall_speed: convert(self.wall_speed),
             incident: self.incident.map(convert),
             reflected: self.reflected.map(convert),
@@ -49,14 +52,9 @@ impl Setting<Ball> {
 }
 
 impl<S: Elementary> Setting<S> {
-    /// R T1, m²/s², R for the gas.
-    pub(super) fn scale(&self) -> S {
-        ThermalFlow::scale_of(self.temperature, self.molar_mass)
-    }
-
     /// The stage of an incident shock of this speed.
     pub(super) fn at_speed(&self, speed: S) -> GivenSpeed<S> {
-        let scale = self.scale();
+        let scale = self.scale;
         let square = speed.squared();
         GivenSpeed { m: square / scale, m_excess: (square - scale) / scale }
     }
@@ -81,7 +79,7 @@ impl<S: Elementary> Setting<S> {
 
     /// u2 − V.
     pub(super) fn closing_speed(&self, m: S, compression: S) -> S {
-        (m * self.scale()).sqrt() * compression - self.wall_speed
+        (m * self.scale).sqrt() * compression - self.wall_speed
     }
 
     /// Δ = (h(T2) − h2)/(R T2), h2 the enthalpy that state 2 carries.

@@ -2,7 +2,7 @@
 
 use super::ThermalError;
 use super::certify::{Problem, Root};
-use super::flow::{Ranges, ThermalFlow, reflected_stage};
+use super::flow::{Ranges, ThermalFlow, reflected_stage_at};
 use super::inverse::inverse;
 use super::plain::{PlainFill, PlainShock};
 use super::setting::Setting;
@@ -372,7 +372,7 @@ pub(super) fn solve(
     // Supersonic: the residual at no compression, 2(c(m − 1) − m), is positive.
     let one = Ball::whole(1);
     if !(incident.m_excess * (c - one) - one).is_certainly_positive() {
-        let sound_speed = (c / (c - one) * setting.scale()).sqrt().nearest();
+        let sound_speed = (c / (c - one) * setting.scale).sqrt().nearest();
         let rule = if parameter == Parameter::ShockSpeed { Rule::AboveSoundSpeed(sound_speed) } else { Rule::Above(1.0) };
         return Err(InputError { parameter, value, rule }.into());
     }
@@ -385,18 +385,18 @@ pub(super) fn solve(
     let mut used = flows.iter_mut();
     let problem = Problem { stage: *incident, heat_capacity: &setting.incident, from: first, temperature: setting.temperature };
     let [compression, reflected_compression] = plain.compressions;
-    for Root { compression, to, .. } in problem.roots(compression, plain.ranges.second)?.into_iter().flatten() {
-        let behind = problem.behind(compression);
+    for first_root in problem.roots(compression, plain.ranges.second)?.into_iter().flatten() {
+        let Root { compression, excess, behind, to, .. } = first_root;
         // With one heat capacity for both shocks the range behind one is the range ahead of the other.
         let ahead = if setting.lagging.is_some() { setting.reflected.index_at(behind.nearest()) } else { to };
         let ranges = Ranges { first, second: to, ahead, fifth: plain.ranges.fifth };
-        let (stage, ..) = reflected_stage(setting, incident, ranges, compression);
+        let (stage, closing_speed) = reflected_stage_at(setting, incident, ranges, compression, excess);
         let reflection = Problem { stage, heat_capacity: &setting.reflected, from: ahead, temperature: behind };
-        for Root { compression: reflected, mean, to: fifth } in
-            reflection.roots(reflected_compression, plain.ranges.fifth)?.into_iter().flatten()
-        {
+        for last in reflection.roots(reflected_compression, plain.ranges.fifth)?.into_iter().flatten() {
             if let Some(place) = used.next() {
-                *place = Some(ThermalFlow::new(setting, incident, Ranges { fifth, ..ranges }, compression, (reflected, mean)));
+                let ranges = Ranges { fifth: last.to, ..ranges };
+                let both = [(compression, excess), (last.compression, last.excess)];
+                *place = Some(ThermalFlow::from_parts(setting, incident, &stage, ranges, both, (behind, closing_speed, last.mean)));
             }
         }
     }

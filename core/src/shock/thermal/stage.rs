@@ -7,7 +7,7 @@
 //!
 //! in which c̄ depends on ε through x only. For constant c̄ the equation is explicit.
 
-use crate::number::{Semifield, Signed};
+use crate::number::{Ball, Estimate, Semifield, Signed};
 
 /// What is given of a shock besides the gas ahead.
 pub(super) trait Stage<S> {
@@ -30,6 +30,30 @@ pub(super) trait Stage<S> {
     fn falling(&self, compression: S, heat_capacity: S) -> S;
     /// A lower bound of the slope of the energy that is too much, h/R, with the temperature behind, where it has one for every temperature.
     fn least_slope(&self) -> Option<f64>;
+}
+
+/// A stage in balls, which are good for every digit, and in estimates, for what is wanted roughly.
+pub(super) trait ProvenStage: Stage<Ball> {
+    /// The same stage in estimates.
+    type Rough: Stage<Estimate>;
+    /// The same stage in estimates.
+    fn rough(&self) -> Self::Rough;
+}
+
+impl ProvenStage for GivenSpeed<Ball> {
+    type Rough = GivenSpeed<Estimate>;
+    #[inline(always)]
+    fn rough(&self) -> Self::Rough {
+        self.map(Estimate::from)
+    }
+}
+
+impl ProvenStage for GivenSpeedChange<Ball> {
+    type Rough = GivenSpeedChange<Estimate>;
+    #[inline(always)]
+    fn rough(&self) -> Self::Rough {
+        self.map(Estimate::from)
+    }
 }
 
 /// 2 c̄ A + B: positive for too small a compression, negative for too great a one.

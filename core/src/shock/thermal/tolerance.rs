@@ -4,7 +4,7 @@ use super::certify::Problem;
 use super::flow::{Ranges, ThermalFlow, reflected_stage};
 use super::plain::{PlainFill, PlainShock};
 use super::shock::{ThermalFill, ThermalShock};
-use super::stage::{GivenSpeed, GivenSpeedChange, Stage, residual};
+use super::stage::{GivenSpeed, GivenSpeedChange, ProvenStage, Stage, residual};
 use crate::gas::HeatCapacity;
 use crate::gas::species::EXTENSION;
 use crate::number::{Ball, Dual, Enclosure, Known, Semifield, bounds};
@@ -59,7 +59,7 @@ impl ThermalFill<'_> {
         {
             let ranges = Ranges { second: side.to, ..plain.ranges };
             let ranges = if setting.lagging.is_some() { ranges } else { Ranges { ahead: side.to, ..ranges } };
-            let (stage, _, _) = reflected_stage(&setting, &incident, ranges, side.compression);
+            let (stage, _, closing_speed) = reflected_stage(&setting, &incident, ranges, side.compression);
             let (centre_stage, centre_behind, _) = reflected_stage(&centre_setting, &centre, ranges, side.centre);
             let stage = GivenSpeedChange { k: part.tight(stage.k, centre_stage.k), lag: part.tight(stage.lag, centre_stage.lag) };
             let behind = part.tight(temperature + temperature * side.excess, centre_behind);
@@ -71,7 +71,7 @@ impl ThermalFill<'_> {
             for last in part.solutions(&stage, &setting.reflected, behind, &wall, reflected, plain.ranges.fifth)?.into_iter().flatten() {
                 let both = [(side.compression, side.excess), (last.compression, last.excess)];
                 let flow =
-                    ThermalFlow::from_parts(&setting, &incident, &stage, Ranges { fifth: last.to, ..ranges }, both, (behind, last.mean));
+                    ThermalFlow::from_parts(&setting, &incident, &stage, Ranges { fifth: last.to, ..ranges }, both, (behind, closing_speed, last.mean));
                 let own = flow.evaluate(output);
                 found = Some(found.map_or(own, |other| unknown(other.value().hull(own.value()))));
             }
@@ -148,7 +148,7 @@ impl Part {
 
     /// The shocks of all points of the part: with the polynomial of the centre, and with that of a neighbour where the temperature behind reaches across
     /// a joint. `None` where a proof fails.
-    fn solutions<T: Stage<Ball>>(
+    fn solutions<T: ProvenStage>(
         &self,
         stage: &(impl Stage<Variable> + Held),
         heat_capacity: &HeatCapacity<Variable>,
@@ -176,7 +176,7 @@ impl Part {
     }
 
     /// One of them. If ε − F/F′(E), with all of the part in F and F′, lies inside E, it holds the one root in E for every point of the part.
-    fn side<T: Stage<Ball>>(
+    fn side<T: ProvenStage>(
         &self,
         stage: &(impl Stage<Variable> + Held),
         heat_capacity: &HeatCapacity<Variable>,
@@ -191,7 +191,7 @@ impl Part {
         let ranges = [from, to];
         let known = Mean {
             temperature: centre.temperature.enclosure(),
-            excess: centre.stage.temperature_excess(root.compression).enclosure(),
+            excess: root.excess.enclosure(),
             value: root.mean.enclosure(),
         };
         let along = |e: Enclosure| {
