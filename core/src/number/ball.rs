@@ -3,7 +3,7 @@
 use super::counted::Counted;
 use super::enclosure::{Enclosure, Quality};
 use super::rational::Rational;
-use super::round::{UNIT, add_down, add_up, in_range, power_of_two, sqrt, two_product, two_sum};
+use super::round::{UNIT, add_down, add_up, fast_two_sum, in_range, power_of_two, sqrt, two_product, two_sum};
 use super::traits::{Decided, Positive, Semifield};
 use core::ops::{Add, Div, Mul, Neg, Sub};
 
@@ -36,10 +36,13 @@ fn roundings(magnitudes: f64, nothing_rounded: bool) -> f64 {
     if nothing_rounded { 0.0 } else { up(magnitudes * UNIT) + 64.0 * TINY }
 }
 
-/// What may have underflowed in an operation; 0 only where nothing was rounded. That the result is 0 does not tell: it may have underflowed whole.
+/// True if both magnitudes lie from 2⁻²⁵⁶ up to 2²⁵⁶, where their product, their quotient and the errors of these are in range: one test for nearly all
+/// numbers that occur.
 #[inline(always)]
-fn underflow(inexact: f64) -> f64 {
-    if inexact == 0.0 { 0.0 } else { 64.0 * TINY }
+fn are_moderate(a: f64, b: f64) -> bool {
+    // Without the sign bit the exponent is the top eleven bits; of its distance from the least one the top two have to be zero.
+    let above = |x: f64| (x.to_bits() << 1).wrapping_sub((1023 - 256) << 53);
+    (above(a) | above(b)) >> 62 == 0
 }
 
 /// Covers the at most 2⁶ roundings by which a sum of non-negative terms may be too small.
@@ -102,6 +105,13 @@ impl Ball {
         if tail.abs() + radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
     }
 
+    /// The same where |head| ≥ |tail| or the head is zero.
+    #[inline(always)]
+    fn ordered(head: f64, tail: f64, radius: f64) -> Self {
+        let (head, tail) = fast_two_sum(head, tail);
+        if tail.abs() + radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
+    }
+
     /// A double that lies on the same side of every double as the number, as far as the ball tells: the nearest one, or the next one above if the number
     /// is certainly greater.
     pub(crate) fn side(self) -> f64 {
@@ -144,14 +154,6 @@ impl Ball {
         self.radius
     }
 
-    /// x/2, at any magnitude.
-    #[inline(always)]
-    pub(crate) fn halved(self) -> Self {
-        // Only a subnormal loses a bit.
-        let lost = if self.magnitude() == 0.0 { 0.0 } else { TINY };
-        Self::computed(self.head * 0.5, self.tail * 0.5, self.radius * 0.5 + lost)
-    }
-
     /// 2ⁿ·x, exact but for a tail that underflows; unknown for |n| above 1000.
     #[inline(always)]
     pub(crate) fn scaled(self, n: i32) -> Self {
@@ -160,7 +162,7 @@ impl Ball {
         }
         let factor = power_of_two(n);
         let tail = self.tail * factor;
-        let lost = if tail / factor == self.tail { 0.0 } else { TINY };
+        let lost = if tail * power_of_two(-n) == self.tail { 0.0 } else { TINY };
         let scaled = Self { head: self.head * factor, tail, radius: product_up(self.radius, factor) + lost };
         if scaled.head == 0.0 && self.head == 0.0 || in_range(scaled.head) { scaled } else { Self::UNKNOWN }
     }
@@ -182,15 +184,24 @@ impl Ball {
         up(self.head.abs() + self.tail.abs() + self.radius)
     }
 
-    /// A product of which a factor or the result is zero or beyond the range of error-free products.
+    /// A product of factors that are not moderate: they may be zero, and the result may leave the range of error-free products.
     #[cold]
     fn product_at_the_ends(self, other: Self) -> Self {
-        // Zero times what is not known, and may have no value, is not zero; nor is anything known beyond the range.
-        if self.head != 0.0 && other.head != 0.0 || self.radius.max(other.radius) == f64::INFINITY {
+        if self.head == 0.0 || other.head == 0.0 {
+            // Zero times what is not known, and may have no value, is not zero.
+            if self.radius.max(other.radius) == f64::INFINITY {
+                return Self::UNKNOWN;
+            }
+            // A zero head means a zero middle: all that is left is the spread.
+            return Self::computed(0.0, 0.0, up(product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius)));
+        }
+        if !(in_range(self.head * other.head) && in_range(self.head) && in_range(other.head)) {
             return Self::UNKNOWN;
         }
-        // A zero head means a zero middle: all that is left is the spread.
-        Self::computed(0.0, 0.0, up(product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius)))
+        // By powers of two into the middle and back.
+        let exponent = |x: f64| ((x.to_bits() >> 52) & 0x7ff) as i32 - 1023;
+        let (n, m) = (exponent(self.head), exponent(other.head));
+        (self.scaled(-n) * other.scaled(-m)).scaled(n).scaled(m)
     }
 
     /// A positive bound on |x| from below, or something ≤ 0.
@@ -220,7 +231,14 @@ impl Semifield for Ball {
 
     #[inline(always)]
     fn doubled(self) -> Self {
-        Self::computed(self.head + self.head, self.tail + self.tail, self.radius + self.radius)
+        Self::ordered(self.head + self.head, self.tail + self.tail, self.radius + self.radius)
+    }
+
+    #[inline(always)]
+    fn halved(self) -> Self {
+        // Only a subnormal loses a bit; a single double in range is none.
+        let lost = if self.tail == 0.0 && self.radius == 0.0 && (self.head == 0.0 || in_range(self.head)) { 0.0 } else { TINY };
+        Self::ordered(self.head * 0.5, self.tail * 0.5, self.radius * 0.5 + lost)
     }
 }
 
@@ -254,25 +272,22 @@ impl Sub for Ball {
 
 impl Mul for Ball {
     type Output = Self;
-    /// head·head exactly as two doubles, plus both cross products; what is dropped is tail·tail.
+    /// head·head exactly as two doubles, plus both cross products; what is dropped, tail·tail, is at most u times a cross product.
     #[inline(always)]
     fn mul(self, other: Self) -> Self {
-        let (size, other_size) = (self.head.abs(), other.head.abs());
-        let head = self.head * other.head;
-        if !(in_range(head) && in_range(size) && in_range(other_size)) {
+        if !are_moderate(self.head, other.head) {
             return self.product_at_the_ends(other);
         }
         let (head, error) = two_product(self.head, other.head);
         let first = self.head * other.tail;
         let second = self.tail * other.head;
-        let (cross, third) = two_sum(first, second);
-        let (tail, fourth) = two_sum(error, cross);
+        let tail = error + (first + second);
         // |tail| ≤ u·|head|, which `up` covers.
-        let spread = size * other.radius + (other_size + other.radius) * self.radius;
-        let dropped = (self.tail * other.tail).abs();
-        let lost = (first.abs() + second.abs()) * UNIT + third.abs() + fourth.abs() + dropped;
+        let spread = self.head.abs() * other.radius + (other.head.abs() + other.radius) * self.radius;
+        // Each cross product, their sum and its sum with the error are rounded.
+        let lost = ((first.abs() + second.abs()) * 3.0 + tail.abs()) * UNIT;
         let inexact = self.tail.abs() + other.tail.abs() + self.radius + other.radius;
-        Self::computed(head, tail, up(spread + lost) + underflow(inexact))
+        Self::ordered(head, tail, if inexact == 0.0 { 0.0 } else { up(spread + lost) + 64.0 * TINY })
     }
 }
 
@@ -291,26 +306,22 @@ impl Div for Ball {
             return Self::computed(0.0, 0.0, if self.radius == 0.0 { 0.0 } else { up(radius) + TINY });
         }
         let quotient = self.head / other.head;
-        if !(in_range(quotient) && in_range(self.head) && in_range(other.head)) {
+        if !(are_moderate(self.head, other.head) || in_range(quotient) && in_range(self.head) && in_range(other.head)) {
             return Self::UNKNOWN;
         }
         let (p, error) = two_product(quotient, other.head);
         let remainder = (self.head - p) - error;
         let shift = quotient * other.tail;
-        let (tails, first) = two_sum(self.tail, -shift);
-        let (numerator, second) = two_sum(remainder, tails);
+        let numerator = remainder + (self.tail - shift);
         let tail = numerator / other.head;
-        let spread = self.radius
-            + quotient.abs() * other.radius
-            + shift.abs() * UNIT
-            + first.abs()
-            + second.abs()
-            // Divided by head instead of by the true divisor.
-            + tail.abs() * (other.tail.abs() + other.radius);
+        // The shift, its difference from the tail and the sum with the remainder are rounded.
+        let lost = (shift.abs() * 2.0 + self.tail.abs() + numerator.abs()) * UNIT;
+        // Divided by head instead of by the true divisor.
+        let other_divisor = tail.abs() * (other.tail.abs() + other.radius);
+        let spread = (self.radius + quotient.abs() * other.radius + lost + other_divisor + 64.0 * TINY) / divisor;
         // The quotient of the remainder is exact only if there is none.
-        let inexact = self.radius + other.radius + other.tail.abs() + first.abs() + numerator.abs();
-        let tiny = underflow(inexact);
-        Self::computed(quotient, tail, up((spread + tiny) / divisor + tail.abs() * UNIT) + tiny)
+        let inexact = self.radius + other.radius + other.tail.abs() + numerator.abs();
+        Self::ordered(quotient, tail, if inexact == 0.0 { 0.0 } else { up(spread + tail.abs() * UNIT) + 64.0 * TINY })
     }
 }
 

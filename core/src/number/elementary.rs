@@ -54,16 +54,17 @@ const ODD_NEAREST: [f64; 16] = {
 
 /// The terms of artanh(s)/s = Σ qⁿ/(2n + 1), q = s², before the term `FIRST` as balls, that one and those before the term `END` in plain f64.
 ///
-/// Of the roundings of the plain part those of the first coefficient and of the last sum count, u times 1/5 each at most for `FIRST` ≥ 2, those before
-/// weigh q times as much: less than 2⁻⁵². It moves with q by less than 64 times. What is left out, q^(`END` − `FIRST`)/(2·`END` + 1)/(1 − q), has to be
-/// less than 2⁻⁵¹.
+/// The plain part is q times a sum below 1/4 for `FIRST` ≥ 2. Of its roundings those of the first coefficient, of the last sum, of q and of the product count,
+/// u each, those before weigh q times as much: less than 2⁻⁵²·q. It moves with q by less than 64 times. What is left out,
+/// q^(`END` − `FIRST` + 1)/(2·`END` + 1)/(1 − q), has to be less than 2⁻⁵²·q.
 #[inline(always)]
 fn artanh_ratio<const FIRST: usize, const END: usize>(s: Ball) -> Ball {
     let q = s * s;
     let x = q.nearest();
-    let plain = ODD_NEAREST[FIRST..END].iter().rev().fold(0.0, |sum, term| sum * x + term);
-    let rest = Ball::from(plain).widened(power_of_two(-50) + q.radius() * 64.0);
-    ODD[..FIRST].iter().rev().fold(rest, |sum, term| constant(*term) + q * sum)
+    let plain = x * ODD_NEAREST[FIRST..END].iter().rev().fold(0.0, |sum, term| sum * x + term);
+    let rest = Ball::from(plain).widened(x * power_of_two(-50) + q.radius() * 64.0);
+    let start = constant(ODD[FIRST - 1]) + rest;
+    ODD[..FIRST - 1].iter().rev().fold(start, |sum, term| constant(*term) + q * sum)
 }
 
 /// artanh(s)/s for |s| ≤ 1/31: q < 2⁻⁹·⁹, so q⁵ < 2⁻⁴⁹, and q⁶ < 2⁻⁵⁹ is left out.
@@ -105,8 +106,31 @@ fn by_ends(x: Ball, f: impl Fn(Ball) -> Ball) -> Ball {
     if hull.is_bounded() { Ball::around(hull) } else { Ball::UNKNOWN }
 }
 
+/// ln x of a narrow ball of positive numbers, with an error relative to 1: x = m·2ⁿ with m in [1, 2).
+fn ln_by_table(x: Ball) -> Ball {
+    // From the ends of the range, where a double may be subnormal, by 2^±200 into the middle.
+    let moved = if in_range(x.nearest()) {
+        0
+    } else if x.nearest() < 1.0 {
+        200
+    } else {
+        -200
+    };
+    let centred = if moved == 0 { x } else { x.scaled(moved) };
+    let exponent = ((centred.nearest().to_bits() >> 52) & 0x7ff) as i32 - 1023;
+    let mantissa = centred.nearest() * power_of_two((-exponent).clamp(-1000, 1000));
+    let (m, n) = (centred.scaled(-exponent), exponent - moved);
+    // ln m = ln c + 2·artanh((m − c)/(m + c)), c the middle of the 64th of [1, 2) in which m lies.
+    let index = ((mantissa - 1.0) * 64.0) as u32;
+    let Some(logarithm) = LOGARITHM.get(index as usize) else { return Ball::UNKNOWN };
+    let c = Ball::from(1.0 + f64::from(2 * index + 1) / 128.0);
+    let s = (m - c) / (m + c);
+    let of_m = constant(*logarithm) + (s * artanh_ratio_of_trace(s)).doubled();
+    Ball::from(f64::from(n)) * constant(LN_2) + of_m
+}
+
 impl Elementary for Ball {
-    /// Near 1 by ln(1+x)/x, whose relative error stays small. Elsewhere x = m·2ⁿ with m in [1, 2).
+    /// Near 1 by ln(1+x)/x, whose relative error stays small.
     fn ln(self) -> Self {
         if !self.is_certainly_positive() {
             return Self::UNKNOWN;
@@ -119,25 +143,7 @@ impl Elementary for Ball {
         if from_one.magnitude() <= NEAR_ONE {
             return from_one * from_one.log1p_ratio();
         }
-        // From the ends of the range, where a double may be subnormal, by 2^±200 into the middle.
-        let moved = if in_range(self.nearest()) {
-            0
-        } else if self.nearest() < 1.0 {
-            200
-        } else {
-            -200
-        };
-        let centred = self.scaled(moved);
-        let exponent = ((centred.nearest().to_bits() >> 52) & 0x7ff) as i32 - 1023;
-        let mantissa = centred.nearest() * power_of_two((-exponent).clamp(-1000, 1000));
-        let (m, n) = (centred.scaled(-exponent), exponent - moved);
-        // ln m = ln c + 2·artanh((m − c)/(m + c)), c the middle of the 64th of [1, 2) in which m lies.
-        let index = (mantissa - 1.0) * 64.0;
-        let Some(logarithm) = LOGARITHM.get(index as usize) else { return Self::UNKNOWN };
-        let c = Self::from(1.0 + (2.0 * libm::floor(index) + 1.0) / 128.0);
-        let s = (m - c) / (m + c);
-        let of_m = constant(*logarithm) + (s * artanh_ratio_of_trace(s)).doubled();
-        Self::from(f64::from(n)) * constant(LN_2) + of_m
+        ln_by_table(self)
     }
 
     /// x = n·ln 2 + r.
@@ -174,7 +180,11 @@ impl Elementary for Ball {
             let below = Self::whole(2) + self;
             return (Self::whole(2) / below) * artanh_ratio_of_fraction(self / below);
         }
-        (Self::whole(1) + self).ln() / self
+        let whole = Self::whole(1) + self;
+        if whole.is_certainly_positive() && is_narrow(whole) {
+            return ln_by_table(whole) / self;
+        }
+        whole.ln() / self
     }
 
     /// Taylor series Σ xⁿ/(n+1)! for |x| ≤ 0.51: the terms after n = 24 sum to less than 2⁻¹¹³; elsewhere by the quotient.

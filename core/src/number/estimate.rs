@@ -86,6 +86,11 @@ impl Semifield for Estimate {
     fn doubled(self) -> Self {
         Self { middle: self.middle + self.middle, radius: self.radius + self.radius }
     }
+
+    #[inline(always)]
+    fn halved(self) -> Self {
+        Self { middle: self.middle * 0.5, radius: self.radius * 0.5 + TINY }
+    }
 }
 
 impl Add for Estimate {
@@ -260,7 +265,8 @@ mod tests {
     fn what_is_not_known_has_no_sign() {
         let zero = Estimate::from(0.0);
         let one = Estimate::whole(1);
-        let unknown = [one / zero, (-one).sqrt(), zero.ln(), (-one).ln(), one / Estimate::from(1.0).widened(0.6), Estimate::from(Ball::UNKNOWN)];
+        let unknown =
+            [one / zero, (-one).sqrt(), zero.ln(), (-one).ln(), one / Estimate::from(1.0).widened(0.6), Estimate::from(Ball::UNKNOWN)];
         for x in unknown {
             for y in [x, x * zero, zero * x, x - x, x + one, -x, one / x, x.ln(), x.log1p_ratio(), x.sqrt()] {
                 assert!(!y.is_positive() && !y.is_negative() && !y.is_zero(), "{y:?}");

@@ -14,6 +14,12 @@ pub trait Semifield: Copy + Add<Output = Self> + Mul<Output = Self> + Div<Output
     /// 2·x; exact in every binary kind of number.
     fn doubled(self) -> Self;
 
+    /// x/2; exact in every binary kind but for what underflows.
+    #[inline(always)]
+    fn halved(self) -> Self {
+        self / Self::whole(2)
+    }
+
     /// x².
     #[inline(always)]
     fn squared(self) -> Self {

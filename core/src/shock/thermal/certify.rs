@@ -127,8 +127,9 @@ impl<T: ProvenStage> Problem<'_, T> {
             // Out of its own range, and not the other way round: the answer. Else nobody can tell, or the jump itself is the answer.
             if self.neighbour(&moved).is_none() && self.is_outside(&first) { first = moved } else { second = Some(moved) }
         }
+        let far = self.far();
         for (index, joint) in self.heat_capacity.joints().enumerate() {
-            if self.is_far_from(joint, &first)
+            if (first.behind.nearest() - joint).abs() > far
                 || second.is_some_and(|second: Root| index == first.to.min(second.to))
                 || self.is_beside(index, joint, first.compression)?
             {
@@ -151,12 +152,10 @@ impl<T: ProvenStage> Problem<'_, T> {
         Ok([Some(first), second])
     }
 
-    /// True if the slope of the energy alone keeps the sign at a joint: see [`Stage::least_slope`].
-    fn is_far_from(&self, joint: f64, root: &Root) -> bool {
-        let Some(least) = self.stage.least_slope() else { return false };
-        let distance = (root.behind.nearest() - joint).abs();
-        // Twice, so that the rounding of these three doubles does not matter.
-        distance * least > 2.0 * self.heat_capacity.jumps()
+    /// How far from a joint, K, the slope of the energy alone keeps the sign there, whatever the jumps: see [`Stage::least_slope`].
+    fn far(&self) -> f64 {
+        // Twice, so that the rounding of these doubles and of the distance does not matter.
+        self.stage.least_slope().map_or(f64::INFINITY, |least| 2.0 * self.heat_capacity.jumps() / least)
     }
 
     /// The range next to that of a root whose temperature behind is not certainly inside its own; a joint belongs to the lower range.
@@ -196,7 +195,13 @@ impl<T: ProvenStage> Problem<'_, T> {
 
     /// Whether the residual, with the polynomial below the joint and with the one above, has the sign that belongs to its side of the root, wherever
     /// the temperature behind passes the joint.
-    fn is_clear_of<S: Decided + From<Ball> + From<f64>>(&self, stage: &impl Stage<S>, below: usize, joint: f64, root: S) -> Result<bool, ThermalError> {
+    fn is_clear_of<S: Decided + From<Ball> + From<f64>>(
+        &self,
+        stage: &impl Stage<S>,
+        below: usize,
+        joint: f64,
+        root: S,
+    ) -> Result<bool, ThermalError> {
         let temperature = S::from(self.temperature);
         let excess = (S::from(joint) - temperature) / temperature;
         let discriminant = stage.discriminant(excess);

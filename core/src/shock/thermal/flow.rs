@@ -2,7 +2,6 @@
 
 use super::setting::Setting;
 use super::stage::{GivenSpeed, GivenSpeedChange, Stage};
-use crate::gas::molar_gas_constant;
 use crate::number::{Elementary, Signed};
 use crate::shock::{Output, mach_excess};
 
@@ -80,9 +79,11 @@ pub(super) fn reflected_stage_at<S: Elementary>(
     compression: S,
     excess: S,
 ) -> (GivenSpeedChange<S>, S) {
-    let change = setting.closing_speed(incident.m, compression);
-    let k = change.squared() / (setting.scale * (S::whole(1) + excess));
-    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, change)
+    let speed = (incident.m * setting.scale).sqrt();
+    // In units of U, so that nothing is rounded for a wall at rest.
+    let change = compression - setting.wall_speed / speed;
+    let k = incident.m * change.squared() / (S::whole(1) + excess);
+    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, speed * compression - setting.wall_speed)
 }
 
 impl<S: Elementary> ThermalFlow<S> {
@@ -129,16 +130,11 @@ impl<S: Elementary> ThermalFlow<S> {
             reflected_mean,
             lag_ratio: reflected.lag / reflected_compression,
             heat_capacity: [
-                setting.incident.value(ranges.first, setting.temperature),
+                setting.heat_capacity,
                 setting.incident.value(ranges.second, behind),
                 setting.reflected.value(ranges.fifth, behind + behind * reflected_excess),
             ],
         }
-    }
-
-    /// R T1/W, m²/s².
-    pub(super) fn scale_of(temperature: S, molar_mass: S) -> S {
-        molar_gas_constant::<S>() * temperature / molar_mass
     }
 }
 

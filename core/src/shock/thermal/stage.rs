@@ -17,6 +17,8 @@ pub(super) trait Stage<S> {
     fn rest(&self, compression: S) -> S;
     /// x = Tb/Ta − 1.
     fn temperature_excess(&self, compression: S) -> S;
+    /// x where the equation holds, from the energy: c̄ and a sum of positive terms (and Δ), so that a strong shock loses no digits.
+    fn energy_excess(&self, compression: S, mean: S) -> S;
     /// dA/dε, dB/dε and dx/dε.
     fn slopes(&self, compression: S) -> [S; 3];
     /// ε where x has this value: the solution with lesser and with greater ε, as far as there are any, and whether there are is told by the sign of
@@ -92,6 +94,11 @@ impl<S: Signed> Stage<S> for GivenSpeed<S> {
     fn temperature_excess(&self, e: S) -> S {
         e * self.factor(e)
     }
+    /// mε(2 − ε)/(2c̄).
+    #[inline(always)]
+    fn energy_excess(&self, e: S, mean: S) -> S {
+        self.m * e * (S::whole(2) - e) / mean.doubled()
+    }
     #[inline(always)]
     fn slopes(&self, e: S) -> [S; 3] {
         [-self.m, self.m, self.factor(e) - self.m * e]
@@ -142,6 +149,11 @@ impl<S: Signed> Stage<S> for GivenSpeedChange<S> {
     #[inline(always)]
     fn temperature_excess(&self, e: S) -> S {
         self.factor(e) / e
+    }
+    /// (k(2 − ε)/(2ε) − Δ)/c̄.
+    #[inline(always)]
+    fn energy_excess(&self, e: S, mean: S) -> S {
+        (self.k * (S::whole(2) - e) / e.doubled() - self.lag) / mean
     }
     #[inline(always)]
     fn slopes(&self, e: S) -> [S; 3] {

@@ -2,7 +2,7 @@
 
 use super::certify::Problem;
 use super::flow::{Ranges, ThermalFlow, reflected_stage};
-use super::plain::{PlainFill, PlainShock};
+use super::plain::{PlainFill, PlainRoots};
 use super::shock::{ThermalFill, ThermalShock};
 use super::stage::{GivenSpeed, GivenSpeedChange, ProvenStage, Stage, residual};
 use crate::gas::HeatCapacity;
@@ -45,12 +45,12 @@ impl ThermalFill<'_> {
         let setting = fill.setting(kelvin, Variable::whole(0));
         let centre_setting = centre_fill.setting(Ball::whole(0));
         let first = setting.incident.index_at(kelvin);
-        let incident = setting.given(first, entry, value)?;
-        let centre = centre_setting.given(first, entry, Ball::from(value.value().middle()))?;
+        let incident = setting.given(entry, value)?;
+        let centre = centre_setting.given(entry, Ball::from(value.value().middle()))?;
         let part = Part { spread: inputs.map(|input| input.value() - Enclosure::from(input.value().middle())) };
         let incident = GivenSpeed { m: part.tight(incident.m, centre.m), m_excess: part.tight(incident.m_excess, centre.m_excess) };
-        let plain = PlainShock::new(&centre_setting.map(Ball::nearest), &centre.map(Ball::nearest))?;
-        let [compression, reflected] = plain.compressions;
+        let plain = PlainRoots::new(&centre_setting.map(Ball::nearest), &centre.map(Ball::nearest))?;
+        let [compression, reflected] = plain.compressions();
         let mut found: Option<Variable> = None;
         let ahead =
             Problem { stage: centre, heat_capacity: &centre_setting.incident, from: first, temperature: centre_setting.temperature };
@@ -70,8 +70,14 @@ impl ThermalFill<'_> {
                 Problem { stage: centre_stage, heat_capacity: &centre_setting.reflected, from: ranges.ahead, temperature: centre_behind };
             for last in part.solutions(&stage, &setting.reflected, behind, &wall, reflected, plain.ranges.fifth)?.into_iter().flatten() {
                 let both = [(side.compression, side.excess), (last.compression, last.excess)];
-                let flow =
-                    ThermalFlow::from_parts(&setting, &incident, &stage, Ranges { fifth: last.to, ..ranges }, both, (behind, closing_speed, last.mean));
+                let flow = ThermalFlow::from_parts(
+                    &setting,
+                    &incident,
+                    &stage,
+                    Ranges { fifth: last.to, ..ranges },
+                    both,
+                    (behind, closing_speed, last.mean),
+                );
                 let own = flow.evaluate(output);
                 found = Some(found.map_or(own, |other| unknown(other.value().hull(own.value()))));
             }
@@ -92,7 +98,7 @@ impl ThermalFill<'_> {
             model: balls.model,
             pressure,
             temperature,
-            molar_mass: constant(balls.molar_mass),
+            gas_constant: constant(balls.gas_constant),
             full: balls.full.map(constant),
             frozen: Variable::with_slopes(frozen.0, temperature.slopes().map(slope)),
         })
@@ -189,11 +195,7 @@ impl Part {
         let root = centre.newton(approximate, to)?;
         let at = root.compression.enclosure();
         let ranges = [from, to];
-        let known = Mean {
-            temperature: centre.temperature.enclosure(),
-            excess: root.excess.enclosure(),
-            value: root.mean.enclosure(),
-        };
+        let known = Mean { temperature: centre.temperature.enclosure(), excess: root.excess.enclosure(), value: root.mean.enclosure() };
         let along = |e: Enclosure| {
             let fixed = Variable::constant(e);
             residual(stage, fixed, known.over(heat_capacity, ranges, temperature, stage.temperature_excess(fixed))).slopes()
