@@ -19,6 +19,14 @@ struct Range<S> {
     a: [S; 7],
 }
 
+impl<S: Semifield> Range<S> {
+    /// The same in another kind of number.
+    #[inline(always)]
+    fn map<T: Semifield>(&self, convert: impl Fn(S) -> T) -> Range<T> {
+        Range { low: self.low, high: self.high, start: convert(self.start), jump: convert(self.jump), a: self.a.map(convert) }
+    }
+}
+
 impl<S: Signed> Range<S> {
     /// `c_p`/R.
     #[inline(always)]
@@ -39,20 +47,19 @@ impl<S: Signed> Range<S> {
 }
 
 impl<S: Elementary> Range<S> {
-    /// The mean of `c_p`/R between T and T(1 + x), by divided differences: no term cancels as x goes to zero.
+    /// The mean of `c_p`/R between T and `end` = T(1 + x), by divided differences: no term cancels as x goes to zero.
     #[inline(always)]
-    fn mean(&self, temperature: S, excess: S) -> S {
+    fn mean(&self, temperature: S, excess: S, end: S) -> S {
         let [a1, a2, a3, a4, a5, a6, a7] = self.a;
         let t = temperature;
-        let end = t + t * excess;
         let square = t.squared();
         let first = t + end;
         let second = square + end * first;
         let third = square * t + end * second;
         let fourth = square.squared() + end * third;
-        let rational = a1 / (t * end) + a2 * excess.log1p_ratio() / t;
+        let rational = (a1 / end + a2 * excess.log1p_ratio()) / t;
         let whole = S::whole;
-        rational + (a3 + a4 * first / whole(2) + a5 * second / whole(3) + a6 * third / whole(4) + a7 * fourth / whole(5))
+        rational + (a3 + (a4 * first).halved() + a5 * second / whole(3) + (a6 * third).halved().halved() + a7 * fourth / whole(5))
     }
 
     /// ∫ `c_p`/R dT/T from T to T(1 + x), by divided differences: no term cancels as x goes to zero.
@@ -85,14 +92,7 @@ pub struct HeatCapacity<S> {
 impl<S: Semifield> HeatCapacity<S> {
     /// The same in another kind of number.
     pub fn map<T: Semifield>(&self, convert: impl Fn(S) -> T) -> HeatCapacity<T> {
-        let ranges = self.ranges.map(|range| Range {
-            low: range.low,
-            high: range.high,
-            start: convert(range.start),
-            jump: convert(range.jump),
-            a: range.a.map(&convert),
-        });
-        HeatCapacity { ranges, used: self.used }
+        HeatCapacity { ranges: self.ranges.map(|range| range.map(&convert)), used: self.used }
     }
 
     /// The temperatures between which it is known, K.
@@ -152,6 +152,12 @@ impl<S: Signed> HeatCapacity<S> {
         self.at(index).value(temperature)
     }
 
+    /// `c_p`/R by the polynomial of one range, in another kind of number.
+    #[inline(always)]
+    pub(crate) fn value_as<T: Signed + From<S>>(&self, index: usize, temperature: T) -> T {
+        self.at(index).map(T::from).value(temperature)
+    }
+
     /// T d(`c_p`/R)/dT by the polynomial of one range.
     #[inline(always)]
     pub fn scaled_slope(&self, index: usize, temperature: S) -> S {
@@ -164,19 +170,23 @@ impl<S: Elementary> HeatCapacity<S> {
     ///
     /// Across joints it is the sum of the parts with the jumps of the enthalpy between them.
     pub fn mean(&self, from: usize, temperature: S, excess: S, to: usize) -> S {
-        if from == to { self.at(from).mean(temperature, excess) } else { self.rise(from, temperature, excess, to) / excess }
+        if from == to {
+            self.at(from).mean(temperature, excess, temperature + temperature * excess)
+        } else {
+            self.rise(from, temperature, excess, to) / excess
+        }
     }
 
     /// (h(T(1 + x)) − h(T))/(R T), the rise of the enthalpy, as [`HeatCapacity::mean`] times x.
     pub fn rise(&self, from: usize, temperature: S, excess: S, to: usize) -> S {
-        if from == to {
-            return excess * self.at(from).mean(temperature, excess);
-        }
         let end = temperature + temperature * excess;
+        if from == to {
+            return excess * self.at(from).mean(temperature, excess, end);
+        }
         if from > to {
             return -(self.rise(to, end, -(excess / (S::whole(1) + excess)), from) * (end / temperature));
         }
-        let part = |range: &Range<S>, low: S, high: S| range.mean(low, (high - low) / low) * (high - low);
+        let part = |range: &Range<S>, low: S, high: S| range.mean(low, (high - low) / low, high) * (high - low);
         let between = self.ranges.iter().zip(self.ranges.iter().skip(1)).enumerate().skip(from).take(to - from);
         let sum = between.fold(S::whole(0), |sum, (index, (range, next))| {
             let low = if index == from { temperature } else { range.start };
@@ -184,6 +194,24 @@ impl<S: Elementary> HeatCapacity<S> {
         });
         let last = self.at(to);
         (sum + part(last, last.start, end)) / temperature
+    }
+
+    /// [`HeatCapacity::mean`] in another kind of number.
+    pub(crate) fn mean_as<T: Elementary + From<S>>(&self, from: usize, temperature: T, excess: T, to: usize) -> T {
+        if from == to {
+            self.at(from).map(T::from).mean(temperature, excess, temperature + temperature * excess)
+        } else {
+            self.map(T::from).mean(from, temperature, excess, to)
+        }
+    }
+
+    /// [`HeatCapacity::rise`] in another kind of number.
+    pub(crate) fn rise_as<T: Elementary + From<S>>(&self, from: usize, temperature: T, excess: T, to: usize) -> T {
+        if from == to {
+            excess * self.mean_as(from, temperature, excess, to)
+        } else {
+            self.map(T::from).rise(from, temperature, excess, to)
+        }
     }
 
     /// (s(T(1 + x)) − s(T))/R = ∫ `c_p`/R dT/T at constant pressure, between a temperature T in range `from` and T(1 + x) in range `to`.

@@ -3,8 +3,8 @@
 use super::counted::Counted;
 use super::enclosure::{Enclosure, Quality};
 use super::rational::Rational;
-use super::round::{UNIT, add_down, add_up, in_range, power_of_two, sqrt, two_product, two_sum};
-use super::traits::{Positive, Semifield};
+use super::round::{UNIT, add_down, add_up, fast_two_sum, in_range, power_of_two, sqrt, two_product, two_sum};
+use super::traits::{Decided, Positive, Semifield};
 use core::ops::{Add, Div, Mul, Neg, Sub};
 
 /// A real number within `radius` of head + tail: about 30 digits, and a bound that is computed along.
@@ -30,11 +30,19 @@ pub struct Ball {
 /// Added wherever a rounding may have underflowed: products here are at least 2⁻⁹⁶⁰, their tails' errors at most 2⁻¹⁰⁷⁴ each.
 const TINY: f64 = f64::from_bits(1 << 52);
 
-/// u times a sum of magnitudes of rounded results, rounded up, with what may have underflowed; 0 only where nothing was rounded. That the result
-/// is 0 does not tell: it may have underflowed whole.
+/// u times a sum of magnitudes of rounded results, rounded up, with what may have underflowed; 0 only where nothing was rounded.
 #[inline(always)]
 fn roundings(magnitudes: f64, nothing_rounded: bool) -> f64 {
     if nothing_rounded { 0.0 } else { up(magnitudes * UNIT) + 64.0 * TINY }
+}
+
+/// True if both magnitudes lie from 2⁻²⁵⁶ up to 2²⁵⁶, where their product, their quotient and the errors of these are in range: one test for nearly all
+/// numbers that occur.
+#[inline(always)]
+fn are_moderate(a: f64, b: f64) -> bool {
+    // Without the sign bit the exponent is the top eleven bits; of its distance from the least one the top two have to be zero.
+    let above = |x: f64| (x.to_bits() << 1).wrapping_sub((1023 - 256) << 53);
+    (above(a) | above(b)) >> 62 == 0
 }
 
 /// Covers the at most 2⁶ roundings by which a sum of non-negative terms may be too small.
@@ -68,8 +76,8 @@ impl From<Counted> for Ball {
 impl From<Rational> for Ball {
     /// An exact rational number within 2^±900, else unknown.
     fn from(x: Rational) -> Self {
-        if x.is_zero() {
-            return Self::from(0.0);
+        if let Some(exact) = x.as_double() {
+            return Self::from(exact);
         }
         let nearest = x.to_f64();
         if Rational::from(nearest) == x {
@@ -93,8 +101,15 @@ impl Ball {
     #[inline(always)]
     fn computed(head: f64, tail: f64, radius: f64) -> Self {
         let (head, tail) = two_sum(head, tail);
-        // A radius that is not a number fails the comparison.
-        if head.is_finite() && tail.is_finite() && radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
+        // Of a head that is not finite the tail is not a number, and that fails the comparison as a radius does that is not one.
+        if tail.abs() + radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
+    }
+
+    /// The same where |head| ≥ |tail| or the head is zero.
+    #[inline(always)]
+    fn ordered(head: f64, tail: f64, radius: f64) -> Self {
+        let (head, tail) = fast_two_sum(head, tail);
+        if tail.abs() + radius < f64::INFINITY { Self { head, tail, radius } } else { Self::UNKNOWN }
     }
 
     /// A double that lies on the same side of every double as the number, as far as the ball tells: the nearest one, or the next one above if the number
@@ -128,17 +143,15 @@ impl Ball {
         self.head
     }
 
+    /// A bound on the distance between the number and the nearest double.
+    #[inline(always)]
+    pub(super) fn radius_about_nearest(self) -> f64 {
+        up(self.tail.abs() + self.radius)
+    }
+
     /// The bound on the distance between the number and the middle.
     pub fn radius(self) -> f64 {
         self.radius
-    }
-
-    /// x/2, at any magnitude.
-    #[inline(always)]
-    pub(crate) fn halved(self) -> Self {
-        // Only a subnormal loses a bit.
-        let lost = if self.magnitude() == 0.0 { 0.0 } else { TINY };
-        Self::computed(self.head * 0.5, self.tail * 0.5, self.radius * 0.5 + lost)
     }
 
     /// 2ⁿ·x, exact but for a tail that underflows; unknown for |n| above 1000.
@@ -149,7 +162,7 @@ impl Ball {
         }
         let factor = power_of_two(n);
         let tail = self.tail * factor;
-        let lost = if tail / factor == self.tail { 0.0 } else { TINY };
+        let lost = if tail * power_of_two(-n) == self.tail { 0.0 } else { TINY };
         let scaled = Self { head: self.head * factor, tail, radius: product_up(self.radius, factor) + lost };
         if scaled.head == 0.0 && self.head == 0.0 || in_range(scaled.head) { scaled } else { Self::UNKNOWN }
     }
@@ -169,6 +182,26 @@ impl Ball {
     #[inline(always)]
     pub(crate) fn magnitude(self) -> f64 {
         up(self.head.abs() + self.tail.abs() + self.radius)
+    }
+
+    /// A product of factors that are not moderate: they may be zero, and the result may leave the range of error-free products.
+    #[cold]
+    fn product_at_the_ends(self, other: Self) -> Self {
+        if self.head == 0.0 || other.head == 0.0 {
+            // Zero times what is not known, and may have no value, is not zero.
+            if self.radius.max(other.radius) == f64::INFINITY {
+                return Self::UNKNOWN;
+            }
+            // A zero head means a zero middle: all that is left is the spread.
+            return Self::computed(0.0, 0.0, up(product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius)));
+        }
+        if !(in_range(self.head * other.head) && in_range(self.head) && in_range(other.head)) {
+            return Self::UNKNOWN;
+        }
+        // By powers of two into the middle and back.
+        let exponent = |x: f64| ((x.to_bits() >> 52) & 0x7ff) as i32 - 1023;
+        let (n, m) = (exponent(self.head), exponent(other.head));
+        (self.scaled(-n) * other.scaled(-m)).scaled(n).scaled(m)
     }
 
     /// A positive bound on |x| from below, or something ≤ 0.
@@ -198,7 +231,14 @@ impl Semifield for Ball {
 
     #[inline(always)]
     fn doubled(self) -> Self {
-        Self::computed(self.head + self.head, self.tail + self.tail, self.radius + self.radius)
+        Self::ordered(self.head + self.head, self.tail + self.tail, self.radius + self.radius)
+    }
+
+    #[inline(always)]
+    fn halved(self) -> Self {
+        // Only a subnormal loses a bit; a single double in range is none.
+        let lost = if self.tail == 0.0 && self.radius == 0.0 && (self.head == 0.0 || in_range(self.head)) { 0.0 } else { TINY };
+        Self::ordered(self.head * 0.5, self.tail * 0.5, self.radius * 0.5 + lost)
     }
 }
 
@@ -232,31 +272,22 @@ impl Sub for Ball {
 
 impl Mul for Ball {
     type Output = Self;
-    /// head·head exactly as two doubles, plus both cross products; what is dropped is tail·tail.
+    /// head·head exactly as two doubles, plus both cross products; what is dropped, tail·tail, is at most u times a cross product.
     #[inline(always)]
     fn mul(self, other: Self) -> Self {
-        let spread = product_up(self.magnitude(), other.radius) + product_up(other.magnitude(), self.radius);
-        if self.head == 0.0 || other.head == 0.0 {
-            // Zero times what is not known, and may have no value, is not zero.
-            if self.radius.max(other.radius) == f64::INFINITY {
-                return Self::UNKNOWN;
-            }
-            // A zero head means a zero middle: all that is left is the spread.
-            return Self::computed(0.0, 0.0, up(spread));
-        }
-        let head = self.head * other.head;
-        if !(in_range(head) && in_range(self.head) && in_range(other.head)) {
-            return Self::UNKNOWN;
+        if !are_moderate(self.head, other.head) {
+            return self.product_at_the_ends(other);
         }
         let (head, error) = two_product(self.head, other.head);
         let first = self.head * other.tail;
         let second = self.tail * other.head;
-        let (cross, third) = two_sum(first, second);
-        let (tail, fourth) = two_sum(error, cross);
-        let dropped = product_up(self.tail.abs(), other.tail.abs());
-        let exact = self.tail == 0.0 && other.tail == 0.0;
-        let lost = roundings(first.abs() + second.abs(), exact) + third.abs() + fourth.abs() + dropped;
-        Self::computed(head, tail, up(spread + lost))
+        let tail = error + (first + second);
+        // |tail| ≤ u·|head|, which `up` covers.
+        let spread = self.head.abs() * other.radius + (other.head.abs() + other.radius) * self.radius;
+        // Each cross product, their sum and its sum with the error are rounded.
+        let lost = ((first.abs() + second.abs()) * 3.0 + tail.abs()) * UNIT;
+        let inexact = self.tail.abs() + other.tail.abs() + self.radius + other.radius;
+        Self::ordered(head, tail, if inexact == 0.0 { 0.0 } else { up(spread + lost) + 64.0 * TINY })
     }
 }
 
@@ -265,7 +296,7 @@ impl Div for Ball {
     /// q = RN(head/head) with its exact remainder r; A/B − q = (r + a.tail − q·b.tail + …)/B.
     #[inline(always)]
     fn div(self, other: Self) -> Self {
-        let divisor = other.mignitude();
+        let divisor = other.head.abs() * (1.0 - 8.0 * f64::EPSILON) - other.radius;
         // A divisor that is not a number, or that may be zero, fails here.
         if !(divisor > 0.0 && divisor < f64::INFINITY) {
             return Self::UNKNOWN;
@@ -275,26 +306,22 @@ impl Div for Ball {
             return Self::computed(0.0, 0.0, if self.radius == 0.0 { 0.0 } else { up(radius) + TINY });
         }
         let quotient = self.head / other.head;
-        if !(in_range(quotient) && in_range(self.head) && in_range(other.head)) {
+        if !(are_moderate(self.head, other.head) || in_range(quotient) && in_range(self.head) && in_range(other.head)) {
             return Self::UNKNOWN;
         }
         let (p, error) = two_product(quotient, other.head);
         let remainder = (self.head - p) - error;
         let shift = quotient * other.tail;
-        let (tails, first) = two_sum(self.tail, -shift);
-        let (numerator, second) = two_sum(remainder, tails);
+        let numerator = remainder + (self.tail - shift);
         let tail = numerator / other.head;
+        // The shift, its difference from the tail and the sum with the remainder are rounded.
+        let lost = (shift.abs() * 2.0 + self.tail.abs() + numerator.abs()) * UNIT;
+        // Divided by head instead of by the true divisor.
+        let other_divisor = tail.abs() * (other.tail.abs() + other.radius);
+        let spread = (self.radius + quotient.abs() * other.radius + lost + other_divisor + 64.0 * TINY) / divisor;
         // The quotient of the remainder is exact only if there is none.
-        let last = roundings(tail.abs(), numerator == 0.0);
-        let spread = self.radius
-            + product_up(quotient.abs(), other.radius)
-            + roundings(shift.abs(), other.tail == 0.0)
-            + first.abs()
-            + second.abs()
-            // Divided by head instead of by the true divisor.
-            + product_up(tail.abs(), other.tail.abs() + other.radius);
-        let spread = if spread == 0.0 { 0.0 } else { up(spread) / divisor + TINY };
-        Self::computed(quotient, tail, up(spread + last))
+        let inexact = self.radius + other.radius + other.tail.abs() + numerator.abs();
+        Self::ordered(quotient, tail, if inexact == 0.0 { 0.0 } else { up(spread + tail.abs() * UNIT) + 64.0 * TINY })
     }
 }
 
@@ -318,6 +345,16 @@ impl Positive for Ball {
         let spread = up(self.radius + first.abs()) / (root + root) + curvature;
         let spread = if spread == 0.0 { 0.0 } else { up(spread) + TINY };
         Self::computed(root, tail, up(spread + roundings(tail.abs(), numerator == 0.0)))
+    }
+}
+
+impl Decided for Ball {
+    fn is_positive(self) -> bool {
+        self.is_certainly_positive()
+    }
+
+    fn is_zero(self) -> bool {
+        self.magnitude() == 0.0
     }
 }
 

@@ -15,6 +15,9 @@ const SMALL: f64 = power_of_two(-110);
 /// The exponential's argument is halved this often before its series; each halving costs one squaring and one bit.
 const HALVINGS: i32 = 6;
 
+/// Up to this distance from 1 the logarithm is a series in it; beyond it what cancels between the terms of the other form is four bits at most.
+const NEAR_ONE: f64 = power_of_two(-4);
+
 /// A constant of the table, good to 2⁻¹⁰⁶ of its value; exact where nothing is left for the tail.
 #[inline(always)]
 fn constant((head, tail): (f64, f64)) -> Ball {
@@ -38,28 +41,40 @@ fn exp_reduced(r: Ball) -> Ball {
     (0..HALVINGS).fold(series, |power, _| power * power)
 }
 
-/// The terms of artanh(s)/s = Σ qⁿ/(2n + 1), q = s², before the term `first` as balls, that one and `count` after it in plain f64.
+/// The doubles nearest 1/(2n + 1).
+const ODD_NEAREST: [f64; 16] = {
+    let mut table = [0.0; 16];
+    let mut n = 0;
+    while n < table.len() {
+        table[n] = 1.0 / (2 * n + 1) as f64;
+        n += 1;
+    }
+    table
+};
+
+/// The terms of artanh(s)/s = Σ qⁿ/(2n + 1), q = s², before the term `FIRST` as balls, that one and those before the term `END` in plain f64.
 ///
-/// The plain part is below |q|^first/(2·first + 1)/(1 − q) and has a relative error below 2⁻⁴⁷, with what is left out: less than
-/// |q|^first·2⁻⁴⁸, for first ≥ 3.
+/// The plain part is q times a sum below 1/4 for `FIRST` ≥ 2. Of its roundings those of the first coefficient, of the last sum, of q and of the product count,
+/// u each, those before weigh q times as much: less than 2⁻⁵²·q. It moves with q by less than 64 times. What is left out,
+/// q^(`END` − `FIRST` + 1)/(2·`END` + 1)/(1 − q), has to be less than 2⁻⁵²·q.
 #[inline(always)]
-fn artanh_ratio(s: Ball, first: u32, count: u32) -> Ball {
+fn artanh_ratio<const FIRST: usize, const END: usize>(s: Ball) -> Ball {
     let q = s * s;
     let x = q.nearest();
-    let plain = (first..=first + count).rev().fold(0.0, |sum, n| sum * x + 1.0 / f64::from(2 * n + 1));
-    let power = (0..first).fold(1.0, |power, _| power * x);
-    let sum = ODD.iter().take(first as usize).rev().fold(Ball::from(plain), |sum, term| constant(*term) + q * sum);
-    sum.widened(power * power_of_two(-48) + q.radius() * power * 64.0)
+    let plain = x * ODD_NEAREST[FIRST..END].iter().rev().fold(0.0, |sum, term| sum * x + term);
+    let rest = Ball::from(plain).widened(x * power_of_two(-50) + q.radius() * 64.0);
+    let start = constant(ODD[FIRST - 1]) + rest;
+    ODD[..FIRST - 1].iter().rev().fold(start, |sum, term| constant(*term) + q * sum)
 }
 
-/// artanh(s)/s for |s| ≤ 0.145: q⁸ < 2⁻⁴⁴, and the terms after n = 21 sum to less than 2⁻¹²⁵.
+/// artanh(s)/s for |s| ≤ 1/31: q < 2⁻⁹·⁹, so q⁵ < 2⁻⁴⁹, and q⁶ < 2⁻⁵⁹ is left out.
 fn artanh_ratio_of_fraction(s: Ball) -> Ball {
-    artanh_ratio(s, 8, 13)
+    artanh_ratio::<5, 11>(s)
 }
 
-/// artanh(s)/s for |s| ≤ 2⁻⁸ (1 + 2⁻²⁰): q³ < 2⁻⁴⁷, and the terms after n = 8 sum to less than 2⁻¹⁴⁰.
+/// artanh(s)/s for |s| ≤ 2⁻⁸ (1 + 2⁻²⁰): q² < 2⁻³¹, and q⁴ < 2⁻⁶³ is left out.
 fn artanh_ratio_of_trace(s: Ball) -> Ball {
-    artanh_ratio(s, 3, 5)
+    artanh_ratio::<2, 6>(s)
 }
 
 /// True where two terms of a Taylor series leave less than 2⁻²⁴⁰, and products could leave the range of error-free transforms.
@@ -91,8 +106,31 @@ fn by_ends(x: Ball, f: impl Fn(Ball) -> Ball) -> Ball {
     if hull.is_bounded() { Ball::around(hull) } else { Ball::UNKNOWN }
 }
 
+/// ln x of a narrow ball of positive numbers, with an error relative to 1: x = m·2ⁿ with m in [1, 2).
+fn ln_by_table(x: Ball) -> Ball {
+    // From the ends of the range, where a double may be subnormal, by 2^±200 into the middle.
+    let moved = if in_range(x.nearest()) {
+        0
+    } else if x.nearest() < 1.0 {
+        200
+    } else {
+        -200
+    };
+    let centred = if moved == 0 { x } else { x.scaled(moved) };
+    let exponent = ((centred.nearest().to_bits() >> 52) & 0x7ff) as i32 - 1023;
+    let mantissa = centred.nearest() * power_of_two((-exponent).clamp(-1000, 1000));
+    let (m, n) = (centred.scaled(-exponent), exponent - moved);
+    // ln m = ln c + 2·artanh((m − c)/(m + c)), c the middle of the 64th of [1, 2) in which m lies.
+    let index = ((mantissa - 1.0) * 64.0) as u32;
+    let Some(logarithm) = LOGARITHM.get(index as usize) else { return Ball::UNKNOWN };
+    let c = Ball::from(1.0 + f64::from(2 * index + 1) / 128.0);
+    let s = (m - c) / (m + c);
+    let of_m = constant(*logarithm) + (s * artanh_ratio_of_trace(s)).doubled();
+    Ball::from(f64::from(n)) * constant(LN_2) + of_m
+}
+
 impl Elementary for Ball {
-    /// Near 1 by ln(1+x)/x, whose relative error stays small. Elsewhere x = m·2ⁿ with m in [1, 2).
+    /// Near 1 by ln(1+x)/x, whose relative error stays small.
     fn ln(self) -> Self {
         if !self.is_certainly_positive() {
             return Self::UNKNOWN;
@@ -102,28 +140,10 @@ impl Elementary for Ball {
         }
         let one = Self::whole(1);
         let from_one = self - one;
-        if from_one.magnitude() <= 0.25 {
+        if from_one.magnitude() <= NEAR_ONE {
             return from_one * from_one.log1p_ratio();
         }
-        // From the ends of the range, where a double may be subnormal, by 2^±200 into the middle.
-        let moved = if in_range(self.nearest()) {
-            0
-        } else if self.nearest() < 1.0 {
-            200
-        } else {
-            -200
-        };
-        let centred = self.scaled(moved);
-        let exponent = ((centred.nearest().to_bits() >> 52) & 0x7ff) as i32 - 1023;
-        let mantissa = centred.nearest() * power_of_two((-exponent).clamp(-1000, 1000));
-        let (m, n) = (centred.scaled(-exponent), exponent - moved);
-        // ln m = ln c + 2·artanh((m − c)/(m + c)), c the middle of the 64th of [1, 2) in which m lies.
-        let index = (mantissa - 1.0) * 64.0;
-        let Some(logarithm) = LOGARITHM.get(index as usize) else { return Self::UNKNOWN };
-        let c = Self::from(1.0 + (2.0 * libm::floor(index) + 1.0) / 128.0);
-        let s = (m - c) / (m + c);
-        let of_m = constant(*logarithm) + (s * artanh_ratio_of_trace(s)).doubled();
-        Self::from(f64::from(n)) * constant(LN_2) + of_m
+        ln_by_table(self)
     }
 
     /// x = n·ln 2 + r.
@@ -148,20 +168,23 @@ impl Elementary for Ball {
         exp_reduced(r).scaled(n as i32)
     }
 
-    /// 2·artanh(s)/x with s = x/(2+x), that is (2/(2+x))·artanh(s)/s, for x near zero; elsewhere by the quotient.
+    /// 2·artanh(s)/x with s = x/(2+x), that is (2/(2+x))·artanh(s)/s, for |x| ≤ 1/16; elsewhere by the quotient.
     fn log1p_ratio(self) -> Self {
-        let x = self.nearest();
         if is_tiny(self) {
             return linear(Self::whole(1), -self.halved(), self);
         }
         if !is_narrow(self) && self.radius() > power_of_two(-60) {
             return by_ends(self, Self::log1p_ratio);
         }
-        if x.abs() <= 0.25 && self.radius() <= power_of_two(-10) {
+        if self.magnitude() <= NEAR_ONE {
             let below = Self::whole(2) + self;
             return (Self::whole(2) / below) * artanh_ratio_of_fraction(self / below);
         }
-        (Self::whole(1) + self).ln() / self
+        let whole = Self::whole(1) + self;
+        if whole.is_certainly_positive() && is_narrow(whole) {
+            return ln_by_table(whole) / self;
+        }
+        whole.ln() / self
     }
 
     /// Taylor series Σ xⁿ/(n+1)! for |x| ≤ 0.51: the terms after n = 24 sum to less than 2⁻¹¹³; elsewhere by the quotient.

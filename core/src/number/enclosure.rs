@@ -52,6 +52,9 @@ impl From<f64> for Enclosure {
 impl From<super::Rational> for Enclosure {
     /// The optimal enclosure of the exact number.
     fn from(x: super::Rational) -> Self {
+        if let Some(exact) = x.as_double() {
+            return Self::from(exact);
+        }
         let nearest = x.to_f64();
         if !nearest.is_finite() {
             return if x.is_finite() { Self::UNKNOWN } else { Self::UNDEFINED };

@@ -1,5 +1,6 @@
 //! Exact decimals and ratios: a number as it was typed.
 
+use super::round::power_of_two;
 use core::cmp::Ordering;
 
 /// An exact rational number ± numerator/denominator · 2ᵉ.
@@ -225,8 +226,18 @@ impl Rational {
         i64::try_from(if self.negative { -magnitude } else { magnitude }).ok()
     }
 
+    /// The double that the number is, where that shows without a division: a whole number of 53 bits times a power of two.
+    pub(super) fn as_double(self) -> Option<f64> {
+        let shows = self.denominator == 1 && self.numerator < 1 << 53 && self.exponent.abs() <= 900;
+        let magnitude = |exponent| self.numerator as u64 as f64 * power_of_two(exponent);
+        shows.then(|| if self.negative { -magnitude(self.exponent) } else { magnitude(self.exponent) })
+    }
+
     /// The nearest double, ties to even; infinite beyond the range of a double.
     pub fn to_f64(self) -> f64 {
+        if let Some(exact) = self.as_double() {
+            return exact;
+        }
         let magnitude = if self.denominator == 0 {
             if self.numerator == 0 { f64::NAN } else { f64::INFINITY }
         } else {

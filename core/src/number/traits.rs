@@ -14,6 +14,12 @@ pub trait Semifield: Copy + Add<Output = Self> + Mul<Output = Self> + Div<Output
     /// 2·x; exact in every binary kind of number.
     fn doubled(self) -> Self;
 
+    /// x/2; exact in every binary kind but for what underflows.
+    #[inline(always)]
+    fn halved(self) -> Self {
+        self / Self::whole(2)
+    }
+
     /// x².
     #[inline(always)]
     fn squared(self) -> Self {
@@ -52,6 +58,20 @@ pub trait Elementary: Signed {
     fn pow(self, exponent: Self) -> Self {
         (self.ln() * exponent).exp()
     }
+}
+
+/// [`Elementary`] numbers that come with a bound of their error, so that a sign is certain or not.
+pub(crate) trait Decided: Elementary {
+    /// True if the number is certainly positive.
+    fn is_positive(self) -> bool;
+
+    /// True if the number is certainly negative.
+    fn is_negative(self) -> bool {
+        (-self).is_positive()
+    }
+
+    /// True if the number is certainly zero.
+    fn is_zero(self) -> bool;
 }
 
 /// The slopes of the two ratios of [`Elementary`], which a [`Dual`](crate::number::Dual) over this kind needs.

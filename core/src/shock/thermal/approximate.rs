@@ -7,8 +7,27 @@ use crate::number::Elementary;
 /// Steps, at most: a bracketed Newton iteration takes 4 to 8.
 pub(super) const STEPS: u32 = 120;
 
-/// A compression that solves the equation of the stage to the accuracy of the kind of number, the range of the temperature behind, and the number of
-/// steps taken; `None` where the temperature behind leaves the data.
+/// What the iteration finds.
+#[derive(Clone, Copy)]
+pub(super) struct Approximation<S> {
+    pub compression: S,
+    /// c̄ at it.
+    pub mean: S,
+    /// x at it.
+    pub excess: S,
+    /// The range of the temperature behind.
+    pub to: usize,
+    /// The number of steps taken.
+    pub steps: u32,
+}
+
+impl<S: Elementary> Approximation<S> {
+    fn new(stage: &impl Stage<S>, compression: S, mean: S, to: usize, steps: u32) -> Self {
+        Self { compression, mean, excess: stage.energy_excess(compression, mean), to, steps }
+    }
+}
+
+/// A compression that solves the equation of the stage to the accuracy of the kind of number; `None` where the temperature behind leaves the data.
 ///
 /// Newton's iteration inside a bracket, which is halved where a step would leave it or the temperature leaves the data. `start` is the answer for
 /// constant heat capacity.
@@ -18,7 +37,7 @@ pub(super) fn approximate<S: Elementary + Into<f64>>(
     from: usize,
     temperature: S,
     start: S,
-) -> Option<(S, usize, u32)> {
+) -> Option<Approximation<S>> {
     let (coldest, hottest) = heat_capacity.range();
     let (one, two) = (S::whole(1), S::whole(2));
     let (mut low, mut high) = (S::whole(0), one);
@@ -55,17 +74,22 @@ pub(super) fn approximate<S: Elementary + Into<f64>>(
         let slope = residual_slope(stage, e, mean, mean_slope);
         let sign: f64 = value.into();
         if sign == 0.0 {
-            return Some((e, to, step));
+            return Some(Approximation::new(stage, e, mean, to, step));
         }
         (low, high) = if sign > 0.0 { (e, high) } else { (low, e) };
         let next = e - value / slope;
         let (moved, size): (f64, f64) = ((next - e).into(), next.into());
         if moved.abs() <= small * size {
-            return Some((next, to, step));
+            let [_, _, excess_slope] = stage.slopes(e);
+            let mean = mean + mean_slope * excess_slope * (next - e);
+            return Some(Approximation::new(stage, next, mean, to, step));
         }
         e = next;
     }
     // Near the weakest shock rounding hides the root: what is left of the bracket is it as well as plain digits tell.
-    let kelvin: f64 = (temperature + temperature * stage.temperature_excess(e)).into();
-    (kelvin <= hottest && kelvin >= coldest).then(|| (e, heat_capacity.index_at(kelvin), STEPS))
+    let excess = stage.temperature_excess(e);
+    let kelvin: f64 = (temperature + temperature * excess).into();
+    let to = heat_capacity.index_at(kelvin);
+    (kelvin <= hottest && kelvin >= coldest)
+        .then(|| Approximation::new(stage, e, heat_capacity.mean(from, temperature, excess, to), to, STEPS))
 }

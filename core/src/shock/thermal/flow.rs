@@ -2,8 +2,8 @@
 
 use super::setting::Setting;
 use super::stage::{GivenSpeed, GivenSpeedChange, Stage};
+use crate::gas::HeatCapacity;
 use crate::gas::isentropic_change::{Change, Speed};
-use crate::gas::{HeatCapacity, molar_gas_constant};
 use crate::number::{Ball, Elementary, Positive, Semifield, Signed};
 use crate::shock::{Output, mach_excess};
 
@@ -74,7 +74,7 @@ fn ratio<S: Signed>(heat_capacity: S) -> S {
     heat_capacity / (heat_capacity - S::whole(1))
 }
 
-/// The stage of the reflected shock, and T2, for an incident shock of given compression.
+/// The stage of the reflected shock, T2, and u2 − V, for an incident shock of given compression.
 pub(super) fn reflected_stage<S: Elementary>(
     setting: &Setting<S>,
     incident: &GivenSpeed<S>,
@@ -83,9 +83,24 @@ pub(super) fn reflected_stage<S: Elementary>(
 ) -> (GivenSpeedChange<S>, S, S) {
     let excess = incident.temperature_excess(compression);
     let behind = setting.temperature + setting.temperature * excess;
-    let change = setting.closing_speed(incident.m, compression);
-    let k = change.squared() / (setting.scale() * (S::whole(1) + excess));
-    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, behind, change)
+    let (stage, change) = reflected_stage_at(setting, incident, ranges, compression, excess);
+    (stage, behind, change)
+}
+
+/// The same where the temperature excess is known; without T2.
+#[inline(always)]
+pub(super) fn reflected_stage_at<S: Elementary>(
+    setting: &Setting<S>,
+    incident: &GivenSpeed<S>,
+    ranges: Ranges,
+    compression: S,
+    excess: S,
+) -> (GivenSpeedChange<S>, S) {
+    let speed = (incident.m * setting.scale).sqrt();
+    // In units of U, so that nothing is rounded for a wall at rest.
+    let change = compression - setting.wall_speed / speed;
+    let k = incident.m * change.squared() / (S::whole(1) + excess);
+    (GivenSpeedChange { k, lag: setting.lag(ranges, excess) }, speed * compression - setting.wall_speed)
 }
 
 impl<S: Elementary> ThermalFlow<S> {
@@ -97,12 +112,12 @@ impl<S: Elementary> ThermalFlow<S> {
         compression: S,
         (reflected_compression, reflected_mean): (S, S),
     ) -> Self {
-        let (reflected, behind, _) = reflected_stage(setting, incident, ranges, compression);
+        let (reflected, behind, closing_speed) = reflected_stage(setting, incident, ranges, compression);
         let both = [
             (compression, incident.temperature_excess(compression)),
             (reflected_compression, reflected.temperature_excess(reflected_compression)),
         ];
-        Self::from_parts(setting, incident, &reflected, ranges, both, (behind, reflected_mean))
+        Self::from_parts(setting, incident, &reflected, ranges, both, (behind, closing_speed, reflected_mean))
     }
 
     /// From compressions, temperature excesses and what else was formed of them.
@@ -112,9 +127,9 @@ impl<S: Elementary> ThermalFlow<S> {
         reflected: &GivenSpeedChange<S>,
         ranges: Ranges,
         [(compression, excess), (reflected_compression, reflected_excess)]: [(S, S); 2],
-        (behind, reflected_mean): (S, S),
+        (behind, closing_speed, reflected_mean): (S, S, S),
     ) -> Self {
-        let scale = setting.scale();
+        let scale = setting.scale;
         Self {
             pressure: setting.pressure,
             temperature: setting.temperature,
@@ -124,23 +139,18 @@ impl<S: Elementary> ThermalFlow<S> {
             m_excess: incident.m_excess,
             compression,
             excess,
-            closing_speed: setting.closing_speed(incident.m, compression),
+            closing_speed,
             wall_speed: setting.wall_speed,
             second: ranges.second,
             reflection: Reflection::Shock { k: reflected.k, mean: reflected_mean, lag_ratio: reflected.lag / reflected_compression },
             reflected_compression,
             reflected_excess,
             heat_capacity: [
-                setting.incident.value(ranges.first, setting.temperature),
+                setting.heat_capacity,
                 setting.incident.value(ranges.second, behind),
                 setting.reflected.value(ranges.fifth, behind + behind * reflected_excess),
             ],
         }
-    }
-
-    /// R T1/W, m²/s².
-    pub(super) fn scale_of(temperature: S, molar_mass: S) -> S {
-        molar_gas_constant::<S>() * temperature / molar_mass
     }
 }
 

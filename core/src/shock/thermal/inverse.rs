@@ -3,7 +3,7 @@
 use super::ThermalError;
 use super::certify::Problem;
 use super::flow::reflected_stage;
-use super::plain::PlainShock;
+use super::plain::{PlainRoots, PlainShock};
 use super::setting::Setting;
 use super::shock::{Flows, hull, solve};
 use super::slopes::flow_with_slopes;
@@ -40,14 +40,11 @@ fn target(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Option<(Output,
     })
 }
 
-/// The shock with its flows.
-pub(super) type Found = (Flows, [u32; 2]);
-
 /// Solves an inverse problem: M − 1 by a bracketed secant in f64, then by interval Newton about it, each of whose steps solves both shocks with proof.
 ///
 /// The answer exists, and is the only one in the interval of the last step. That these quantities rise with the shock speed over the whole
 /// range follows for state 2 from the criterion of the species; for state 5 it is what tests show.
-pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Result<Found, ThermalError> {
+pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball, flows: &mut Flows) -> Result<[u32; 2], ThermalError> {
     let parameter = entry.parameter();
     let refuse = |rule| ThermalError::Input(InputError { parameter, value: value.nearest(), rule });
     let (output, target) = target(setting, entry, value).ok_or(ThermalError::NotUnique(parameter))?;
@@ -63,15 +60,15 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Res
     let plain = setting.map(Ball::nearest);
     let first = setting.first();
     let (low, high) = setting.reflected.range();
-    let mut e = search(&plain, first, output, target.nearest()).ok_or(refuse(Rule::HeatsBeyondData(low, high)))?;
+    let mut e = search(&plain, output, target.nearest()).ok_or(refuse(Rule::HeatsBeyondData(low, high)))?;
     let mut reach = e.abs() * f64::from_bits((1023 - 44) << 52);
     for _ in 0..STEPS {
         let at = Ball::from(e);
-        let stage = setting.at_mach_excess(first, at);
-        let (flows, steps) = solve(setting, &stage, parameter, value.nearest())?;
+        let stage = setting.at_mach_excess(at);
+        let steps = solve(setting, &stage, parameter, value.nearest(), flows)?;
         let here = match flows {
             [Some(flow), None, ..] => flow.evaluate(output),
-            _ => Ball::around(hull(&flows, |flow| flow.evaluate(output))),
+            _ => Ball::around(hull(flows, |flow| flow.evaluate(output))),
         };
         let around = at.widened(reach);
         let slope = slope_over(setting, &plain, first, output, at, around);
@@ -83,8 +80,8 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Res
         };
         if around.enclosure().encloses_strictly(found.enclosure()) {
             if found.radius() <= NARROW * e || flows.iter().flatten().count() > 1 {
-                let (flows, _) = solve(setting, &setting.at_mach_excess(first, found), parameter, value.nearest())?;
-                return Ok((flows, steps));
+                solve(setting, &setting.at_mach_excess(found), parameter, value.nearest(), flows)?;
+                return Ok(steps);
             }
             reach = 2.0 * ((found.nearest() - e).abs() + found.radius());
         } else {
@@ -101,25 +98,25 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball) -> Res
 
 /// An enclosure of d(output)/d(M − 1) over an interval of M − 1.
 fn slope_over(setting: &Setting<Ball>, plain: &Setting<f64>, first: usize, output: Output, at: Ball, around: Ball) -> Option<Ball> {
-    let shock = PlainShock::new(plain, &plain.at_mach_excess(first, at.nearest()))?;
-    let [approximate, reflected] = shock.compressions;
+    let shock = PlainRoots::new(plain, &plain.at_mach_excess(at.nearest()))?;
+    let [approximate, reflected] = shock.compressions();
     let ranges = shock.ranges;
-    let stage = setting.at_mach_excess(first, around);
+    let stage = setting.at_mach_excess(around);
     let incident = Problem { stage, heat_capacity: &setting.incident, from: first, temperature: setting.temperature };
     let compression = incident.newton(approximate, ranges.second)?.compression;
     let (stage, behind, _) = reflected_stage(setting, &stage, ranges, compression);
     let reflection = Problem { stage, heat_capacity: &setting.reflected, from: ranges.ahead, temperature: behind };
     let reflected = reflection.newton(reflected, ranges.fifth)?.compression;
     let variables = setting.map(Dual::<Ball, 1>::constant);
-    let stage = variables.at_mach_excess(first, Dual::variable(around, 0));
+    let stage = variables.at_mach_excess(Dual::variable(around, 0));
     let [slope] = flow_with_slopes(&variables, &stage, ranges, [compression, reflected]).evaluate(output).slopes();
     Some(slope)
 }
 
 /// M − 1 in f64: secant steps in the logarithms of M − 1 and of the quantity, every third step a bisection.
-fn search(plain: &Setting<f64>, first: usize, output: Output, target: f64) -> Option<f64> {
+fn search(plain: &Setting<f64>, output: Output, target: f64) -> Option<f64> {
     let at = |logarithm: f64| -> Option<f64> {
-        let stage: GivenSpeed<f64> = plain.at_mach_excess(first, libm::exp(logarithm));
+        let stage: GivenSpeed<f64> = plain.at_mach_excess(libm::exp(logarithm));
         let value = PlainShock::new(plain, &stage)?.flow().evaluate(output);
         (value > 0.0).then(|| libm::log(value / target))
     };

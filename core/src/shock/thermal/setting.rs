@@ -1,6 +1,6 @@
 //! The fill with the heat capacities that hold across each shock, in one kind of number.
 
-use super::flow::{Ranges, ThermalFlow};
+use super::flow::Ranges;
 use super::stage::GivenSpeed;
 use crate::gas::HeatCapacity;
 use crate::number::{Ball, Elementary, Semifield};
@@ -13,8 +13,10 @@ pub(super) struct Setting<S> {
     pub pressure: S,
     /// T1, K.
     pub temperature: S,
-    /// W, kg/mol.
-    pub molar_mass: S,
+    /// R T1, m²/s², R for the gas.
+    pub scale: S,
+    /// `c_p`/R at T1 across the incident shock.
+    pub heat_capacity: S,
     /// V, m/s, along the incident direction.
     pub wall_speed: S,
     /// Across the incident shock.
@@ -32,7 +34,8 @@ impl<S: Semifield> Setting<S> {
         Setting {
             pressure: convert(self.pressure),
             temperature: convert(self.temperature),
-            molar_mass: convert(self.molar_mass),
+            scale: convert(self.scale),
+            heat_capacity: convert(self.heat_capacity),
             wall_speed: convert(self.wall_speed),
             incident: self.incident.map(convert),
             reflected: self.reflected.map(convert),
@@ -49,39 +52,29 @@ impl Setting<Ball> {
 }
 
 impl<S: Elementary> Setting<S> {
-    /// R T1, m²/s², R for the gas.
-    pub(super) fn scale(&self) -> S {
-        ThermalFlow::scale_of(self.temperature, self.molar_mass)
-    }
-
     /// The stage of an incident shock of this speed.
     pub(super) fn at_speed(&self, speed: S) -> GivenSpeed<S> {
-        let scale = self.scale();
+        let scale = self.scale;
         let square = speed.squared();
         GivenSpeed { m: square / scale, m_excess: (square - scale) / scale }
     }
 
     /// The stage of an incident shock of this Mach number, given M − 1: m = γ1 M², γ1 = c1/(c1 − 1).
-    pub(super) fn at_mach_excess(&self, first: usize, mach_excess: S) -> GivenSpeed<S> {
+    pub(super) fn at_mach_excess(&self, mach_excess: S) -> GivenSpeed<S> {
         let one = S::whole(1);
-        let c = self.incident.value(first, self.temperature);
+        let c = self.heat_capacity;
         let square_excess = mach_excess * (S::whole(2) + mach_excess);
         GivenSpeed { m: c * (one + square_excess) / (c - one), m_excess: (c * square_excess + one) / (c - one) }
     }
 
     /// The stage of an incident shock for an entry that gives its speed or Mach number; `None` for one that makes it an inverse problem.
-    pub(super) fn given(&self, first: usize, entry: Entry, value: S) -> Option<GivenSpeed<S>> {
+    pub(super) fn given(&self, entry: Entry, value: S) -> Option<GivenSpeed<S>> {
         match entry {
             Entry::ShockSpeed => Some(self.at_speed(value)),
-            Entry::MachExcess => Some(self.at_mach_excess(first, value)),
-            Entry::Mach => Some(self.at_mach_excess(first, value - S::whole(1))),
+            Entry::MachExcess => Some(self.at_mach_excess(value)),
+            Entry::Mach => Some(self.at_mach_excess(value - S::whole(1))),
             _ => None,
         }
-    }
-
-    /// u2 − V.
-    pub(super) fn closing_speed(&self, m: S, compression: S) -> S {
-        (m * self.scale()).sqrt() * compression - self.wall_speed
     }
 
     /// Δ = (h(T2) − h2)/(R T2), h2 the enthalpy that state 2 carries.

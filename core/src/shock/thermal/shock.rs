@@ -2,12 +2,12 @@
 
 use super::ThermalError;
 use super::certify::{Problem, Root};
-use super::flow::{Ranges, ThermalFlow, reflected_stage};
+use super::flow::{Ranges, ThermalFlow, reflected_stage_at};
 use super::inverse::inverse;
-use super::plain::{PlainFill, PlainShock};
+use super::plain::{PlainFill, PlainRoots};
 use super::setting::Setting;
 use super::stage::GivenSpeed;
-use crate::gas::{HeatCapacity, HeatCapacityModel, InputError, Parameter, Rule, ThermallyPerfectGas, positive};
+use crate::gas::{HeatCapacity, HeatCapacityModel, InputError, Parameter, Rule, ThermallyPerfectGas, molar_gas_constant, positive};
 use crate::number::{Ball, Enclosure, Known, Positive, Semifield};
 use crate::shock::{Entry, Output, State, Wave};
 
@@ -20,6 +20,8 @@ pub struct ThermalFill<'a> {
     pressure: Known,
     temperature: Known,
     balls: PlainFill<Ball>,
+    /// `c_p`/R at T1 across the incident shock.
+    heat_capacity: Ball,
 }
 
 impl<'a> ThermalFill<'a> {
@@ -50,11 +52,12 @@ impl<'a> ThermalFill<'a> {
             model,
             pressure: pressure.ball(),
             temperature: temperature.ball(),
-            molar_mass: gas.molar_mass(),
+            gas_constant: molar_gas_constant::<Ball>() / gas.molar_mass(),
             full: *gas.heat_capacity(),
             frozen: gas.frozen_heat_capacity(temperature.ball()),
         };
-        Ok(Self { gas, model, pressure, temperature, balls })
+        let heat_capacity = balls.heat_capacity(balls.temperature.side());
+        Ok(Self { gas, model, pressure, temperature, balls, heat_capacity })
     }
 
     /// The gas.
@@ -98,7 +101,7 @@ impl<'a> ThermalFill<'a> {
 
     /// The fill in balls, with the heat capacities of the model.
     pub(super) fn setting(&self, wall_speed: Ball) -> Setting<Ball> {
-        self.balls.setting(self.balls.temperature.side(), wall_speed)
+        self.balls.setting_with(self.balls.temperature.side(), self.heat_capacity, wall_speed)
     }
 }
 
@@ -181,11 +184,12 @@ impl<'a> ThermalShock<'a> {
     fn solved(fill: &ThermalFill<'a>, entry: Entry, value: Known) -> Result<Self, ThermalError> {
         let wall_speed = Ball::whole(0);
         let setting = fill.setting(wall_speed);
-        let (flows, steps) = match setting.given(setting.first(), entry, value.ball()) {
-            Some(incident) => solve(&setting, &incident, entry.parameter(), value.nominal())?,
-            None => inverse(&setting, entry, value.ball())?,
+        let mut shock = Self { fill: *fill, entry, value, wall_speed, is_box: false, flows: [None; FLOWS], steps: [0; 2] };
+        shock.steps = match setting.given(entry, value.ball()) {
+            Some(incident) => solve(&setting, &incident, entry.parameter(), value.nominal(), &mut shock.flows)?,
+            None => inverse(&setting, entry, value.ball(), &mut shock.flows)?,
         };
-        Ok(Self { fill: *fill, entry, value, wall_speed, is_box: false, flows, steps })
+        Ok(shock)
     }
 
     /// The same shock reflected from an end wall that moves with a constant velocity V along the incident direction (positive: it recedes; m/s). State 5
@@ -259,8 +263,9 @@ impl<'a> ThermalShock<'a> {
         let missing = ThermalError::Existence { temperature: self.nearest(Output::Temperature2) };
         let incident = self.flows.iter().flatten().next().ok_or(missing)?.incident();
         let setting = self.fill.setting(wall_speed);
-        let (flows, steps) = solve(&setting, &incident, self.entry.parameter(), self.value.nominal())?;
-        Ok(Self { wall_speed, flows, steps, ..*self })
+        let mut reflected = Self { wall_speed, ..*self };
+        reflected.steps = solve(&setting, &incident, self.entry.parameter(), self.value.nominal(), &mut reflected.flows)?;
+        Ok(reflected)
     }
 
     /// What runs back from the wall.
@@ -421,47 +426,48 @@ pub(super) fn hull(flows: &Flows, quantity: impl Fn(&ThermalFlow<Ball>) -> Ball)
     flows.iter().flatten().map(|flow| quantity(flow).enclosure()).reduce(Enclosure::hull).unwrap_or(Enclosure::UNKNOWN)
 }
 
-/// Both shocks: approximately in f64, then with proof.
+/// Both shocks: approximately in f64, then with proof. Gives the plain steps.
 pub(super) fn solve(
     setting: &Setting<Ball>,
     incident: &GivenSpeed<Ball>,
     parameter: Parameter,
     value: f64,
-) -> Result<(Flows, [u32; 2]), ThermalError> {
+    flows: &mut Flows,
+) -> Result<[u32; 2], ThermalError> {
     let first = setting.first();
-    let c = setting.incident.value(first, setting.temperature);
+    let c = setting.heat_capacity;
     // Supersonic: the residual at no compression, 2(c(m − 1) − m), is positive.
     let one = Ball::whole(1);
     if !(incident.m_excess * (c - one) - one).is_certainly_positive() {
-        let sound_speed = (c / (c - one) * setting.scale()).sqrt().nearest();
+        let sound_speed = (c / (c - one) * setting.scale).sqrt().nearest();
         let rule = if parameter == Parameter::ShockSpeed { Rule::AboveSoundSpeed(sound_speed) } else { Rule::Above(1.0) };
         return Err(InputError { parameter, value, rule }.into());
     }
     let plain_setting = setting.map(Ball::nearest);
     let plain_incident = incident.map(Ball::nearest);
-    let plain = PlainShock::new(&plain_setting, &plain_incident);
+    let plain = PlainRoots::new(&plain_setting, &plain_incident);
     let (low, high) = setting.reflected.range();
     let plain = plain.ok_or(InputError { parameter, value, rule: Rule::HeatsBeyondData(low, high) })?;
-    let mut flows = [None; FLOWS];
+    *flows = [None; FLOWS];
     let mut used = flows.iter_mut();
     let problem = Problem { stage: *incident, heat_capacity: &setting.incident, from: first, temperature: setting.temperature };
-    let [compression, reflected_compression] = plain.compressions;
-    for Root { compression, to, .. } in problem.roots(compression, plain.ranges.second)?.into_iter().flatten() {
-        let behind = problem.behind(compression);
+    let [compression, reflected_compression] = plain.compressions();
+    for first_root in problem.roots(compression, plain.ranges.second)?.into_iter().flatten() {
+        let Root { compression, excess, behind, to, .. } = first_root;
         // With one heat capacity for both shocks the range behind one is the range ahead of the other.
         let ahead = if setting.lagging.is_some() { setting.reflected.index_at(behind.nearest()) } else { to };
         let ranges = Ranges { first, second: to, ahead, fifth: plain.ranges.fifth };
-        let (stage, ..) = reflected_stage(setting, incident, ranges, compression);
+        let (stage, closing_speed) = reflected_stage_at(setting, incident, ranges, compression, excess);
         let reflection = Problem { stage, heat_capacity: &setting.reflected, from: ahead, temperature: behind };
-        for Root { compression: reflected, mean, to: fifth } in
-            reflection.roots(reflected_compression, plain.ranges.fifth)?.into_iter().flatten()
-        {
+        for last in reflection.roots(reflected_compression, plain.ranges.fifth)?.into_iter().flatten() {
             if let Some(place) = used.next() {
-                *place = Some(ThermalFlow::new(setting, incident, Ranges { fifth, ..ranges }, compression, (reflected, mean)));
+                let ranges = Ranges { fifth: last.to, ..ranges };
+                let both = [(compression, excess), (last.compression, last.excess)];
+                *place = Some(ThermalFlow::from_parts(setting, incident, &stage, ranges, both, (behind, closing_speed, last.mean)));
             }
         }
     }
-    Ok((flows, plain.steps()))
+    Ok(plain.steps())
 }
 
 #[cfg(test)]

@@ -5,8 +5,8 @@ use super::plain::{PlainFill, PlainShock};
 use super::setting::Setting;
 use super::shock::ThermalFill;
 use super::stage::{GivenSpeed, Stage, residual};
-use crate::gas::{GasSlopes, HeatCapacity, MixtureChange};
-use crate::number::{Ball, Dual, ElementarySlopes};
+use crate::gas::{GasSlopes, HeatCapacity, MixtureChange, molar_gas_constant};
+use crate::number::{Ball, Dual, ElementarySlopes, Semifield};
 
 /// An input of a shock into a thermally perfect gas, along which a slope is taken; all others are held, the shock speed among them.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -43,7 +43,9 @@ impl ThermalFill<'_> {
             }
             ThermalInput::Mixture(change) => {
                 let GasSlopes { full, frozen, molar_mass } = self.gas().slopes(change, temperature)?.plain();
-                fill.molar_mass = Variable::with_slopes(plain.molar_mass, [molar_mass]);
+                // d(R/W) = −(R/W)²/R dW.
+                let slope = -plain.gas_constant.squared() / molar_gas_constant::<f64>() * molar_mass;
+                fill.gas_constant = Variable::with_slopes(plain.gas_constant, [slope]);
                 fill.full = plain.full.with_slopes(&full);
                 fill.frozen = Variable::with_slopes(plain.frozen, [frozen]);
             }

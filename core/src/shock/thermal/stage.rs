@@ -7,7 +7,7 @@
 //!
 //! in which c̄ depends on ε through x only. For constant c̄ the equation is explicit.
 
-use crate::number::{Semifield, Signed};
+use crate::number::{Ball, Estimate, Semifield, Signed};
 
 /// What is given of a shock besides the gas ahead.
 pub(super) trait Stage<S> {
@@ -17,6 +17,8 @@ pub(super) trait Stage<S> {
     fn rest(&self, compression: S) -> S;
     /// x = Tb/Ta − 1.
     fn temperature_excess(&self, compression: S) -> S;
+    /// x where the equation holds, from the energy: c̄ and a sum of positive terms (and Δ), so that a strong shock loses no digits.
+    fn energy_excess(&self, compression: S, mean: S) -> S;
     /// dA/dε, dB/dε and dx/dε.
     fn slopes(&self, compression: S) -> [S; 3];
     /// ε where x has this value: the solution with lesser and with greater ε, as far as there are any, and whether there are is told by the sign of
@@ -30,6 +32,30 @@ pub(super) trait Stage<S> {
     fn falling(&self, compression: S, heat_capacity: S) -> S;
     /// A lower bound of the slope of the energy that is too much, h/R, with the temperature behind, where it has one for every temperature.
     fn least_slope(&self) -> Option<f64>;
+}
+
+/// A stage in balls, which are good for every digit, and in estimates, for what is wanted roughly.
+pub(super) trait ProvenStage: Stage<Ball> {
+    /// The same stage in estimates.
+    type Rough: Stage<Estimate>;
+    /// The same stage in estimates.
+    fn rough(&self) -> Self::Rough;
+}
+
+impl ProvenStage for GivenSpeed<Ball> {
+    type Rough = GivenSpeed<Estimate>;
+    #[inline(always)]
+    fn rough(&self) -> Self::Rough {
+        self.map(Estimate::from)
+    }
+}
+
+impl ProvenStage for GivenSpeedChange<Ball> {
+    type Rough = GivenSpeedChange<Estimate>;
+    #[inline(always)]
+    fn rough(&self) -> Self::Rough {
+        self.map(Estimate::from)
+    }
 }
 
 /// 2 c̄ A + B: positive for too small a compression, negative for too great a one.
@@ -67,6 +93,11 @@ impl<S: Signed> Stage<S> for GivenSpeed<S> {
     #[inline(always)]
     fn temperature_excess(&self, e: S) -> S {
         e * self.factor(e)
+    }
+    /// mε(2 − ε)/(2c̄).
+    #[inline(always)]
+    fn energy_excess(&self, e: S, mean: S) -> S {
+        self.m * e * (S::whole(2) - e) / mean.doubled()
     }
     #[inline(always)]
     fn slopes(&self, e: S) -> [S; 3] {
@@ -118,6 +149,11 @@ impl<S: Signed> Stage<S> for GivenSpeedChange<S> {
     #[inline(always)]
     fn temperature_excess(&self, e: S) -> S {
         self.factor(e) / e
+    }
+    /// (k(2 − ε)/(2ε) − Δ)/c̄.
+    #[inline(always)]
+    fn energy_excess(&self, e: S, mean: S) -> S {
+        (self.k * (S::whole(2) - e) / e.doubled() - self.lag) / mean
     }
     #[inline(always)]
     fn slopes(&self, e: S) -> [S; 3] {

@@ -2,9 +2,9 @@
 
 use super::certify::Problem;
 use super::flow::{Ranges, ThermalFlow, reflected_stage};
-use super::plain::{PlainFill, PlainShock};
+use super::plain::{PlainFill, PlainRoots};
 use super::shock::{ThermalFill, ThermalShock};
-use super::stage::{GivenSpeed, GivenSpeedChange, Stage, residual};
+use super::stage::{GivenSpeed, GivenSpeedChange, ProvenStage, Stage, residual};
 use crate::gas::HeatCapacity;
 use crate::gas::species::EXTENSION;
 use crate::number::{Ball, Dual, Enclosure, Known, Semifield, bounds};
@@ -45,12 +45,12 @@ impl ThermalFill<'_> {
         let setting = fill.setting(kelvin, Variable::whole(0));
         let centre_setting = centre_fill.setting(Ball::whole(0));
         let first = setting.incident.index_at(kelvin);
-        let incident = setting.given(first, entry, value)?;
-        let centre = centre_setting.given(first, entry, Ball::from(value.value().middle()))?;
+        let incident = setting.given(entry, value)?;
+        let centre = centre_setting.given(entry, Ball::from(value.value().middle()))?;
         let part = Part { spread: inputs.map(|input| input.value() - Enclosure::from(input.value().middle())) };
         let incident = GivenSpeed { m: part.tight(incident.m, centre.m), m_excess: part.tight(incident.m_excess, centre.m_excess) };
-        let plain = PlainShock::new(&centre_setting.map(Ball::nearest), &centre.map(Ball::nearest))?;
-        let [compression, reflected] = plain.compressions;
+        let plain = PlainRoots::new(&centre_setting.map(Ball::nearest), &centre.map(Ball::nearest))?;
+        let [compression, reflected] = plain.compressions();
         let mut found: Option<Variable> = None;
         let ahead =
             Problem { stage: centre, heat_capacity: &centre_setting.incident, from: first, temperature: centre_setting.temperature };
@@ -59,7 +59,7 @@ impl ThermalFill<'_> {
         {
             let ranges = Ranges { second: side.to, ..plain.ranges };
             let ranges = if setting.lagging.is_some() { ranges } else { Ranges { ahead: side.to, ..ranges } };
-            let (stage, _, _) = reflected_stage(&setting, &incident, ranges, side.compression);
+            let (stage, _, closing_speed) = reflected_stage(&setting, &incident, ranges, side.compression);
             let (centre_stage, centre_behind, _) = reflected_stage(&centre_setting, &centre, ranges, side.centre);
             let stage = GivenSpeedChange { k: part.tight(stage.k, centre_stage.k), lag: part.tight(stage.lag, centre_stage.lag) };
             let behind = part.tight(temperature + temperature * side.excess, centre_behind);
@@ -70,8 +70,14 @@ impl ThermalFill<'_> {
                 Problem { stage: centre_stage, heat_capacity: &centre_setting.reflected, from: ranges.ahead, temperature: centre_behind };
             for last in part.solutions(&stage, &setting.reflected, behind, &wall, reflected, plain.ranges.fifth)?.into_iter().flatten() {
                 let both = [(side.compression, side.excess), (last.compression, last.excess)];
-                let flow =
-                    ThermalFlow::from_parts(&setting, &incident, &stage, Ranges { fifth: last.to, ..ranges }, both, (behind, last.mean));
+                let flow = ThermalFlow::from_parts(
+                    &setting,
+                    &incident,
+                    &stage,
+                    Ranges { fifth: last.to, ..ranges },
+                    both,
+                    (behind, closing_speed, last.mean),
+                );
                 let own = flow.evaluate(output);
                 found = Some(found.map_or(own, |other| unknown(other.value().hull(own.value()))));
             }
@@ -92,7 +98,7 @@ impl ThermalFill<'_> {
             model: balls.model,
             pressure,
             temperature,
-            molar_mass: constant(balls.molar_mass),
+            gas_constant: constant(balls.gas_constant),
             full: balls.full.map(constant),
             frozen: Variable::with_slopes(frozen.0, temperature.slopes().map(slope)),
         })
@@ -148,7 +154,7 @@ impl Part {
 
     /// The shocks of all points of the part: with the polynomial of the centre, and with that of a neighbour where the temperature behind reaches across
     /// a joint. `None` where a proof fails.
-    fn solutions<T: Stage<Ball>>(
+    fn solutions<T: ProvenStage>(
         &self,
         stage: &(impl Stage<Variable> + Held),
         heat_capacity: &HeatCapacity<Variable>,
@@ -176,7 +182,7 @@ impl Part {
     }
 
     /// One of them. If ε − F/F′(E), with all of the part in F and F′, lies inside E, it holds the one root in E for every point of the part.
-    fn side<T: Stage<Ball>>(
+    fn side<T: ProvenStage>(
         &self,
         stage: &(impl Stage<Variable> + Held),
         heat_capacity: &HeatCapacity<Variable>,
@@ -189,11 +195,7 @@ impl Part {
         let root = centre.newton(approximate, to)?;
         let at = root.compression.enclosure();
         let ranges = [from, to];
-        let known = Mean {
-            temperature: centre.temperature.enclosure(),
-            excess: centre.stage.temperature_excess(root.compression).enclosure(),
-            value: root.mean.enclosure(),
-        };
+        let known = Mean { temperature: centre.temperature.enclosure(), excess: root.excess.enclosure(), value: root.mean.enclosure() };
         let along = |e: Enclosure| {
             let fixed = Variable::constant(e);
             residual(stage, fixed, known.over(heat_capacity, ranges, temperature, stage.temperature_excess(fixed))).slopes()
