@@ -6,13 +6,13 @@ use alloc::vec::Vec;
 
 use super::compare_report::{Counted, Departure, PastShot, Wanted};
 use super::compare_same as same;
+use super::driver::{dense_driver, with_driver};
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::format::significant;
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
 use super::plan_report::computed;
-use super::plan_tube::{dense_driver, driver_of};
 use super::reduce::report;
 use super::report::{Report, ReportQuantity};
 use super::shot::{Shot, Speed};
@@ -176,12 +176,12 @@ fn ideal(
         gas: own.gas.clone().or_else(|| planned?.gas.clone()),
         pressure: own.pressure.clone(),
         temperature: own.temperature.clone().or_else(|| planned?.temperature.clone()),
+        heat_capacity: own.heat_capacity.or_else(|| planned?.heat_capacity),
     };
     let missing = [("gas", record.gas.is_none()), ("temperature", record.temperature.is_none())];
     if let Some((field, _)) = missing.into_iter().find(|(_, missing)| *missing) {
         return without(format!("neither the record nor the plan has driver.{field}"));
     }
-    let driver = driver_of(&record, bores(shot.tube.as_ref()).or(plan.tube.as_ref()))?;
     let Some((typed, p4)) = &record.pressure else { return Ok(None) };
     let gas = match reduction.solved() {
         Solved::Constant(incident, _) => TestGas::from(incident.fill()),
@@ -193,10 +193,12 @@ fn ideal(
         let remedy = "check both, their units and the marks (g) and (a)";
         return Err(RecordError::new(ErrorKind::Value, "driver.pressure", typed.typed(), wrong, remedy));
     }
-    let found = driver.mach_excess(gas, p4.value).and_then(|excess| {
-        let mach = Known::from(1.0).enclosure() + excess;
-        Ok((mach, slopes(&driver, gas, p4.value.to_f64(), mach.middle())?))
-    });
+    let found = with_driver(&record, bores(shot.tube.as_ref()).or(plan.tube.as_ref()), |driver| {
+        Ok(driver.mach_excess(gas, p4.value).and_then(|excess| {
+            let mach = Known::from(1.0).enclosure() + excess;
+            Ok((mach, slopes(driver, gas, p4.value.to_f64(), mach.middle())?))
+        }))
+    })?;
     let (mach, slopes): (Enclosure, _) = match found {
         Ok(found) => found,
         Err(error) => return without(format!("{error}")),

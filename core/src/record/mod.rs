@@ -17,7 +17,8 @@
 //! # Plans, `plan/1`
 //!
 //! Needed: `record`, `gas`, `temperature` (of the fill) and `target`: `temperature` with `pressure`, or `step` with `fill_pressure`, or
-//! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`), `tube` (`driven_length`,
+//! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`,
+//! `heat_capacity`: `constant`, that at its temperature, or `equilibrium`), `tube` (`driven_length`,
 //! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `observe`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
 //! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory
 //! sets; `disturbance`), `filling`, `ambient`, `confirm` and the fields for the audit. See [`Plan::read`], [`Plan::report`] and [`PlanReport`].
@@ -53,6 +54,7 @@ mod compare_shot;
 mod compare_text;
 mod digest;
 mod driven;
+mod driver;
 mod error;
 mod filling;
 mod filling_flags;

@@ -11,6 +11,7 @@ use super::quantity::{Absolute, Mark, Quantity};
 use super::read::{self, Fields, Reading};
 use super::tree::Node;
 use super::unit::Dimension;
+use crate::gas::HeatCapacityModel;
 
 /// An error that all positions share.
 #[derive(Clone, Debug, PartialEq)]
@@ -85,6 +86,8 @@ pub struct Driver {
     pub pressure: Option<(Quantity, Absolute)>,
     /// Its temperature, K.
     pub temperature: Option<Quantity>,
+    /// Constant, or in equilibrium with the temperature; `None` where the record does not choose.
+    pub heat_capacity: Option<HeatCapacityModel>,
 }
 
 /// The absolute pressure, greater than zero.
@@ -396,16 +399,32 @@ pub(super) fn driver(
 ) -> Result<Option<Driver>, RecordError> {
     let Some(node) = fields.get("driver") else { return Ok(None) };
     let inner = Fields::new(node, "driver")?;
-    inner.allow(&["gas", "pressure", "temperature"])?;
+    inner.allow(&["gas", "pressure", "temperature", "heat_capacity"])?;
     let temperature = inner.quantity(reading, "temperature", Dimension::Temperature)?;
     if let Some(temperature) = &temperature {
         doubt_temperature(temperature, "driver.temperature", reading)?;
     }
+    let gas = inner.get("gas").map(|node| gas::read(node, "driver.gas", reading, flags)).transpose()?;
     Ok(Some(Driver {
-        gas: inner.get("gas").map(|node| gas::read(node, "driver.gas", reading, flags)).transpose()?,
+        heat_capacity: driver_heat_capacity(inner, gas.as_ref())?,
+        gas,
         pressure: marked_pressure(inner, "pressure", ambient, reading)?,
         temperature,
     }))
+}
+
+fn driver_heat_capacity(driver: Fields, gas: Option<&GasRecord>) -> Result<Option<HeatCapacityModel>, RecordError> {
+    let Some(typed) = driver.text("heat_capacity")? else { return Ok(None) };
+    let refused = |wrong: &str, remedy: &str| Err(RecordError::new(ErrorKind::Value, "driver.heat_capacity", typed, wrong, remedy));
+    match (typed, gas) {
+        ("constant", _) => Ok(Some(HeatCapacityModel::Constant)),
+        ("equilibrium", Some(GasRecord::Ratio { .. })) => refused(
+            "a gas given by its heat capacity ratio has a constant heat capacity",
+            "leave the field out or write \"constant\"; give species for \"equilibrium\"",
+        ),
+        ("equilibrium", _) => Ok(Some(HeatCapacityModel::Equilibrium)),
+        _ => refused("this heat capacity is unknown for a driver", "write \"constant\" or \"equilibrium\""),
+    }
 }
 
 /// `date` and `operator` are texts; `instruments` and `notes` may be lists of texts, `instruments` an object of texts.

@@ -4,11 +4,9 @@ use alloc::format;
 use alloc::string::ToString;
 use alloc::vec::Vec;
 
-use super::check::DEPARTURE;
-use super::error::{ErrorKind, RecordError};
+use super::driver::{dense_driver, no_driver, not_chosen, with_driver};
+use super::error::RecordError;
 use super::flag::Flag;
-use super::format::significant;
-use super::gas::{Component, GasRecord};
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
 use super::plan_report::{LimitLine, PlannedWave, computed};
@@ -16,10 +14,8 @@ use super::quantity::Quantity;
 use super::report::{ReportQuantity, States};
 use super::shot::Shot;
 use super::shot_tube::Layers;
-use super::uniform_time::{Setting, UniformTime};
-use crate::gas::species::named;
-use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas, departure_from_ideal};
-use crate::number::Rational;
+use super::uniform_time::{Found, Setting, UniformTime};
+use crate::gas::HeatCapacityRatio;
 use crate::shock::Entry;
 use crate::tube::{
     BehindShock, Contact, Drive, Driver, DriverError, Efficiency, Event, Tailoring, TestGas, Wave, WaveDiagram, WaveName, end_load,
@@ -47,13 +43,13 @@ pub(super) struct TubePart {
 }
 
 /// Pressures that act on the tube, Pa, absolute, each with its name.
-struct Loads<'a> {
+struct Loads {
     /// p5, with its expanded uncertainty.
     reflected: f64,
     /// The end wall after a shock came back from the contact surface.
     over_tailored: Option<f64>,
-    /// The driver, with p4 at the upper end of its band.
-    driver: Option<(&'a Driver<'a>, f64)>,
+    /// γ4, and p4 at the upper end of its band.
+    driver: Option<(HeatCapacityRatio, f64)>,
 }
 
 impl Plan {
@@ -68,34 +64,51 @@ impl Plan {
         let mut part = TubePart::default();
         let (mut over_tailored, mut found) = (None, None);
         let behind = gas.behind(Entry::ShockSpeed, speed).map_err(|error| no_driver(&error))?;
-        let driver = self.driver.as_ref().map(|record| driver_of(record, self.tube.as_ref())).transpose()?;
-        if let (Some(record), Some(driver)) = (&self.driver, &driver) {
-            let drive = driver.for_shock(&behind).map_err(|error| no_driver(&error))?;
-            self.driver_pressure(&mut part, driver, &drive, gas, &behind)?;
-            part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
-            let contact = Contact::new(&behind, &drive);
-            let met = contact.interaction();
-            // In proportion to p5, of which the upper end counts.
-            over_tailored =
-                met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|high| *high > p5.0).map(|high| high / p5.0 * p5.1);
-            if met.is_err() && contact.tailoring() != Tailoring::Expansion {
-                let text = "the contact surface is over-tailored: a shock comes back and raises the pressure at the end wall above p5 by an amount that is not computed for this test gas, nor compared with a rating";
-                part.flags.push(Flag::new("over-tailored-unchecked", text));
-            }
-            let disturbance = self.tolerance.disturbance.as_ref().map_or(0.0, |change| change.value().to_f64());
-            let (tube, contact) = (self.tube.as_ref(), &contact);
-            found = Setting { behind: &behind, driver, contact, tube, reflected_pressure: p5.0, disturbance }.find(&mut part.flags)?;
+        let mut ratio = None;
+        if let Some(record) = &self.driver {
+            found = with_driver(record, self.tube.as_ref(), |driver| {
+                ratio = HeatCapacityRatio::new(driver.heat_capacity_ratio()).ok();
+                self.driven(&mut part, &mut over_tailored, record, driver, (gas, &behind), p5)
+            })?;
             part.waves = found.as_ref().map_or(Vec::new(), |found| waves(&found.diagram));
+            part.flags.extend(not_chosen(record));
         }
         part.layers = shot.layers(&behind, states, found.as_ref(), &mut part.flags);
         part.time = found.map(|found| found.time);
         shot.nothing_observed(part.time.is_some(), &mut part.flags);
         if let Some(tube) = &self.tube {
             let p4 = part.p4_band.map(|[_, high]| high).or(part.p4.as_ref().map(|p4| p4.value));
-            let driver = driver.as_ref().zip(p4);
+            let driver = ratio.zip(p4);
             self.loads(&mut part, tube, &Loads { reflected: p5.1, over_tailored, driver });
         }
         Ok(part)
+    }
+
+    /// Driver pressure, what comes back from the contact surface, and the times.
+    fn driven(
+        &self,
+        part: &mut TubePart,
+        over_tailored: &mut Option<f64>,
+        record: &DriverRecord,
+        driver: &Driver<'_>,
+        (gas, behind): (TestGas<'_>, &BehindShock<'_>),
+        p5: (f64, f64),
+    ) -> Result<Option<Found>, RecordError> {
+        let drive = driver.for_shock(behind).map_err(|error| no_driver(&error))?;
+        self.driver_pressure(part, driver, &drive, gas, behind)?;
+        part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
+        let contact = Contact::new(behind, &drive);
+        let met = contact.interaction();
+        // In proportion to p5, of which the upper end counts.
+        let rise = met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|high| *high > p5.0);
+        *over_tailored = rise.map(|high| high / p5.0 * p5.1);
+        if met.is_err() && contact.tailoring() != Tailoring::Expansion {
+            let text = "the contact surface is over-tailored: a shock comes back and raises the pressure at the end wall above p5 by an amount that is not proven, nor compared with a rating";
+            part.flags.push(Flag::new("over-tailored-unchecked", text));
+        }
+        let disturbance = self.tolerance.disturbance.as_ref().map_or(0.0, |change| change.value().to_f64());
+        let (tube, contact) = (self.tube.as_ref(), &contact);
+        Setting { behind, driver, contact, tube, reflected_pressure: p5.0, disturbance }.find(&mut part.flags)
     }
 
     fn driver_pressure(
@@ -121,17 +134,16 @@ impl Plan {
         Ok(())
     }
 
-    fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads<'_>) {
+    fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads) {
         let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map_or(101_325.0, |ambient| ambient.value.to_f64());
         if let Some(bore) = &tube.driven_bore {
             let worst = loads.over_tailored.map_or(loads.reflected, |pressure| pressure.max(loads.reflected));
             part.end_load = end_load(worst, ambient, bore.value()).ok().map(|load| load.steady.high());
         }
-        if let (Some((driver, p4)), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
+        if let (Some((ratio, p4)), Some(bore), Some(length)) = (loads.driver, &tube.driver_bore, &tube.driver_length) {
             let area = core::f64::consts::PI / 4.0 * bore.value().to_f64() * bore.value().to_f64();
-            let energy = |ratio| stored_energy(ratio, p4, ambient, area * length.value().to_f64()).ok();
-            let energy = HeatCapacityRatio::new(driver.heat_capacity_ratio()).ok().and_then(energy);
-            part.stored_energy = energy.map(|energy| energy.brode.high());
+            let energy = stored_energy(ratio, p4, ambient, area * length.value().to_f64());
+            part.stored_energy = energy.ok().map(|energy| energy.brode.high());
         }
         let burst = tube.burst_pressure.as_ref().map(|(typed, absolute)| {
             let (value, standard) = (absolute.value.to_f64(), absolute.standard_uncertainty);
@@ -161,23 +173,6 @@ impl Plan {
         }
         let p4 = part.p4_band.or(part.p4.as_ref().map(|p4| [p4.value; 2]));
         part.flags.extend(burst.zip(p4).and_then(|((typed, burst), p4)| diaphragm(typed, burst, p4)));
-    }
-}
-
-/// The driver of a record: its gas with the heat capacity at its temperature.
-pub(super) fn driver_of(record: &DriverRecord, tube: Option<&TubeRecord>) -> Result<Driver<'static>, RecordError> {
-    let missing = |path: &str, example: &str| {
-        let remedy = format!("add it, like {example}");
-        RecordError::new(ErrorKind::Field, path, "", "a driver needs its gas and its temperature", remedy)
-    };
-    let temperature = record.temperature.as_ref().ok_or_else(|| missing("driver.temperature", "\"temperature\": \"295 K\""))?.value();
-    let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
-    let driver = Driver::new(driver_gas(gas, temperature)?, temperature).map_err(|error| no_driver(&error))?;
-    let bores = tube.and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
-    let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
-    match ratio {
-        None => Ok(driver),
-        Some(ratio) => driver.with_area_ratio(ratio).map_err(|error| no_driver(&error)),
     }
 }
 
@@ -217,68 +212,4 @@ fn at_efficiency(efficiency: &Quantity, error: &DriverError) -> RecordError {
         refusal.remedy = "take a weaker shock, or leave the efficiency out for the driver pressure of an ideal tube".to_string();
     }
     refusal
-}
-
-/// The refusal of a driver, with the options.
-pub(super) fn no_driver(error: &DriverError) -> RecordError {
-    let remedy = match error {
-        DriverError::TooFast { .. } | DriverError::PressureBeyondRange { .. } => {
-            "take a lighter driver gas, a hotter driver or a larger driver bore, or a weaker shock"
-        }
-        _ => "check gas, temperature and bore of the driver",
-    };
-    RecordError::new(ErrorKind::Value, "driver", "", format!("{error}"), remedy)
-}
-
-/// The species of a driver gas; none for one given by its heat capacity ratio.
-fn driver_portions(gas: &GasRecord) -> Result<Vec<Portion<'static>>, RecordError> {
-    let GasRecord::Mixture(components) = gas else { return Ok(Vec::new()) };
-    let portion = |component: &Component| {
-        let species = named(&component.species).ok_or_else(|| {
-            let wrong = format!("{} is not built in", component.species);
-            RecordError::new(
-                ErrorKind::Value,
-                "driver.gas",
-                "",
-                wrong,
-                "give species that are built in, or heat_capacity_ratio and molar_mass",
-            )
-        })?;
-        Ok(Portion { species, fraction: component.fraction })
-    };
-    components.iter().map(portion).collect()
-}
-
-/// The flag for a driver so dense that its gas is no ideal one.
-pub(super) fn dense_driver(record: &DriverRecord, pressure: f64) -> Option<Flag> {
-    let portions = driver_portions(record.gas.as_ref()?).ok()?;
-    let gas = ThermallyPerfectGas::new(&portions).ok()?;
-    let departure = departure_from_ideal(&gas, record.temperature.as_ref()?.value().to_f64(), pressure);
-    (departure.abs() > DEPARTURE).then(|| {
-        let text = format!(
-            "the driver gas departs from an ideal gas by {} % at p4 (second virial coefficient, estimated): p4 is off by about that",
-            significant(departure * 100.0, 2)
-        );
-        Flag::new("real-gas-driver", text)
-    })
-}
-
-/// A driver gas of constant heat capacity: as typed, the exact one of atoms, or that of the species at the temperature of the driver.
-fn driver_gas(gas: &GasRecord, temperature: Rational) -> Result<Gas, RecordError> {
-    let refused = |wrong: alloc::string::String| {
-        RecordError::new(ErrorKind::Value, "driver.gas", "", wrong, "give species that are built in, or heat_capacity_ratio and molar_mass")
-    };
-    let built = |ratio: Rational, mass: Rational| {
-        let ratio = HeatCapacityRatio::new(ratio).map_err(|error| refused(format!("{error}")))?;
-        Gas::new(ratio, mass).map_err(|error| refused(format!("{error}")))
-    };
-    if let Ok(constant) = gas.constant(HeatCapacityModel::Constant) {
-        return built(constant.heat_capacity_ratio, constant.molar_mass);
-    }
-    let portions = driver_portions(gas)?;
-    let mixture = ThermallyPerfectGas::new(&portions).map_err(|error| refused(format!("{error}")))?;
-    let c = mixture.heat_capacity_at(temperature.to_f64()).map_err(|error| refused(format!("{error}")))?.middle();
-    // γ to twelve digits: the driver is a model anyhow, and its γ must be an exact number.
-    let ratio = Rational::ratio(libm::rint(c / (c - 1.0) * 1e12) as u128, 1_000_000_000_000).unwrap_or(Rational::ONE);
-    built(ratio, Rational::from(mixture.molar_mass().nearest()))
 }

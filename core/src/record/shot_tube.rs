@@ -3,8 +3,8 @@
 use alloc::format;
 use alloc::vec::Vec;
 
+use super::driver::{no_driver, not_chosen, with_driver};
 use super::flag::Flag;
-use super::plan_tube::driver_of;
 use super::report::{Report, States};
 use super::shot::Shot;
 use super::uniform_time::{Found, Setting};
@@ -80,11 +80,11 @@ impl Shot {
     /// A shot was fired whatever its driver: what a plan refuses is a flag here.
     fn found(&self, behind: &BehindShock<'_>, states: &States, flags: &mut Vec<Flag>) -> Option<Found> {
         let record = self.driver.as_ref()?;
-        let found = driver_of(record, self.tube.as_ref()).and_then(|driver| {
-            let drive = driver.for_shock(behind).map_err(|error| super::plan_tube::no_driver(&error))?;
+        let found = with_driver(record, self.tube.as_ref(), |driver| {
+            let drive = driver.for_shock(behind).map_err(|error| no_driver(&error))?;
             let setting = Setting {
                 behind,
-                driver: &driver,
+                driver,
                 contact: &Contact::new(behind, &drive),
                 tube: self.tube.as_ref(),
                 reflected_pressure: states.reflected.pressure.value,
@@ -92,6 +92,9 @@ impl Shot {
             };
             setting.find(flags)
         });
+        if found.as_ref().is_ok_and(Option::is_some) {
+            flags.extend(not_chosen(record));
+        }
         found.unwrap_or_else(|error| {
             flags.push(Flag::new("no-test-time", format!("no uniform time: {} ({}); {}", error.wrong, error.path, error.remedy)));
             None

@@ -14,8 +14,8 @@ use super::plan_report::computed;
 use super::report::ReportQuantity;
 use crate::number::{Ball, Enclosure};
 use crate::tube::{
-    BehindShock, Contact, ContactReturn, Driver, Interaction, Lengths, Limit, Tailoring, TestTime, Tube, TubeInputError, WaveDiagram,
-    WaveName,
+    BehindShock, Contact, ContactReturn, Driver, DriverGas, Interaction, Lengths, Limit, Tailoring, TestTime, Tube, TubeInputError,
+    WaveDiagram, WaveName,
 };
 
 /// How long the state at the end wall lasts in an ideal tube, and what ends it.
@@ -90,16 +90,22 @@ impl Setting<'_> {
     pub fn find(&self, flags: &mut Vec<Flag>) -> Result<Option<Found>, RecordError> {
         let lengths = self.tube.and_then(|tube| Some((tube.driven_length.as_ref()?.value(), tube.driver_length.as_ref()?.value())));
         let Some((driven, driver_length)) = lengths else { return Ok(None) };
-        let speeds = match self.driver.speeds(self.behind) {
+        // The diagram knows the fan of a constant heat capacity only.
+        let follows_temperature = matches!(self.driver.gas(), DriverGas::Thermal(_));
+        let speeds = match self.driver.with_constant_heat_capacity().and_then(|driver| driver.speeds(self.behind)) {
             Ok(speeds) => speeds,
             Err(error) => {
                 flags.push(Flag::new("no-wave-diagram", format!("no wave diagram: {error}")));
                 return Ok(None);
             }
         };
+        if follows_temperature {
+            let text = "the expansion in the driver is drawn with the heat capacity at the temperature of the driver: the times that it ends are not proven";
+            flags.push(Flag::new("driver-expansion", text));
+        }
         let met = self.contact.interaction().ok();
         let contact = self.contact.contact_return().unwrap_or_else(|_| {
-            let text = "the wave that comes back from the contact surface is taken as a sound wave: the heat capacity of the test gas depends on temperature; a returned shock would be faster";
+            let text = "the wave that comes back from the contact surface is taken as a sound wave, since what comes back is not proven; a returned shock would be faster";
             flags.push(Flag::new("returned-wave", text));
             ContactReturn::Wave { speed: speeds.sound_speed_5 }
         });
@@ -129,7 +135,8 @@ impl Setting<'_> {
             })
         });
         // Through a contact surface that is only nearly at rest the digits of a tailored one prove nothing.
-        let figure = |time: TestTime| computed(time.duration.middle(), "s", Some(time.duration).filter(|_| weak.is_none()));
+        let is_proven = weak.is_none() && !follows_temperature;
+        let figure = |time: TestTime| computed(time.duration.middle(), "s", Some(time.duration).filter(|_| is_proven));
         let at_wall = timed.test_time(0.0).map_err(refused)?;
         let observed = self.tube.and_then(|tube| tube.observe.as_ref()).map(|place| {
             let time = timed.test_time(place.value()).map_err(refused)?;

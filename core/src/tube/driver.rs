@@ -5,7 +5,7 @@ use super::driver_point::{Expansion, Point, PointGas};
 use super::side::ContactSide;
 use super::test_gas::{BehindShock, TestGas};
 use super::waves::TubeSpeeds;
-use crate::gas::{Gamma, Gas, Parameter, Rule, ThermallyPerfectGas, sound_speed_squared};
+use crate::gas::{Gamma, Gas, HeatCapacityRatio, Parameter, Rule, ThermallyPerfectGas, sound_speed_squared};
 use crate::number::{Ball, Elementary, Enclosure, Known, Positive, Rational, Semifield};
 use crate::shock::{Entry, Output, State, ThermalShock};
 
@@ -144,6 +144,18 @@ impl<'a> Driver<'a> {
             gas.check_temperature(Parameter::Temperature, temperature.nominal())?;
         }
         Ok(Self { temperature, ..self })
+    }
+
+    /// The same driver with the heat capacity that its gas has at T4, and the area of the driven tube for a thermally perfect one.
+    ///
+    /// # Errors
+    /// [`DriverError::Gas`] for a heat capacity ratio outside what a gas may have.
+    pub fn with_constant_heat_capacity(&self) -> Result<Driver<'static>, DriverError> {
+        let gas = match self.gas {
+            DriverGas::Constant(gas) => gas,
+            DriverGas::Thermal(gas) => Gas::new(HeatCapacityRatio::new(self.heat_capacity_ratio())?, gas.molar_mass().enclosure())?,
+        };
+        Ok(Driver { gas: DriverGas::Constant(gas), temperature: self.temperature, area_ratio: self.area_ratio })
     }
 
     /// The same driver in a tube whose area is A4/A1 times that of the driven tube, 1 to 10⁶; for round tubes the square of the ratio of diameters.

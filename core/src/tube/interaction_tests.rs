@@ -6,7 +6,7 @@ use crate::shock::{Entry, ThermalFill};
 use crate::tube::pure_gases::{argon, gas, helium, hydrogen, nitrogen};
 use crate::tube::{BehindShock, Driver, TestGas};
 
-fn contact<'a>(fill: &'a Fill, driver: &Driver, excess: f64) -> Contact<'a> {
+fn contact<'a>(fill: &'a Fill, driver: &Driver<'a>, excess: f64) -> Contact<'a> {
     let behind: BehindShock<'a> = TestGas::from(fill).behind(Entry::MachExcess, excess).unwrap();
     Contact::new(&behind, &driver.for_shock(&behind).unwrap())
 }
