@@ -62,7 +62,7 @@ mod tests {
         for [(node, node_tail), (weight, weight_tail)] in RULE {
             let exactly = |head, tail| Ball::pair(f64::from_bits(head), f64::from_bits(tail), 0.0);
             let node = exactly(node, node_tail);
-            let step = Ball::from(libm::scalbn(node.nearest(), -96));
+            let step = Ball::from(libm::scalbn(node.nearest(), -92));
             let [below, above] = [node - step, node + step].map(|x| legendre(x)[0]);
             assert!(below.is_certainly_positive() != above.is_certainly_positive());
             assert!(below.is_certainly_negative() != above.is_certainly_negative());

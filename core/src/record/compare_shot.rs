@@ -59,7 +59,10 @@ pub(super) fn past_shot(plan: &Plan, wanted: &Wanted, shot: &Shot) -> Result<Pas
     let (ideal_mach, efficiency) = ideal.unzip();
     let counts = counts(shot, &departure, efficiency.as_ref(), &mut flags);
     // Tube and driver are used here, whatever a reduction says.
-    let used_here = |flag: &Flag| flag.code == "not-used" && (flag.text.starts_with("tube ") || flag.text.starts_with("driver "));
+    let used_here = |flag: &Flag| {
+        flag.code == "not-used"
+            && (flag.text.starts_with("tube ") || flag.text.starts_with("driver ") || flag.text.starts_with("driver.pressure "))
+    };
     let report_flags = report.flags.iter().filter(|flag| !used_here(flag)).cloned().collect();
     Ok(PastShot {
         name: shot.name.clone(),

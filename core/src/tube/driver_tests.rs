@@ -260,7 +260,7 @@ fn real_drivers_of_an_independent_calculation() {
         let met = Contact::new(&behind, &drive).interaction().unwrap();
         let found = [drive.state_3.temperature, drive.pressure_ratio, met.pressure, met.contact_speed, met.end_wall_pressure];
         for (own, answer) in found.into_iter().zip(answers) {
-            assert!(own.overlaps(Enclosure::from(exact(answer))) && own.width_in_ulp() <= 2, "{test_gas} {driver} {own:?} {answer}");
+            assert!(own.overlaps(Enclosure::from(exact(answer))) && own.width_in_ulp() <= 2, "{test_gas} {own:?} {answer}");
         }
     }
 }
@@ -274,7 +274,7 @@ fn a_driver_gas_is_not_taken_below_its_data() {
     let driver = Driver::thermally_perfect(&gas, 300.0).unwrap();
     let error = driver.for_shock(&test_gas.behind(Entry::Mach, 2.0).unwrap()).unwrap_err();
     let DriverError::ExpandsBeyondData { coldest: 200.0, gas_speed, limit, greatest_mach: Some(mach) } = error else { panic!("{error}") };
-    assert!(gas_speed > limit && mach > 1.2 && mach < 1.4, "{error}");
+    assert!(gas_speed > limit && mach > 1.69 && mach < 1.71, "{error}");
     // Up to there it works, and beyond it neither way gives a number.
     let near = driver.for_shock(&test_gas.behind(Entry::Mach, mach * (1.0 - 1e-9)).unwrap()).unwrap();
     assert!((near.state_3.temperature.middle() - 200.0).abs() < 1e-4);

@@ -23,7 +23,7 @@ const EFFICIENCY: [f64; 2] = [0.93, 0.02];
 pub struct Planner {
     gas: Gas,
     air: ThermallyPerfectGas<'static>,
-    driver: Driver,
+    driver: Driver<'static>,
     efficiency: Efficiency,
     wanted: Wanted,
 }
@@ -34,7 +34,7 @@ pub struct Told {
     fill_pressure: Enclosure,
     shock_speed: Enclosure,
     states: [State; 2],
-    drive: Drive,
+    drive: Drive<'static>,
     band: DriverPressureBand,
     /// `None` for a thermally perfect gas.
     met: Option<Interaction>,
