@@ -3,7 +3,7 @@
 use super::ball::Ball;
 
 /// Bound on the relative error of a node or a weight as it stands here: as far as the test proves it, which is far below [`remainder`].
-const ERROR: f64 = f64::from_bits((1023 - 74) << 52);
+const ERROR: f64 = f64::from_bits((1023 - 72) << 52);
 
 /// Positive nodes on [−1, 1] and their weights, which belong to the negative ones too.
 const RULE: [[(u64, u64); 2]; 6] = [

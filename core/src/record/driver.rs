@@ -108,3 +108,7 @@ fn driver_gas(gas: &GasRecord, temperature: Rational) -> Result<Gas, RecordError
     let ratio = Rational::ratio(libm::rint(c / (c - 1.0) * 1e12) as u128, 1_000_000_000_000).unwrap_or(Rational::ONE);
     built(ratio, Rational::from(mixture.molar_mass().nearest()))
 }
+
+#[cfg(test)]
+#[path = "driver_tests.rs"]
+mod tests;

@@ -98,17 +98,17 @@ impl Plan {
         self.driver_pressure(part, driver, &drive, gas, behind)?;
         part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
         let contact = Contact::new(behind, &drive);
-        let met = contact.interaction();
+        let met = contact.meet().ok();
         // In proportion to p5, of which the upper end counts.
-        let rise = met.as_ref().ok().map(|met| met.end_wall_pressure.high()).filter(|high| *high > p5.0);
+        let rise = met.map(|met| met.interaction().end_wall_pressure.high()).filter(|high| *high > p5.0);
         *over_tailored = rise.map(|high| high / p5.0 * p5.1);
-        if met.is_err() && contact.tailoring() != Tailoring::Expansion {
+        if met.is_none() && contact.tailoring() != Tailoring::Expansion {
             let text = "the contact surface is over-tailored: a shock comes back and raises the pressure at the end wall above p5 by an amount that is not proven, nor compared with a rating";
             part.flags.push(Flag::new("over-tailored-unchecked", text));
         }
         let disturbance = self.tolerance.disturbance.as_ref().map_or(0.0, |change| change.value().to_f64());
         let (tube, contact) = (self.tube.as_ref(), &contact);
-        Setting { behind, driver, contact, tube, reflected_pressure: p5.0, disturbance }.find(&mut part.flags)
+        Setting { behind, driver, contact, met: met.as_ref(), tube, reflected_pressure: p5.0, disturbance }.find(&mut part.flags)
     }
 
     fn driver_pressure(

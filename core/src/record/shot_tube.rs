@@ -82,10 +82,13 @@ impl Shot {
         let record = self.driver.as_ref()?;
         let found = with_driver(record, self.tube.as_ref(), |driver| {
             let drive = driver.for_shock(behind).map_err(|error| no_driver(&error))?;
+            let contact = Contact::new(behind, &drive);
+            let met = contact.meet().ok();
             let setting = Setting {
                 behind,
                 driver,
-                contact: &Contact::new(behind, &drive),
+                contact: &contact,
+                met: met.as_ref(),
                 tube: self.tube.as_ref(),
                 reflected_pressure: states.reflected.pressure.value,
                 disturbance: self.disturbance.as_ref().map_or(0.0, |change| change.value().to_f64()),

@@ -14,8 +14,8 @@ use super::plan_report::computed;
 use super::report::ReportQuantity;
 use crate::number::{Ball, Enclosure};
 use crate::tube::{
-    BehindShock, Contact, ContactReturn, Driver, DriverGas, Interaction, Lengths, Limit, Tailoring, TestTime, Tube, TubeInputError,
-    WaveDiagram, WaveName,
+    BehindShock, Contact, ContactReturn, ContactWaves, Driver, DriverGas, Interaction, Lengths, Limit, Tailoring, TestTime, Tube,
+    TubeInputError, WaveDiagram, WaveName,
 };
 
 /// How long the state at the end wall lasts in an ideal tube, and what ends it.
@@ -64,6 +64,8 @@ pub(super) struct Setting<'a> {
     pub behind: &'a BehindShock<'a>,
     pub driver: &'a Driver<'a>,
     pub contact: &'a Contact<'a>,
+    /// What follows there; `None` where it is not proven.
+    pub met: Option<&'a ContactWaves>,
     pub tube: Option<&'a TubeRecord>,
     /// p5, Pa.
     pub reflected_pressure: f64,
@@ -103,12 +105,15 @@ impl Setting<'_> {
             let text = "the expansion in the driver is drawn with the heat capacity at the temperature of the driver: the times that it ends are not proven";
             flags.push(Flag::new("driver-expansion", text));
         }
-        let met = self.contact.interaction().ok();
-        let contact = self.contact.contact_return().unwrap_or_else(|_| {
+        let met = self.met.map(ContactWaves::interaction);
+        let contact = self.met.map_or_else(
+            || {
             let text = "the wave that comes back from the contact surface is taken as a sound wave, since what comes back is not proven; a returned shock would be faster";
             flags.push(Flag::new("returned-wave", text));
             ContactReturn::Wave { speed: speeds.sound_speed_5 }
-        });
+            },
+            ContactWaves::contact_return,
+        );
         let lengths = Lengths { driven: Ball::from(driven), driver: Ball::from(driver_length) };
         let diagram = WaveDiagram::new(Tube { speeds, lengths, contact }).map_err(refused)?;
         let returned_speed = match contact {

@@ -81,13 +81,15 @@ impl Driver<'_> {
     /// ```
     pub fn pressure_for_mach(&self, gas: TestGas, mach: f64, efficiency: Efficiency) -> Result<DriverPressureBand, DriverError> {
         let Efficiency { value, standard_uncertainty } = efficiency;
-        let at = |efficiency: f64| Ok::<_, DriverError>(self.for_shock(&gas.behind(Entry::Mach, mach / efficiency)?)?.pressure.middle());
-        Ok(DriverPressureBand {
-            ideal_mach: mach / value,
-            low: at(value + standard_uncertainty)?,
-            pressure: at(value)?,
-            high: at(value - standard_uncertainty)?,
-        })
+        let at = |efficiency: f64| {
+            let ideal = mach / efficiency;
+            // The direct relations know no shock that is none.
+            let behind = if ideal > 1.0 { gas.behind_mach_excess(ideal - 1.0) } else { gas.behind(Entry::Mach, ideal) };
+            Ok::<_, DriverError>(self.for_shock(&behind?)?.pressure.middle())
+        };
+        let pressure = at(value)?;
+        let end = |change: f64| if change == 0.0 { Ok(pressure) } else { at(value + change) };
+        Ok(DriverPressureBand { ideal_mach: mach / value, low: end(standard_uncertainty)?, pressure, high: end(-standard_uncertainty)? })
     }
 }
 

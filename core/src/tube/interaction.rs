@@ -93,7 +93,7 @@ impl Meeting<'_> {
 }
 
 /// The fields of [`Interaction`] as balls.
-#[derive(Clone, Copy)]
+#[derive(Clone, Copy, Debug)]
 struct Waves {
     pressure: Ball,
     contact_speed: Ball,
@@ -105,35 +105,21 @@ struct Waves {
     end_wall_pressure: Ball,
 }
 
-impl Contact<'_> {
-    /// The kind of wave that comes back, and the waves with either kind where it cannot be told.
-    fn both(&self) -> Result<(Tailoring, [Waves; 2]), DriverError> {
-        let BehindShock { gas_speed, reflected_excess, .. } = self.behind;
-        let meeting = Meeting { side_5: self.behind.side_5(), side_3: self.side_3, gas_speed, reflected_excess };
-        let returned = self.tailoring();
-        let waves = |is_shock| self.after(&meeting, is_shock);
-        let [first, second] = match returned {
-            Tailoring::Shock => [waves(true)?; 2],
-            Tailoring::Expansion => [waves(false)?; 2],
-            // Too weak to tell: the answer is one of both.
-            Tailoring::Tailored => [waves(true)?, waves(false)?],
-        };
-        Ok((returned, [first, second]))
-    }
+/// What follows when the reflected shock meets the contact surface, in all its digits: see [`Contact::meet`].
+#[derive(Clone, Copy, Debug)]
+pub struct ContactWaves {
+    returned: Tailoring,
+    /// Where the kind of wave cannot be told, one of both is the answer.
+    either: [Waves; 2],
+}
 
-    /// The waves that follow when the reflected shock meets the contact surface: a shock into the driver gas, and what comes back.
-    ///
-    /// Pressure and speed are the same on both sides of the contact surface (a Riemann problem between state 3 and state 5). Model: a sharp contact
-    /// surface; in a thermally perfect gas every wave has the heat capacity of state 5, in equilibrium where that is.
-    ///
-    /// # Errors
-    /// [`DriverError::NotProven`] where tolerances are too wide, where a wave takes a thermally perfect gas outside its data, and where its temperature
-    /// comes so near a joint of the data that the jump of the enthalpy there matters.
-    pub fn interaction(&self) -> Result<Interaction, DriverError> {
-        let (returned, [first, second]) = self.both()?;
-        let hull = |field: fn(&Waves) -> Ball| field(&first).enclosure().hull(field(&second).enclosure());
-        Ok(Interaction {
-            returned,
+impl ContactWaves {
+    /// Pressures, speeds and Mach numbers.
+    pub fn interaction(&self) -> Interaction {
+        let [first, second] = &self.either;
+        let hull = |field: fn(&Waves) -> Ball| field(first).enclosure().hull(field(second).enclosure());
+        Interaction {
+            returned: self.returned,
             pressure: hull(|waves| waves.pressure),
             contact_speed: hull(|waves| waves.contact_speed),
             transmitted_mach: hull(|waves| waves.transmitted_mach),
@@ -142,26 +128,60 @@ impl Contact<'_> {
             returned_mach: hull(|waves| waves.returned_mach),
             returned_speed: hull(|waves| waves.returned_speed),
             end_wall_pressure: hull(|waves| waves.end_wall_pressure),
-        })
+        }
     }
 
-    /// The same for the wave diagram.
-    ///
-    /// # Errors
-    /// As for [`Contact::interaction`].
-    pub fn contact_return(&self) -> Result<ContactReturn, DriverError> {
-        let (returned, [first, second]) = self.both()?;
-        let both = |field: fn(&Waves) -> Ball| match returned {
-            Tailoring::Tailored => Ball::around(field(&first).enclosure().hull(field(&second).enclosure())),
-            _ => field(&first),
-        };
-        Ok(match returned {
+    /// What the wave diagram needs of it.
+    pub fn contact_return(&self) -> ContactReturn {
+        let [first, second] = &self.either;
+        let both = |field: fn(&Waves) -> Ball| Ball::around(field(first).enclosure().hull(field(second).enclosure()));
+        match self.returned {
             Tailoring::Tailored => ContactReturn::Tailored {
                 transmitted_shock: both(|waves| waves.transmitted_speed),
                 sound_speed: both(|waves| waves.transmitted_sound_speed),
             },
-            _ => ContactReturn::Wave { speed: both(|waves| waves.returned_speed) },
-        })
+            Tailoring::Expansion | Tailoring::Shock => ContactReturn::Wave { speed: first.returned_speed },
+        }
+    }
+}
+
+impl Contact<'_> {
+    /// The waves that follow when the reflected shock meets the contact surface: a shock into the driver gas, and what comes back.
+    ///
+    /// Pressure and speed are the same on both sides of the contact surface (a Riemann problem between state 3 and state 5). Model: a sharp contact
+    /// surface; in a thermally perfect gas every wave has the heat capacity of state 5, in equilibrium where that is.
+    ///
+    /// # Errors
+    /// [`DriverError::NotProven`] where tolerances are too wide, where a wave takes a thermally perfect gas outside its data, and where its temperature
+    /// comes so near a joint of the data that the jump of the enthalpy there matters.
+    pub fn meet(&self) -> Result<ContactWaves, DriverError> {
+        let BehindShock { gas_speed, reflected_excess, .. } = self.behind;
+        let meeting = Meeting { side_5: self.behind.side_5(), side_3: self.side_3, gas_speed, reflected_excess };
+        let returned = self.tailoring();
+        let waves = |is_shock| self.after(&meeting, is_shock);
+        let either = match returned {
+            Tailoring::Shock => [waves(true)?; 2],
+            Tailoring::Expansion => [waves(false)?; 2],
+            // Too weak to tell: the answer is one of both.
+            Tailoring::Tailored => [waves(true)?, waves(false)?],
+        };
+        Ok(ContactWaves { returned, either })
+    }
+
+    /// Pressures, speeds and Mach numbers of [`Contact::meet`].
+    ///
+    /// # Errors
+    /// As there.
+    pub fn interaction(&self) -> Result<Interaction, DriverError> {
+        self.meet().map(|waves| waves.interaction())
+    }
+
+    /// What the wave diagram needs of [`Contact::meet`].
+    ///
+    /// # Errors
+    /// As there.
+    pub fn contact_return(&self) -> Result<ContactReturn, DriverError> {
+        self.meet().map(|waves| waves.contact_return())
     }
 
     /// With a returned wave of this kind.

@@ -32,7 +32,7 @@ pub use driver_error::{DriverError, DriverInput, Unproven};
 pub use efficiency::{DriverPressureBand, Efficiency};
 pub use event::{Event, Wave, WaveName};
 pub use input::{TubeInput, TubeInputError};
-pub use interaction::Interaction;
+pub use interaction::{ContactWaves, Interaction};
 pub use load::{EndLoad, RatingCheck, StoredEnergy, check_rating, end_load, stored_energy};
 pub use test_gas::{BehindShock, TestGas};
 pub use test_time::{Limit, TestTime};

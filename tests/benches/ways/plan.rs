@@ -107,9 +107,10 @@ impl Planner {
         let gas: TestGas = behind.test_gas();
         let band = self.driver.pressure_for_mach(gas, behind.mach().nearest(), self.efficiency).expect("a driver pressure");
         let contact = Contact::new(behind, &drive);
-        let met = contact.interaction().ok();
+        let waves_there = contact.meet().ok();
+        let met = waves_there.map(|waves| waves.interaction());
         let speeds = self.driver.speeds(behind).expect("equal areas");
-        let returned = contact.contact_return().unwrap_or(ContactReturn::Wave { speed: speeds.sound_speed_5 });
+        let returned = waves_there.map_or(ContactReturn::Wave { speed: speeds.sound_speed_5 }, |waves| waves.contact_return());
         let [driven, driver] = LENGTHS.map(Ball::from);
         let diagram = WaveDiagram::new(Tube { speeds, lengths: Lengths { driven, driver }, contact: returned }).expect("a tube");
         let time = diagram.test_time(0.0).expect("a time");

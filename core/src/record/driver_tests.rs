@@ -1,0 +1,78 @@
+use super::super::Plan;
+use super::super::plan_report::PlanReport;
+use alloc::format;
+use alloc::string::{String, ToString};
+
+/// A plan for nitrogen (T5 1000 K: Mach 2.3) with a driver.
+fn plan(driver: &str, bore: &str) -> String {
+    format!(
+        r#"{{ "record": "plan/1", "gas": {{ "N2": "balance" }}, "heat_capacity": "equilibrium", "temperature": "295 K",
+        "target": {{ "temperature": "1000 K", "pressure": "200 kPa(a)" }}, "driver": {driver},
+        "tube": {{ "driven_length": "6 m", "driver_length": "3 m", "driven_bore": "80 mm", "driver_bore": "{bore}" }} }}"#
+    )
+}
+
+fn report(driver: &str) -> PlanReport {
+    Plan::read(plan(driver, "80 mm").as_bytes()).and_then(|plan| plan.report()).unwrap_or_else(|error| panic!("{error}"))
+}
+
+fn refusal(driver: &str, bore: &str) -> String {
+    Plan::read(plan(driver, bore).as_bytes()).and_then(|plan| plan.report()).unwrap_err().to_string()
+}
+
+fn flagged(report: &PlanReport, code: &str) -> bool {
+    report.flags.iter().any(|flag| flag.code == code)
+}
+
+#[test]
+fn a_hot_driver_follows_its_heat_capacity() {
+    let gas = r#""gas": { "N2": "balance" }, "temperature": "1500 K""#;
+    let own = report(&format!("{{ {gas}, \"heat_capacity\": \"equilibrium\" }}"));
+    let constant = report(&format!("{{ {gas}, \"heat_capacity\": \"constant\" }}"));
+    let silent = report(&format!("{{ {gas} }}"));
+    let p4 = |report: &PlanReport| report.fill.p4.clone().unwrap();
+    // γ rises as the gas expands, which costs less than half a per cent here.
+    let difference = p4(&own).value / p4(&constant).value - 1.0;
+    assert!(difference.abs() > 1e-5 && difference.abs() < 5e-3, "{difference}");
+    assert!(p4(&own).proven.is_some_and(|[low, high]| high > low && high / low - 1.0 < 1e-15));
+    // The fan is drawn with the heat capacity at T4, and says so.
+    assert!(flagged(&own, "driver-expansion") && !flagged(&constant, "driver-expansion"));
+    let (of_own, of_constant) = (own.test_time.unwrap(), constant.test_time.as_ref().unwrap());
+    assert!(of_own.end_wall.proven.is_none() && of_constant.end_wall.proven.is_some());
+    assert!((of_own.end_wall.value / of_constant.end_wall.value - 1.0).abs() < 0.02);
+    assert_eq!(p4(&silent), p4(&constant));
+    assert!(flagged(&silent, "driver-heat-capacity") && !flagged(&constant, "driver-heat-capacity"));
+    assert!(own.flags.iter().all(|flag| flag.code != "driver-heat-capacity" && flag.code != "returned-wave"));
+}
+
+#[test]
+fn atoms_need_no_choice() {
+    let helium = report(r#"{ "gas": { "He": "balance" }, "temperature": "295 K" }"#);
+    assert!(!flagged(&helium, "driver-heat-capacity"));
+    // Helium by its polynomial is the same gas.
+    let followed = report(r#"{ "gas": { "He": "balance" }, "temperature": "800 K", "heat_capacity": "equilibrium" }"#);
+    let constant = report(r#"{ "gas": { "He": "balance" }, "temperature": "800 K" }"#);
+    let [own, other] = [&followed, &constant].map(|report| report.fill.p4.as_ref().unwrap().value);
+    assert!((own / other - 1.0).abs() < 1e-9, "{own} {other}");
+}
+
+#[test]
+fn what_a_driver_cannot_follow_is_refused() {
+    let cold = r#"{ "gas": { "N2": "balance" }, "temperature": "295 K", "heat_capacity": "equilibrium" }"#;
+    let hot = cold.replace("295", "1500");
+    for (driver, bore, names) in [
+        (cold, "80 mm", ["known down to 200 K", "\"heat_capacity\": \"constant\""]),
+        (hot.as_str(), "100 mm", ["change of area", "\"heat_capacity\": \"constant\""]),
+        (&cold.replace("equilibrium", "frozen"), "80 mm", ["driver.heat_capacity", "\"constant\" or \"equilibrium\""]),
+        (
+            r#"{ "gas": { "heat_capacity_ratio": "7/5", "molar_mass": "28 g/mol" }, "temperature": "295 K", "heat_capacity": "equilibrium" }"#,
+            "80 mm",
+            ["driver.heat_capacity", "give species"],
+        ),
+    ] {
+        let error = refusal(driver, bore).to_string();
+        for name in names {
+            assert!(error.contains(name), "{name} is not in: {error}");
+        }
+    }
+}
