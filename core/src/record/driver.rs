@@ -41,6 +41,18 @@ pub(super) fn with_driver<T>(
     in_tube(Driver::thermally_perfect(&mixture, temperature).map_err(|error| no_driver(&error))?)
 }
 
+/// The name of the first gas of a driver of two, both with the heat capacity at T4, and T4 (K).
+pub(super) fn two_gases(record: &DriverRecord) -> Option<(String, [Gas; 2], Rational)> {
+    let Some(GasRecord::Mixture(components)) = &record.gas else { return None };
+    let [first, second] = &components[..] else { return None };
+    let temperature = record.temperature.as_ref()?.value();
+    let alone = |component: &Component| {
+        let pure = Component { fraction: Rational::ONE, balance: true, ..component.clone() };
+        driver_gas(&GasRecord::Mixture(alloc::vec![pure]), temperature).ok()
+    };
+    Some((first.species.clone(), [alone(first)?, alone(second)?], temperature))
+}
+
 /// Nothing is picked silently: the flag for a driver of molecules whose record does not choose its heat capacity.
 pub(super) fn not_chosen(record: &DriverRecord) -> Option<Flag> {
     let of_molecules = record.gas.as_ref().is_some_and(|gas| matches!(gas, GasRecord::Mixture(_)) && !gas.is_monatomic());

@@ -84,6 +84,7 @@ mod shot;
 mod shot_tube;
 mod species;
 mod station;
+mod tailoring;
 mod text;
 mod text_choices;
 mod time_text;
@@ -116,6 +117,7 @@ pub use report::{
 pub use shot::{Fill, Shot, Speed};
 pub use species::OwnSpecies;
 pub use station::Station;
+pub use tailoring::{PlannedTailoring, TailoredBlend};
 pub use uniform_time::{ObservedTime, ReturnedWave, UniformTime};
 pub use unit::{Dimension, Unit};
 pub use wall_layer::{LayerRange, LayerViscosity, WallLayer, WallLayerCriterion};

@@ -12,6 +12,7 @@ use super::flag::Flag;
 use super::plan::Plan;
 use super::plan_text;
 use super::report::{HeatCapacityChoice, Incident, MadeBy, Reflected, ReportQuantity, States};
+use super::tailoring::PlannedTailoring;
 use super::uniform_time::UniformTime;
 use super::wall_layer::{WallLayer, WallLayerCriterion};
 
@@ -76,6 +77,8 @@ pub struct PlanReport {
     pub heat_capacity: HeatCapacityChoice,
     /// Expected shock speed at the first station, m/s; `None` without attenuation and stations.
     pub first_station_speed: Option<f64>,
+    /// What the contact surface does with the reflected shock; `None` without a driver.
+    pub tailoring: Option<PlannedTailoring>,
     /// `None` without a driver and the lengths of the tube.
     pub test_time: Option<UniformTime>,
     /// What the boundary layer leaves of it; `None` without bore and length of the driven section, or without a viscosity.

@@ -145,6 +145,7 @@ fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
         rows.push(row(["Shock speed at the first station", &format!("{} m/s", significant(speed, 4))]));
     }
     let (layer, bifurcation) = (report.boundary_layer.as_ref(), report.bifurcation.as_ref());
+    rows.extend(report.tailoring.iter().flat_map(|tailoring| tailoring.rows(units)));
     rows.extend(time_text::rows(report.test_time.as_ref(), layer, bifurcation));
     if let Some(load) = report.end_load {
         rows.push(row([

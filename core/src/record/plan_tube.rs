@@ -14,6 +14,7 @@ use super::quantity::Quantity;
 use super::report::{ReportQuantity, States};
 use super::shot::Shot;
 use super::shot_tube::Layers;
+use super::tailoring::PlannedTailoring;
 use super::uniform_time::{Found, Setting, UniformTime};
 use crate::gas::HeatCapacityRatio;
 use crate::shock::Entry;
@@ -33,6 +34,7 @@ const BURST_SCATTER: f64 = 0.05;
 pub(super) struct TubePart {
     pub p4: Option<ReportQuantity>,
     pub p4_band: Option<[f64; 2]>,
+    pub tailoring: Option<PlannedTailoring>,
     pub time: Option<UniformTime>,
     pub layers: Layers,
     pub waves: Vec<PlannedWave>,
@@ -99,6 +101,7 @@ impl Plan {
         part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
         let contact = Contact::new(behind, &drive);
         let met = contact.meet().ok();
+        part.tailoring = Some(PlannedTailoring::new(record, driver, behind, &contact, met.as_ref()));
         // In proportion to p5, of which the upper end counts.
         let rise = met.map(|met| met.interaction().end_wall_pressure.high()).filter(|high| *high > p5.0);
         *over_tailored = rise.map(|high| high / p5.0 * p5.1);

@@ -164,6 +164,7 @@ impl Plan {
             step: report.step,
             heat_capacity: report.heat_capacity,
             first_station_speed,
+            tailoring: part.tailoring,
             test_time: part.time,
             boundary_layer: part.layers.boundary_layer,
             bifurcation: part.layers.bifurcation,

@@ -183,3 +183,23 @@ fn outside_the_data_nothing_is_said() {
     assert!(side.expanded_twice(Ball::from(-0.9)).is_none());
     assert!(side.speed(Dual::variable(Ball::from(-0.9), 0), false).value().radius().is_infinite());
 }
+
+#[test]
+fn weak_waves_come_back_from_a_nearly_tailored_contact_surface() {
+    let portions = pure(&table::N2);
+    let gas = ThermallyPerfectGas::new(&portions).unwrap();
+    let fill = ThermalFill::new(gas, HeatCapacityModel::Equilibrium, 10e3, 295.0).unwrap();
+    let test_gas = TestGas::from(&fill);
+    let driver = Driver::new(helium(), 295.0).unwrap();
+    let tailored = driver.tailored_mach(test_gas).unwrap().mach_excess.middle();
+    for off in [1e-4, 1e-6, 1e-8, 1e-10, 1e-12, 1e-14] {
+        for excess in [tailored * (1.0 - off), tailored * (1.0 + off)] {
+            let behind = test_gas.behind(Entry::MachExcess, excess).unwrap();
+            let contact = Contact::new(&behind, &driver.for_shock(&behind).unwrap());
+            let found = contact.interaction().unwrap_or_else(|error| panic!("{off} {error} {:?}", contact.mismatch()));
+            let change =
+                found.end_wall_pressure.middle() / behind.reflected_over_incident_pressure().nearest() / behind.pressure().nearest() - 1.0;
+            assert!(change.abs() < 3.0 * off, "{off} {change}");
+        }
+    }
+}
