@@ -109,9 +109,8 @@ impl HeatCapacity<Ball> {
                 };
                 let own = Problem { heat_capacity: self, range: to, start, rise }.solve::<I>(low, high);
                 let excess = if to == from { own } else { (start + start * own - temperature) / temperature };
-                if let Some(place) = places.next() {
-                    *place = Some(Change { excess, to });
-                }
+                let Some(place) = places.next() else { return [None; 2] };
+                *place = Some(Change { excess, to });
             }
             (low, below) = (high, above);
         }

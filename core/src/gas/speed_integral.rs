@@ -91,7 +91,7 @@ fn bound(a: &[Ball; 7], middle: Ball, half: Ball) -> Option<f64> {
     let centre = value(a, m);
     let (least, greatest) = (centre - sum - whole(1), centre + sum);
     let square = greatest * (greatest - whole(1)) / (m * rest);
-    let proven = rest.is_certainly_positive() && least.is_certainly_positive();
+    let proven = m.is_certainly_positive() && rest.is_certainly_positive() && least.is_certainly_positive();
     let bound = square.sqrt().magnitude();
     (proven && bound.is_finite()).then_some(bound)
 }

@@ -125,7 +125,7 @@ impl<'a> Comparison<'a> {
         };
         few(&mut report);
         scatter(&mut report);
-        report.ready = ready(&mut report);
+        report.ready = ready(&mut report, self.plan.tolerance.disturbance.as_ref().map(|typed| typed.typed().into()));
         self.tolerances(&mut report);
         report
     }
@@ -195,12 +195,15 @@ fn fill_uncertainty(spread: &Spread) -> Option<f64> {
 }
 
 /// What goes back into the plan, as the plan reads it: standard uncertainties. What a plan would refuse is left out with a flag.
-fn ready(report: &mut CompareReport) -> Ready {
+fn ready(report: &mut CompareReport, disturbance: Option<String>) -> Ready {
     let mut refused = Vec::new();
     let efficiency = report.efficiency.as_ref().and_then(|spread| {
         let mean = spread.mean.value;
         match spread.next.map(|next| next.max(LEAST)) {
-            None => Some(significant(mean, 4)),
+            None => {
+                refused.push("efficiency");
+                None
+            }
             Some(next) if next > LARGEST * mean => {
                 refused.push("efficiency");
                 None
@@ -228,10 +231,13 @@ fn ready(report: &mut CompareReport) -> Ready {
     let tolerance = ReadyTolerance {
         fill: tolerance("tolerance.fill", report.fill.as_ref().and_then(fill_uncertainty)),
         speed: tolerance("tolerance.speed", report.speed.as_ref().and_then(|spread| spread.standard_deviation)),
+        disturbance,
     };
     if !refused.is_empty() {
-        let text =
-            format!("no line for {}: a plan takes neither an uncertainty of a fifth nor an attenuation without one", refused.join(", "));
+        let text = format!(
+            "no line for {}: a plan takes no uncertainty of a fifth, and a value without one would take the band from it",
+            refused.join(", ")
+        );
         report.flags.push(Flag::new("not-ready", text));
     }
     Ready { efficiency, attenuation, tolerance }
@@ -242,7 +248,9 @@ impl Ready {
     pub(super) fn lines(&self) -> Vec<String> {
         let field = |name: &str, value: &Option<String>| value.as_ref().map(|value| format!("\"{name}\": \"{value}\""));
         let [fill, speed] = [field("fill", &self.tolerance.fill), field("speed", &self.tolerance.speed)];
-        let inside = fill.into_iter().chain(speed).collect::<Vec<_>>().join(", ");
+        // The line replaces the whole field, so that it holds what the shots say nothing about; alone that is nothing new.
+        let kept = field("disturbance", &self.tolerance.disturbance).filter(|_| fill.is_some() || speed.is_some());
+        let inside = fill.into_iter().chain(speed).chain(kept).collect::<Vec<_>>().join(", ");
         let tolerance = (!inside.is_empty()).then(|| format!("\"tolerance\": {{ {inside} }}"));
         [field("efficiency", &self.efficiency), field("attenuation", &self.attenuation), tolerance].into_iter().flatten().collect()
     }

@@ -125,6 +125,8 @@ pub struct ReadyTolerance {
     pub fill: Option<String>,
     /// `tolerance.speed`.
     pub speed: Option<String>,
+    /// `tolerance.disturbance`, as the plan has it.
+    pub disturbance: Option<String>,
 }
 
 /// Values to be put back into the plan, as text for its fields; `None` where these shots do not give one.

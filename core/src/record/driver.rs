@@ -5,15 +5,19 @@ use alloc::string::String;
 use alloc::vec::Vec;
 
 use super::check::DEPARTURE;
+use super::driven::AIR;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::format::significant;
 use super::gas::{Component, GasRecord};
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use crate::gas::species::named;
-use crate::gas::{Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas, departure_from_ideal};
+use crate::gas::{DRY_AIR, Gas, HeatCapacityModel, HeatCapacityRatio, Portion, ThermallyPerfectGas, departure_from_ideal};
 use crate::number::Rational;
 use crate::tube::{Driver, DriverError};
+
+/// Departure from the ideal gas above which a second virial coefficient says no more than that it is one (common practice, no source).
+const NO_GAS: f64 = 0.15;
 
 /// Calls a function with the driver of a record in a tube.
 pub(super) fn with_driver<T>(
@@ -29,6 +33,14 @@ pub(super) fn with_driver<T>(
     let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
     let bores = tube.and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
     let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
+    if let (Some([driver, driven]), Some(typed)) =
+        (bores.map(|(driver, driven)| [driver, driven].map(Rational::to_f64)), tube.and_then(|tube| tube.driver_bore.as_ref()))
+    {
+        if driver < driven {
+            let wrong = "a driver that is narrower than the driven section is another flow, which is not computed";
+            return Err(RecordError::new(ErrorKind::Value, "tube.driver_bore", typed.typed(), wrong, "check both bores"));
+        }
+    }
     let in_tube = |driver: Driver<'_>| match ratio {
         None => use_it(&driver),
         Some(ratio) => use_it(&driver.with_area_ratio(ratio).map_err(|error| no_driver(&error))?),
@@ -53,8 +65,19 @@ pub(super) fn two_gases(record: &DriverRecord) -> Option<(String, [Gas; 2], Rati
     Some((first.species.clone(), [alone(first)?, alone(second)?], temperature))
 }
 
+/// Flags for what is taken of a driver without being said: its heat capacity, the area of its tube.
+pub(super) fn assumed(record: &DriverRecord, tube: Option<&TubeRecord>) -> Vec<Flag> {
+    let one_bore = tube.filter(|tube| tube.driver_bore.is_some() != tube.driven_bore.is_some()).map(|_| {
+        Flag::new(
+            "one-bore",
+            "only one of tube.driver_bore and tube.driven_bore is given: driver and driven section are taken as equally wide",
+        )
+    });
+    not_chosen(record).into_iter().chain(one_bore).collect()
+}
+
 /// Nothing is picked silently: the flag for a driver of molecules whose record does not choose its heat capacity.
-pub(super) fn not_chosen(record: &DriverRecord) -> Option<Flag> {
+fn not_chosen(record: &DriverRecord) -> Option<Flag> {
     let of_molecules = record.gas.as_ref().is_some_and(|gas| matches!(gas, GasRecord::Mixture(_)) && !gas.is_monatomic());
     (of_molecules && record.heat_capacity.is_none()).then(|| {
         let text = "the record does not choose a heat capacity of the driver: it is taken as constant, that at the temperature of the driver; \"equilibrium\" follows the temperature down to where the data end";
@@ -83,11 +106,20 @@ pub(super) fn no_driver(error: &DriverError) -> RecordError {
 /// The species of a driver gas; none for one given by its heat capacity ratio.
 fn driver_portions(gas: &GasRecord) -> Result<Vec<Portion<'static>>, RecordError> {
     let GasRecord::Mixture(components) = gas else { return Ok(Vec::new()) };
-    let portion = |component: &Component| {
+    let mut portions = Vec::new();
+    for component in components {
+        if component.species == AIR {
+            for part in &DRY_AIR {
+                let fraction =
+                    part.fraction.checked_mul(component.fraction).ok_or_else(|| refused("the fractions have too many digits".into()))?;
+                portions.push(Portion { species: part.species, fraction });
+            }
+            continue;
+        }
         let species = named(&component.species).ok_or_else(|| refused(format!("{} is not built in", component.species)))?;
-        Ok(Portion { species, fraction: component.fraction })
-    };
-    components.iter().map(portion).collect()
+        portions.push(Portion { species, fraction: component.fraction });
+    }
+    Ok(portions)
 }
 
 /// The flag for a driver so dense that its gas is no ideal one.
@@ -97,8 +129,9 @@ pub(super) fn dense_driver(record: &DriverRecord, pressure: f64) -> Option<Flag>
     let departure = departure_from_ideal(&gas, record.temperature.as_ref()?.value().to_f64(), pressure);
     (departure.abs() > DEPARTURE).then(|| {
         let text = format!(
-            "the driver gas departs from an ideal gas by {} % at p4 (second virial coefficient, estimated): p4 is off by about that",
-            significant(departure * 100.0, 2)
+            "the driver gas departs from an ideal gas by {} % at p4 (second virial coefficient, estimated): {}",
+            significant(departure * 100.0, 2),
+            if departure.abs() > NO_GAS { "the p4 of an ideal gas does not hold" } else { "p4 is off by about that" }
         );
         Flag::new("real-gas-driver", text)
     })

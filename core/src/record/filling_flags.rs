@@ -12,6 +12,7 @@ use super::flag::Flag;
 use super::format::significant;
 use super::gas::GasRecord;
 use super::hazard;
+use super::optional::Driver;
 use super::plan::Plan;
 use crate::gas::{Condensation, condensation, molar_gas_constant, second_virial_coefficient};
 
@@ -39,6 +40,21 @@ impl Plan {
             self.condenses(&component.species, partial, &place)?;
         }
         Ok(())
+    }
+
+    /// Refuses a driver gas that condenses at this pressure (Pa); flags for what comes near.
+    pub(super) fn condensing_driver(&self, driver: &Driver, pressure: f64) -> Result<Vec<Flag>, RecordError> {
+        let (Some(GasRecord::Mixture(components)), Some(temperature)) = (&driver.gas, &driver.temperature) else { return Ok(Vec::new()) };
+        let place = Place {
+            name: "driver",
+            temperature: temperature.value().to_f64(),
+            remedy: "take another driver gas, a hotter driver or a weaker shock",
+        };
+        let mut flags = Vec::new();
+        for component in components {
+            flags.extend(self.condenses(&component.species, component.fraction.to_f64() * pressure, &place)?);
+        }
+        Ok(flags)
     }
 
     /// Everything that the reader must know of the steps.
@@ -114,7 +130,7 @@ impl Plan {
             Condensation::Above(limit) => limit,
         };
         if partial > limit {
-            let path = format!("gas.{species}");
+            let path = format!("{}gas.{species}", if place.name == "driver" { "driver." } else { "" });
             let typed = self.entries.iter().find(|entry| entry.path == path).map_or("", |entry| entry.typed.as_str());
             let wrong = format!(
                 "it would condense: its partial pressure in the {} is {}, its vapour pressure at {} K is {}",

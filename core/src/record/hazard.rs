@@ -26,11 +26,9 @@ pub(super) const CAUTIONS: [&str; 9] = [
     "For screening only: local codes, site rules and a licensed engineer decide. No number here authorises a shot.",
 ];
 
-/// The flag for a mixture that can burn, by itself or with a hydrogen driver. What a species of the record's own can do is not known.
+/// The flag for a mixture that can burn: the test gas, the driver gas, or both together. What a species of the record's own can do is not known.
 pub(super) fn can_burn(gas: &GasRecord, own: &[OwnSpecies], driver: Option<&Driver>) -> Option<Flag> {
-    let driver_gas = driver.and_then(|driver| driver.gas.as_ref());
-    let of_driver = driver_gas.and_then(|gas| find(gas, |species| matches!(species, "H2" | "D2" | "HD")));
-    let why = reason(gas, own, of_driver)?;
+    let why = reason(gas, own).or_else(|| with_driver(gas, own, driver?.gas.as_ref()?))?;
     let text = format!(
         "{why}. All pressures here, and every comparison with a rating, are for the unburnt gas; burning or detonation exceeds them several times"
     );
@@ -39,19 +37,36 @@ pub(super) fn can_burn(gas: &GasRecord, own: &[OwnSpecies], driver: Option<&Driv
 
 /// Why the mixture burns by itself; `None` where it does not.
 pub(super) fn mixture_can_burn(gas: &GasRecord, own: &[OwnSpecies]) -> Option<String> {
-    reason(gas, own, None)
+    reason(gas, own)
 }
 
-fn reason(gas: &GasRecord, own: &[OwnSpecies], of_driver: Option<&String>) -> Option<String> {
+fn reason(gas: &GasRecord, own: &[OwnSpecies]) -> Option<String> {
     let oxidiser = find(gas, is_oxidiser)?;
-    let fuel = find(gas, is_fuel);
-    let unknown = find(gas, |species| own.iter().any(|own| own.name == species));
-    match (fuel, of_driver, unknown) {
-        (Some(species), ..) => Some(format!("this mixture can burn: it holds {species} and {oxidiser}")),
-        (None, Some(species), _) => Some(format!("this mixture can burn: it holds {oxidiser} and the driver holds {species}")),
-        (None, None, Some(species)) => Some(format!("this mixture can burn if {species} is a fuel: it holds {oxidiser}")),
-        (None, None, None) => None,
+    match (find(gas, is_fuel), find(gas, |species| is_own(own, species))) {
+        (Some(species), _) => Some(format!("this mixture can burn: it holds {species} and {oxidiser}")),
+        (None, Some(species)) => Some(format!("this mixture can burn if {species} is a fuel: it holds {oxidiser}")),
+        (None, None) => None,
     }
+}
+
+/// Why the driver gas burns by itself, or with the test gas.
+fn with_driver(gas: &GasRecord, own: &[OwnSpecies], driver: &GasRecord) -> Option<String> {
+    if let (Some(fuel), Some(oxidiser)) = (find(driver, is_fuel), find(driver, is_oxidiser)) {
+        return Some(format!("the driver gas can burn by itself: it holds {fuel} and {oxidiser}"));
+    }
+    if let (Some(oxidiser), Some(fuel)) = (find(gas, is_oxidiser), find(driver, is_fuel)) {
+        return Some(format!("this mixture can burn: it holds {oxidiser} and the driver holds {fuel}"));
+    }
+    let oxidiser = find(driver, is_oxidiser)?;
+    match (find(gas, is_fuel), find(gas, |species| is_own(own, species))) {
+        (Some(fuel), _) => Some(format!("this mixture can burn: it holds {fuel} and the driver holds {oxidiser}")),
+        (None, Some(species)) => Some(format!("this mixture can burn if {species} is a fuel: the driver holds {oxidiser}")),
+        (None, None) => None,
+    }
+}
+
+fn is_own(own: &[OwnSpecies], species: &str) -> bool {
+    own.iter().any(|own| own.name == species)
 }
 
 fn find(gas: &GasRecord, wanted: impl Fn(&str) -> bool) -> Option<&String> {
@@ -92,6 +107,17 @@ mod tests {
             (r#"{ "CO": "1 %", "air": "balance" }"#, "", "it holds CO and air"),
             (r#"{ "NH3": "1 %", "N2O": "1 %", "Ar": "balance" }"#, "", "it holds NH3 and N2O"),
             (r#"{ "air": "balance" }"#, r#""driver": { "gas": { "H2": "balance" } },"#, "it holds air and the driver holds H2"),
+            (r#"{ "air": "balance" }"#, r#""driver": { "gas": { "CH4": "balance" } },"#, "it holds air and the driver holds CH4"),
+            (
+                r#"{ "H2": "50 %", "N2": "balance" }"#,
+                r#""driver": { "gas": { "O2": "20 %", "He": "balance" } },"#,
+                "it holds H2 and the driver holds O2",
+            ),
+            (
+                r#"{ "Ar": "balance" }"#,
+                r#""driver": { "gas": { "H2": "20 %", "O2": "10 %", "He": "balance" } },"#,
+                "the driver gas can burn by itself: it holds H2 and O2",
+            ),
             (r#"{ "heptane": "1 %", "air": "balance" }"#, OWN, "can burn if heptane is a fuel: it holds air"),
         ] {
             let text = caution(gas, rest).expect(gas);
@@ -103,6 +129,7 @@ mod tests {
             (r#"{ "CO2": "10 %", "O2": "balance" }"#, ""),
             (r#"{ "CH4": "0 %", "O2": "1 %", "Ar": "balance" }"#, ""),
             (r#"{ "heptane": "1 %", "Ar": "balance" }"#, OWN),
+            (r#"{ "CH4": "1 %", "Ar": "balance" }"#, r#""driver": { "gas": { "H2": "balance" } },"#),
         ] {
             assert_eq!(caution(gas, rest), None, "{gas}");
         }

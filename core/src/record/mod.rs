@@ -17,7 +17,7 @@
 //! # Plans, `plan/1`
 //!
 //! Needed: `record`, `gas`, `temperature` (of the fill) and `target`: `temperature` with `pressure`, or `step` with `fill_pressure`, or
-//! `reflected_overpressure` with `ambient`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`,
+//! `reflected_overpressure` with `ambient` or `fill_pressure`. Optional: `name`, `heat_capacity`, `species`, `driver` (`gas`, `temperature`,
 //! `heat_capacity`: `constant`, that at its temperature, or `equilibrium`), `tube` (`driven_length`,
 //! `driver_length`, `driven_bore`, `driver_bore`, `stations`, `observe`, `ratings` of `driven`, `driver`, `window`, `sensor`, `burst_pressure`), `attenuation`,
 //! `efficiency` (measured over ideal Mach number of past shots), `tolerance` (`fill`, `speed`: relative standard uncertainties of what this laboratory

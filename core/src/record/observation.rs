@@ -9,9 +9,13 @@ use super::unit::Dimension;
 
 /// `tube.observe`: a distance from the end wall inside the driven section.
 pub(super) fn observe(tube: Fields, driven_length: Option<&Quantity>, reading: &mut Reading) -> Result<Option<Quantity>, RecordError> {
-    let Some(place) = tube.quantity(reading, "observe", Dimension::Length)? else { return Ok(None) };
-    let refuse =
-        |wrong: &str, remedy: &str| Err(RecordError::new(ErrorKind::Value, &tube.path_of("observe"), place.typed(), wrong, remedy));
+    let place = tube.quantity(reading, "observe", Dimension::Length)?;
+    place.map(|place| inside(place, &tube.path_of("observe"), driven_length)).transpose()
+}
+
+/// A distance from the end wall that lies in the driven section.
+pub(super) fn inside(place: Quantity, path: &str, driven_length: Option<&Quantity>) -> Result<Quantity, RecordError> {
+    let refuse = |wrong: &str, remedy: &str| Err(RecordError::new(ErrorKind::Value, path, place.typed(), wrong, remedy));
     if place.value().is_negative() {
         return refuse("a distance from the end wall is not negative", "type its size, like \"20 mm\"");
     }
@@ -20,7 +24,7 @@ pub(super) fn observe(tube: Fields, driven_length: Option<&Quantity>, reading: &
             let wrong = format!("the driven section is only {} long", length.typed());
             refuse(&wrong, "type the distance from the end wall, like \"20 mm\"")
         }
-        _ => Ok(Some(place)),
+        _ => Ok(place),
     }
 }
 

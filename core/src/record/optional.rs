@@ -363,19 +363,23 @@ pub(super) fn tube(fields: Fields, ambient: Option<&Quantity>, reading: &mut Rea
     let driven_length = next();
     Ok(Some(Tube {
         observe: observation::observe(inner, driven_length.as_ref(), reading)?,
+        stations: tube_stations(inner, driven_length.as_ref(), reading)?,
         driven_length,
         driver_length: next(),
         driven_bore: next(),
         driver_bore: next(),
-        stations: tube_stations(inner, reading)?,
         ratings: ratings(inner, ambient, reading)?,
         burst_pressure: marked_pressure(inner, "burst_pressure", ambient, reading)?,
     }))
 }
 
-fn tube_stations(tube: Fields, reading: &mut Reading) -> Result<Vec<Quantity>, RecordError> {
+fn tube_stations(tube: Fields, driven_length: Option<&Quantity>, reading: &mut Reading) -> Result<Vec<Quantity>, RecordError> {
     let nodes = tube.list("stations")?.unwrap_or(&[]);
-    nodes.iter().enumerate().map(|(at, node)| read::quantity(reading, node, &format!("tube.stations[{at}]"), Dimension::Length)).collect()
+    let station = |(at, node)| {
+        let path = format!("tube.stations[{at}]");
+        observation::inside(read::quantity(reading, node, &path, Dimension::Length)?, &path, driven_length)
+    };
+    nodes.iter().enumerate().map(station).collect()
 }
 
 fn ratings(tube: Fields, ambient: Option<&Quantity>, reading: &mut Reading) -> Result<Vec<Rating>, RecordError> {

@@ -39,6 +39,17 @@ pub enum Target {
     },
 }
 
+impl Target {
+    /// Whether a quantity that is wanted was typed with an uncertainty.
+    fn is_uncertain(&self) -> bool {
+        let wanted = match self {
+            Self::State { temperature, pressure } => [Some(temperature), Some(&pressure.0)],
+            Self::Step { step, .. } => [Some(step), None],
+        };
+        wanted.into_iter().flatten().any(|quantity| quantity.standard_uncertainty().is_some())
+    }
+}
+
 /// How well this laboratory meets what it sets, as relative standard uncertainties, and what it takes for a disturbance.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Tolerance {
@@ -148,6 +159,14 @@ impl Plan {
         let tolerance = tolerance(fields, &mut reading)?;
         let filling = filling::read(fields, &gas, ambient.as_ref(), &mut reading)?;
         optional::free_text(fields)?;
+        if let Some(pressure) = driver.as_ref().and_then(|driver| driver.pressure.as_ref()) {
+            let text = format!("driver.pressure ({}) is recorded but not used: a plan says what p4 is needed", pressure.0.typed());
+            flags.push(Flag::new("not-used", text));
+        }
+        if target.is_uncertain() {
+            let text = "an uncertainty of the target is not used: what is wanted is exact; how well it is met follows from \"tolerance\" and the uncertainties of fill and gas";
+            flags.push(Flag::new("target-exact", text));
+        }
         if let Some(flag) = hazard::can_burn(&gas, &species, driver.as_ref()) {
             flags.insert(0, flag);
         }

@@ -149,7 +149,7 @@ fn expected(page: &mut Page, report: &PlanReport, units: DisplayUnits) {
     rows.extend(time_text::rows(report.test_time.as_ref(), layer, bifurcation));
     if let Some(load) = report.end_load {
         rows.push(row([
-            "Load on the end wall at the upper end of p5",
+            "Greatest load on the end wall (upper end of p5, or a returned shock)",
             &format!("{} kN at rest; suddenly applied it can act as twice that", significant(load / 1e3, 3)),
         ]));
     }

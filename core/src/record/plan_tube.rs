@@ -4,7 +4,7 @@ use alloc::format;
 use alloc::string::ToString;
 use alloc::vec::Vec;
 
-use super::driver::{dense_driver, no_driver, not_chosen, with_driver};
+use super::driver::{assumed, dense_driver, no_driver, with_driver};
 use super::error::RecordError;
 use super::flag::Flag;
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
@@ -28,6 +28,9 @@ const CURVE: u32 = 24;
 
 /// Scatter of the pressure at which a diaphragm bursts, where the record states none (common practice, no source).
 const BURST_SCATTER: f64 = 0.05;
+
+/// Standard atmosphere, Pa (ISO 2533:1975, from memory).
+const STANDARD_ATMOSPHERE: f64 = 101_325.0;
 
 /// What is found.
 #[derive(Default)]
@@ -73,7 +76,7 @@ impl Plan {
                 self.driven(&mut part, &mut over_tailored, record, driver, (gas, &behind), p5)
             })?;
             part.waves = found.as_ref().map_or(Vec::new(), |found| waves(&found.diagram));
-            part.flags.extend(not_chosen(record));
+            part.flags.extend(assumed(record, self.tube.as_ref()));
         }
         part.layers = shot.layers(&behind, states, found.as_ref(), &mut part.flags);
         part.time = found.map(|found| found.time);
@@ -98,6 +101,8 @@ impl Plan {
     ) -> Result<Option<Found>, RecordError> {
         let drive = driver.for_shock(behind).map_err(|error| no_driver(&error))?;
         self.driver_pressure(part, driver, &drive, gas, behind)?;
+        let upper = part.p4_band.map(|[_, high]| high).or(part.p4.as_ref().map(|p4| p4.value));
+        part.flags.extend(upper.map_or(Ok(Vec::new()), |p4| self.condensing_driver(record, p4))?);
         part.flags.extend(part.p4.as_ref().and_then(|p4| dense_driver(record, p4.value)));
         let contact = Contact::new(behind, &drive);
         let met = contact.meet().ok();
@@ -106,7 +111,7 @@ impl Plan {
         let rise = met.map(|met| met.interaction().end_wall_pressure.high()).filter(|high| *high > p5.0);
         *over_tailored = rise.map(|high| high / p5.0 * p5.1);
         if met.is_none() && contact.tailoring() != Tailoring::Expansion {
-            let text = "the contact surface is over-tailored: a shock comes back and raises the pressure at the end wall above p5 by an amount that is not proven, nor compared with a rating";
+            let text = "the contact surface is over-tailored: a shock comes back and raises the pressure at the end wall above p5 by an amount that is not computed, nor compared with a rating";
             part.flags.push(Flag::new("over-tailored-unchecked", text));
         }
         let disturbance = self.tolerance.disturbance.as_ref().map_or(0.0, |change| change.value().to_f64());
@@ -138,7 +143,12 @@ impl Plan {
     }
 
     fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads) {
-        let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map_or(101_325.0, |ambient| ambient.value.to_f64());
+        let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map(|ambient| ambient.value.to_f64());
+        if ambient.is_none() && tube.driven_bore.is_some() {
+            let text = "no ambient pressure is given: end load and stored energy are those against 101.325 kPa";
+            part.flags.push(Flag::new("ambient-assumed", text));
+        }
+        let ambient = ambient.unwrap_or(STANDARD_ATMOSPHERE);
         if let Some(bore) = &tube.driven_bore {
             let worst = loads.over_tailored.map_or(loads.reflected, |pressure| pressure.max(loads.reflected));
             part.end_load = end_load(worst, ambient, bore.value()).ok().map(|load| load.steady.high());
@@ -162,7 +172,7 @@ impl Plan {
             if rating.part == "driver" {
                 if let Some((_, p4)) = loads.driver {
                     let of = if self.efficiency.is_some() { "p4" } else { "p4 of an ideal tube" };
-                    line(&format!("{of}, also where the diaphragm does not burst"), p4);
+                    line(&format!("{of}{gas}, also where the diaphragm does not burst"), p4);
                 }
                 if let Some((_, [_, high])) = burst {
                     line("burst pressure of the diaphragm", high);

@@ -153,7 +153,7 @@ impl Plan {
         }
         flags.extend(part.flags);
         flags.extend(report.flags.iter().cloned());
-        flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube")));
+        flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube is recorded")));
         Ok(PlanReport {
             limits: part.limits,
             fill: PlannedFill { p1, p4: part.p4, p4_band: part.p4_band },

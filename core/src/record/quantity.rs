@@ -182,7 +182,7 @@ impl Quantity {
         self.uncertainty.and_then(|u| u.degrees_of_freedom)
     }
 
-    /// The absolute pressure: the value itself, or gauge plus ambient, exactly, with the uncertainties added in quadrature.
+    /// The absolute pressure: the value itself, or gauge plus ambient, exactly, with the uncertainties added in quadrature if the gauge value states one.
     /// `None` if a gauge pressure meets no ambient pressure, or 128-bit integers do not hold the sum.
     ///
     /// ```
@@ -198,10 +198,8 @@ impl Quantity {
             return Some(Absolute { value: self.value, standard_uncertainty: self.standard_uncertainty() });
         }
         let ambient = ambient?;
-        let standard_uncertainty = match (self.standard_uncertainty(), ambient.standard_uncertainty()) {
-            (Some(a), Some(b)) => Some(libm::hypot(a, b)),
-            (one, other) => one.or(other),
-        };
+        // That of the ambient pressure alone does not say how well the gauge was read.
+        let standard_uncertainty = self.standard_uncertainty().map(|own| libm::hypot(own, ambient.standard_uncertainty().unwrap_or(0.0)));
         Some(Absolute { value: self.value.checked_add(ambient.value)?, standard_uncertainty })
     }
 }

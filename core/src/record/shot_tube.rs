@@ -3,7 +3,7 @@
 use alloc::format;
 use alloc::vec::Vec;
 
-use super::driver::{no_driver, not_chosen, with_driver};
+use super::driver::{assumed, no_driver, with_driver};
 use super::flag::Flag;
 use super::report::{Report, States};
 use super::shot::Shot;
@@ -96,7 +96,7 @@ impl Shot {
             setting.find(flags)
         });
         if found.as_ref().is_ok_and(Option::is_some) {
-            flags.extend(not_chosen(record));
+            flags.extend(assumed(record, self.tube.as_ref()));
         }
         found.unwrap_or_else(|error| {
             flags.push(Flag::new("no-test-time", format!("no uniform time: {} ({}); {}", error.wrong, error.path, error.remedy)));

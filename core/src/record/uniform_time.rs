@@ -12,7 +12,7 @@ use super::format::significant;
 use super::optional::Tube as TubeRecord;
 use super::plan_report::computed;
 use super::report::ReportQuantity;
-use crate::number::{Ball, Enclosure};
+use crate::number::{Ball, Enclosure, Rational};
 use crate::tube::{
     BehindShock, Contact, ContactReturn, ContactWaves, Driver, DriverGas, Interaction, Lengths, Limit, Tailoring, TestTime, Tube,
     TubeInputError, WaveDiagram, WaveName,
@@ -97,18 +97,23 @@ impl Setting<'_> {
         let speeds = match self.driver.with_constant_heat_capacity().and_then(|driver| driver.speeds(self.behind)) {
             Ok(speeds) => speeds,
             Err(error) => {
-                flags.push(Flag::new("no-wave-diagram", format!("no wave diagram: {error}")));
+                let why = if self.driver.area_ratio().exact() == Some(Rational::ONE) {
+                    format!("{error}")
+                } else {
+                    "it is drawn for a driver as wide as the driven section only".to_string()
+                };
+                flags.push(Flag::new("no-wave-diagram", format!("no wave diagram and no uniform time: {why}")));
                 return Ok(None);
             }
         };
         if follows_temperature {
-            let text = "the expansion in the driver is drawn with the heat capacity at the temperature of the driver: the times that it ends are not proven";
+            let text = "the expansion in the driver is drawn with the heat capacity at the temperature of the driver: the times that it ends are approximate";
             flags.push(Flag::new("driver-expansion", text));
         }
         let met = self.met.map(ContactWaves::interaction);
         let contact = self.met.map_or_else(
             || {
-            let text = "the wave that comes back from the contact surface is taken as a sound wave, since what comes back is not proven; a returned shock would be faster";
+            let text = "the wave that comes back from the contact surface is taken as a sound wave, since its strength is not computed; a returned shock would be faster";
             flags.push(Flag::new("returned-wave", text));
             ContactReturn::Wave { speed: speeds.sound_speed_5 }
             },

@@ -116,11 +116,7 @@ impl<'a> BehindShock<'a> {
 
     fn of_thermal(gas: TestGas<'a>, shock: &ThermalShock) -> Self {
         // At a point the ball has more digits than the enclosure; for a tolerance, or for two answers at a joint, only the enclosure holds all.
-        Self::new(gas, |output| {
-            let (ball, bounds) = (shock.ball(output), shock.output(output));
-            let own = ball.enclosure();
-            if own.encloses(bounds) && own.width_in_ulp() <= 2 { ball } else { Ball::around(bounds) }
-        })
+        Self::new(gas, |output| if shock.is_single() { shock.ball(output) } else { Ball::around(shock.output(output)) })
     }
 
     fn new(gas: TestGas<'a>, ball: impl Fn(Output) -> Ball) -> Self {

@@ -28,12 +28,14 @@ impl<'a> ThermalSide<'a> {
     /// The gas at a temperature, with its full heat capacity.
     pub fn new(gas: &'a ThermallyPerfectGas<'_>, temperature: Ball) -> Self {
         let heat_capacity = gas.heat_capacity();
-        Self {
-            heat_capacity,
-            temperature,
-            range: heat_capacity.index_at(temperature.side()),
-            gas_constant: molar_gas_constant::<Ball>() / gas.molar_mass(),
-        }
+        let gas_constant = molar_gas_constant::<Ball>() / gas.molar_mass();
+        Self { heat_capacity, temperature, range: heat_capacity.index_at(temperature.side()), gas_constant }.in_range()
+    }
+
+    /// With an unknown temperature if it is not proven to lie in its range: no one polynomial is that of the gas then.
+    fn in_range(self) -> Self {
+        let is_proven = self.heat_capacity.within_ends(self.range, self.temperature.enclosure()) == [true, true];
+        if is_proven { self } else { Self { temperature: Ball::UNKNOWN, ..self } }
     }
 
     /// T, K.
@@ -43,7 +45,7 @@ impl<'a> ThermalSide<'a> {
 
     /// The same with another ball for the temperature, in the same range.
     pub fn with_temperature(self, temperature: Ball) -> Self {
-        Self { temperature, ..self }
+        Self { temperature, ..self }.in_range()
     }
 
     /// `c_p`/R at T.

@@ -66,7 +66,7 @@ fn the_json_object_has_these_keys() {
         ("/shots/0/efficiency", &["coverage_factor", "expanded", "standard_uncertainty", "unit", "value"]),
         ("/efficiency", &["degrees_of_freedom", "mean", "next", "shots", "standard_deviation", "stated"]),
         ("/ready", &["attenuation", "efficiency", "tolerance"]),
-        ("/ready/tolerance", &["fill", "speed"]),
+        ("/ready/tolerance", &["disturbance", "fill", "speed"]),
         ("/flags/0", &["code", "text"]),
         ("/made_by", &["gas_data", "input_digest", "seed", "version"]),
     ] {

@@ -29,8 +29,7 @@ pub struct ThermalFlow<S> {
     /// u2 − V.
     closing_speed: S,
     wall_speed: S,
-    /// The range of T2 in the incident heat capacity.
-    second: usize,
+    ranges: Ranges,
     reflection: Reflection<S>,
     /// 1 − ρ2/ρ5: negative for an expansion.
     reflected_compression: S,
@@ -56,7 +55,7 @@ enum Reflection<S> {
 }
 
 /// Where the temperature behind each shock lies: ranges of the incident and of the reflected heat capacity.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub(super) struct Ranges {
     /// Of T1, in the incident heat capacity.
     pub first: usize,
@@ -141,7 +140,7 @@ impl<S: Elementary> ThermalFlow<S> {
             excess,
             closing_speed,
             wall_speed: setting.wall_speed,
-            second: ranges.second,
+            ranges,
             reflection: Reflection::Shock { k: reflected.k, mean: reflected_mean, lag_ratio: reflected.lag / reflected_compression },
             reflected_compression,
             reflected_excess,
@@ -261,10 +260,10 @@ impl ThermalFlow<Ball> {
         let temperature = self.temperature + self.temperature * self.excess;
         // √(R/W), with which the integral is a speed.
         let unit = (self.scale / self.temperature).sqrt();
-        let changes = heat_capacity.changed_by::<Speed>(self.second, temperature, closing_speed / unit);
+        let changes = heat_capacity.changed_by::<Speed>(self.ranges.second, temperature, closing_speed / unit);
         changes.map(|change| {
             let Change { excess, to } = change?;
-            let logarithm = heat_capacity.entropy_rise(self.second, temperature, excess, to);
+            let logarithm = heat_capacity.entropy_rise(self.ranges.second, temperature, excess, to);
             let pressure_excess = logarithm * logarithm.expm1_ratio();
             let [c1, c2, _] = self.heat_capacity;
             Some(Self {
@@ -280,9 +279,14 @@ impl ThermalFlow<Ball> {
         })
     }
 
-    /// The range of T2 in the incident heat capacity.
-    pub(super) fn second(&self) -> usize {
-        self.second
+    /// The ranges whose polynomials gave it.
+    pub(super) fn ranges(&self) -> Ranges {
+        self.ranges
+    }
+
+    /// Both compressions, without proof.
+    pub(super) fn compressions(&self) -> [f64; 2] {
+        [self.compression.nearest(), self.reflected_compression.nearest()]
     }
 
     /// Whether an expansion runs back.

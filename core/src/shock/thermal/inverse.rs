@@ -2,8 +2,8 @@
 
 use super::ThermalError;
 use super::certify::Problem;
-use super::flow::reflected_stage;
-use super::plain::{PlainRoots, PlainShock};
+use super::flow::{ThermalFlow, reflected_stage};
+use super::plain::PlainShock;
 use super::setting::Setting;
 use super::shock::{Flows, hull, solve};
 use super::slopes::flow_with_slopes;
@@ -17,7 +17,7 @@ const EXCESS: (f64, f64) = (1e-12, 1e3);
 /// Plain steps, at most.
 const SEARCH: u32 = 120;
 /// Newton steps with proof, at most.
-const STEPS: u32 = 6;
+const STEPS: u32 = 10;
 /// M − 1 is wanted this well, relative.
 const NARROW: f64 = 1e-21;
 
@@ -66,22 +66,30 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball, flows:
         let at = Ball::from(e);
         let stage = setting.at_mach_excess(at);
         let steps = solve(setting, &stage, parameter, value.nearest(), flows)?;
-        let here = match flows {
-            [Some(flow), None, ..] => flow.evaluate(output),
-            _ => Ball::around(hull(flows, |flow| flow.evaluate(output))),
-        };
         let around = at.widened(reach);
-        let slope = slope_over(setting, &plain, first, output, at, around);
-        let found = slope.map(|slope| at - (here - target) / slope);
-        let Some(found) = found else {
+        // The Newton step of each solution; of several, beside a joint, one leads to the answer.
+        let step_of = |flow: &ThermalFlow<Ball>| {
+            let slope = slope_over(setting, first, output, around, flow);
+            slope.map_or(Ball::UNKNOWN, |slope| at - (flow.evaluate(output) - target) / slope)
+        };
+        let found = match flows {
+            [Some(flow), None, ..] => step_of(flow),
+            _ => Ball::around(hull(flows, step_of)),
+        };
+        let Some(found) = Some(found).filter(|found| found.radius().is_finite()) else {
             // Too wide an interval for the shocks to be solved over it.
             reach /= 16.0;
             continue;
         };
         if around.enclosure().encloses_strictly(found.enclosure()) {
             if found.radius() <= NARROW * e || flows.iter().flatten().count() > 1 {
+                let ranges = |flows: &Flows| flows.map(|flow| flow.map(|flow| flow.ranges()));
+                let used = ranges(flows);
                 solve(setting, &setting.at_mach_excess(found), parameter, value.nearest(), flows)?;
-                return Ok(steps);
+                // A polynomial that led across its joint did not lead to the answer.
+                if ranges(flows) == used {
+                    return Ok(steps);
+                }
             }
             reach = 2.0 * ((found.nearest() - e).abs() + found.radius());
         } else {
@@ -96,11 +104,9 @@ pub(super) fn inverse(setting: &Setting<Ball>, entry: Entry, value: Ball, flows:
     Err(ThermalError::Existence { temperature: plain.temperature })
 }
 
-/// An enclosure of d(output)/d(M − 1) over an interval of M − 1.
-fn slope_over(setting: &Setting<Ball>, plain: &Setting<f64>, first: usize, output: Output, at: Ball, around: Ball) -> Option<Ball> {
-    let shock = PlainRoots::new(plain, &plain.at_mach_excess(at.nearest()))?;
-    let [approximate, reflected] = shock.compressions();
-    let ranges = shock.ranges;
+/// An enclosure of d(output)/d(M − 1) over an interval of M − 1, with the polynomials of a solution in its middle.
+fn slope_over(setting: &Setting<Ball>, first: usize, output: Output, around: Ball, flow: &ThermalFlow<Ball>) -> Option<Ball> {
+    let ([approximate, reflected], ranges) = (flow.compressions(), flow.ranges());
     let stage = setting.at_mach_excess(around);
     let incident = Problem { stage, heat_capacity: &setting.incident, from: first, temperature: setting.temperature };
     let compression = incident.newton(approximate, ranges.second)?.compression;
@@ -141,3 +147,7 @@ fn search(plain: &Setting<f64>, output: Output, target: f64) -> Option<f64> {
     let reached = f_low.is_some() && f_high.is_some();
     reached.then(|| libm::exp(low + (high - low) / 2.0))
 }
+
+#[cfg(test)]
+#[path = "inverse_tests.rs"]
+mod tests;

@@ -228,11 +228,11 @@ impl<'a> ThermalShock<'a> {
         self.exact_for_wall()?;
         exact(Parameter::WallSpeed, wall_speed)?;
         let velocity = wall_speed.ball();
-        let closing_speed = self.flows.iter().flatten().next().map_or(Ball::UNKNOWN, |flow| flow.closing_speed_to(velocity));
-        if closing_speed.is_certainly_positive() {
+        let mut closing_speeds = self.flows.iter().flatten().map(|flow| flow.closing_speed_to(velocity));
+        if closing_speeds.clone().all(Ball::is_certainly_positive) {
             return self.at_wall(velocity);
         }
-        if !closing_speed.is_certainly_negative() {
+        if !closing_speeds.all(Ball::is_certainly_negative) {
             return Err(refuse(Rule::Below(self.output(Output::GasSpeed2).low())));
         }
         let setting = self.fill.setting(velocity);
@@ -241,19 +241,20 @@ impl<'a> ThermalShock<'a> {
         let mut last = None;
         for flow in self.flows.iter().flatten() {
             // Flows that differ in their reflection only have the same state 2.
-            if last == Some(flow.second()) {
+            if last == Some(flow.ranges().second) {
                 continue;
             }
-            last = Some(flow.second());
-            for expanded in flow.expanded(&setting.incident, velocity).into_iter().flatten() {
+            last = Some(flow.ranges().second);
+            let expanded = flow.expanded(&setting.incident, velocity);
+            if expanded.iter().all(Option::is_none) {
+                let (low, high) = setting.incident.range();
+                return Err(refuse(Rule::HeatsBeyondData(low, high)));
+            }
+            for expanded in expanded.into_iter().flatten() {
                 if let Some(place) = places.next() {
                     *place = Some(expanded);
                 }
             }
-        }
-        if flows.iter().all(Option::is_none) {
-            let (low, high) = setting.incident.range();
-            return Err(refuse(Rule::HeatsBeyondData(low, high)));
         }
         Ok(Self { wall_speed: velocity, flows, ..*self })
     }
@@ -266,6 +267,11 @@ impl<'a> ThermalShock<'a> {
         let mut reflected = Self { wall_speed, ..*self };
         reflected.steps = solve(&setting, &incident, self.entry.parameter(), self.value.nominal(), &mut reflected.flows)?;
         Ok(reflected)
+    }
+
+    /// Whether it is one solution for exact inputs, whose balls say all that is known.
+    pub(crate) fn is_single(&self) -> bool {
+        !self.is_box && self.flows.iter().flatten().count() == 1
     }
 
     /// What runs back from the wall.

@@ -2,7 +2,7 @@
 
 use endwall::number::{Enclosure, Semifield};
 use endwall::record::{Flag, HeatCapacityChoice, Incident, Reflected, Report, ReportQuantity, ReportState, States};
-use endwall::shock::{Output, WallReflection};
+use endwall::shock::{Output, WallReflection, Wave};
 use serde::Serialize;
 
 use super::input::Input;
@@ -98,7 +98,7 @@ impl Answer {
                 Some(wall) => middle((wall.state.pressure - fill.pressure) / shock.output(Output::PressureRise), "1"),
                 None => output(Output::ReflectionCoefficient, "1"),
             },
-            flags: flags(input, report.as_ref()),
+            flags: flags(input, report.as_ref(), shock),
             heat_capacity: report.filter(|_| !input.has_range()).map_or_else(
                 || HeatCapacityChoice { chosen: input.shot.heat_capacity.name(), beside: Vec::new(), relaxation: Vec::new() },
                 |report| report.heat_capacity,
@@ -117,7 +117,7 @@ impl Answer {
 const OF_MODEL: [&str; 6] = ["constant-heat-capacity", "ionisation", "dissociation", "relaxation-shortened", "real-gas", "wall-moves"];
 
 /// The flags of the record, and those of its model at the shock speed.
-fn flags(input: &Input, report: Option<&Report>) -> Vec<Flag> {
+fn flags(input: &Input, report: Option<&Report>, shock: &Shock<'_>) -> Vec<Flag> {
     let own = |flag: &&Flag| flag.code != "missing-uncertainty";
     // A record is not what was typed, and beside a range nothing stands.
     let beside = if input.has_range() { "" } else { "; the other choices stand beside" };
@@ -126,7 +126,13 @@ fn flags(input: &Input, report: Option<&Report>) -> Vec<Flag> {
         Flag::new(&flag.code, text.replace("; the other choices stand beside", beside))
     };
     let of_model = report.map_or(&[][..], |report| &report.flags).iter().filter(|flag| OF_MODEL.contains(&flag.code.as_str()));
-    input.shot.flags.iter().filter(own).map(in_words).chain(of_model.cloned()).collect()
+    let mut flags: Vec<Flag> = input.shot.flags.iter().filter(own).map(in_words).chain(of_model.cloned()).collect();
+    // A reduction, which takes slopes, does not follow a wall that a thermally perfect gas expands behind.
+    if matches!(shock, Shock::Thermal(shock) if shock.wave() == Wave::Expansion) {
+        let text = "the end wall recedes faster than the gas: an expansion runs back from it, state 5 is the gas that follows the wall, and U_R is the speed of the head of the expansion";
+        flags.push(Flag::new("wall-moves", text));
+    }
+    flags
 }
 
 /// The state at a wall that moves.
