@@ -26,8 +26,9 @@ pub(super) fn alternatives(shot: &Shot, reduction: &Reduction<'_>) -> HeatCapaci
     };
     let beside = HeatCapacityModel::ALL.map(|model| {
         let outputs = |reduction: &Reduction<'_>| {
-            [(Output::Temperature2, "K"), (Output::Temperature5, "K"), (Output::Pressure5, "Pa")]
-                .map(|(output, unit)| Some(figure(&reduction.estimate(output), unit)))
+            let [temperature_2, temperature, pressure] =
+                reduction.estimates([Output::Temperature2, Output::Temperature5, Output::Pressure5]);
+            [(temperature_2, "K"), (temperature, "K"), (pressure, "Pa")].map(|(estimate, unit)| Some(figure(&estimate, unit)))
         };
         let [temperature_2, temperature, pressure] = if model == shot.heat_capacity {
             outputs(reduction)

@@ -113,6 +113,26 @@ fn measured(quantity: &Quantity) -> Measured {
     Measured { value: Known::from(quantity.value()), uncertainty }
 }
 
+/// What a report shows.
+const OUTPUTS: [Output; 16] = [
+    Output::Density1,
+    Output::SoundSpeed1,
+    Output::Pressure2,
+    Output::Temperature2,
+    Output::Density2,
+    Output::SoundSpeed2,
+    Output::GasSpeed2,
+    Output::Pressure5,
+    Output::Temperature5,
+    Output::Density5,
+    Output::SoundSpeed5,
+    Output::Step,
+    Output::ShockSpeed,
+    Output::Mach,
+    Output::ReflectedSpeed,
+    Output::ReflectedMach,
+];
+
 /// The report of a shot from its reduction.
 pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
     let mut report = without_tube(shot, reduction, notes);
@@ -122,7 +142,11 @@ pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -
 
 /// The same without what driver and tube add.
 pub(super) fn without_tube(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
-    let estimate = |output, unit| figure(&reduction.estimate(output), unit);
+    let estimates = reduction.estimates(OUTPUTS);
+    let estimate = |output: Output, unit| {
+        let found = OUTPUTS.iter().zip(&estimates).find(|(own, _)| **own == output);
+        found.map_or_else(|| figure(&reduction.estimate(output), unit), |(_, estimate)| figure(estimate, unit))
+    };
     let state = |pressure, temperature, outputs: [Output; 2], gas_speed| ReportState {
         pressure,
         temperature,

@@ -17,9 +17,25 @@ enum Parts<'r> {
 impl Reduction<'_> {
     /// Sensitivity of an output to each line of the budget: the slope with respect to the input on which the line acts.
     pub fn sensitivities(&self, output: Output) -> [f64; LINES] {
+        let [own] = self.all_sensitivities([output]);
+        own
+    }
+
+    /// The same for several outputs, which is faster than one after the other where the heat capacity depends on temperature.
+    fn all_sensitivities<const N: usize>(&self, outputs: [Output; N]) -> [[f64; LINES]; N] {
         match self.parts() {
-            Parts::Constant(constant) => self.per_line(constant.slopes(output)),
-            Parts::Thermal(thermal) => self.each_line(|source| thermal.slope(source, output)),
+            Parts::Constant(constant) => outputs.map(|output| self.per_line(constant.slopes(output))),
+            Parts::Thermal(thermal) => {
+                let mut all = [[0.0; LINES]; N];
+                for (at, line) in self.budget().iter().enumerate() {
+                    for (row, slope) in all.iter_mut().zip(thermal.slopes(line.source, outputs)) {
+                        if let Some(sensitivity) = row.get_mut(at) {
+                            *sensitivity = slope;
+                        }
+                    }
+                }
+                all
+            }
         }
     }
 
@@ -60,6 +76,34 @@ impl Reduction<'_> {
 
     /// An output with its proof and its uncertainty.
     pub fn estimate(&self, output: Output) -> Estimate {
+        let [own] = self.estimates([output]);
+        own
+    }
+
+    /// Several outputs with their proofs and uncertainties, faster than one after the other.
+    ///
+    /// ```
+    /// # use endwall::gas::species::table;
+    /// # use endwall::gas::{HeatCapacityModel, Portion, ThermallyPerfectGas};
+    /// # use endwall::shot::{DrivenGas, EndWall, Measured, Shot, SpeedSource, reduce};
+    /// use endwall::shock::Output;
+    /// # let portions = [Portion { species: &table::N2, fraction: "1".parse()? }];
+    /// # let gas = ThermallyPerfectGas::new(&portions)?;
+    /// # let gas = DrivenGas::ThermallyPerfect { gas, model: HeatCapacityModel::Equilibrium, changes: &[] };
+    /// # let shot = Shot { speed: SpeedSource::Given(Measured::new(1050.0, 2.0)), gas, pressure: Measured::new(1e4, 10.0),
+    /// #   temperature: Measured::new(295.0, 0.5), wall: EndWall::Rigid };
+    /// let reduction = reduce(&shot)?;
+    /// let [temperature, pressure] = reduction.estimates([Output::Temperature5, Output::Pressure5]);
+    /// assert_eq!(temperature, reduction.estimate(Output::Temperature5));
+    /// assert_eq!(pressure, reduction.estimate(Output::Pressure5));
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
+    pub fn estimates<const N: usize>(&self, outputs: [Output; N]) -> [Estimate; N] {
+        let mut sensitivities = self.all_sensitivities(outputs).into_iter();
+        outputs.map(|output| self.estimate_with(output, sensitivities.next().unwrap_or([f64::NAN; LINES])))
+    }
+
+    fn estimate_with(&self, output: Output, sensitivities: [f64; LINES]) -> Estimate {
         let (value, enclosure) = match self.parts() {
             Parts::Constant(constant) => match constant.at_wall(output) {
                 Some(enclosure) => (enclosure.middle(), enclosure),
@@ -68,7 +112,7 @@ impl Reduction<'_> {
             Parts::Thermal(thermal) => (thermal.shock.nearest(output), thermal.shock.output(output)),
         };
         let proven = (output != Output::ShockSpeed || self.fit().is_none()).then_some(enclosure);
-        self.estimated(value, proven, self.sensitivities(output))
+        self.estimated(value, proven, sensitivities)
     }
 
     /// The gas speed of state 5: the wall's velocity, exactly zero for a rigid wall.
@@ -143,7 +187,7 @@ impl Reduction<'_> {
 
     /// Correlation of two outputs from the inputs that they share (JCGM 102:2011, 6.2).
     pub fn correlation(&self, first: Output, second: Output) -> Option<f64> {
-        let rows = [self.sensitivities(first), self.sensitivities(second)];
+        let rows = self.all_sensitivities([first, second]);
         let uncertainties = self.uncertainties(&rows)?;
         let [c, d] = rows;
         Inputs::new(&uncertainties, None).ok()?.correlation(&c, &d).ok()?
