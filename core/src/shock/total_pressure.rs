@@ -42,7 +42,7 @@ impl Incident {
     ///
     /// pt2/pt1 = (ρ2/ρ1)^(γ/(γ−1))·(p2/p1)^(−1/(γ−1)), NACA Report 1135, equation 99.
     ///
-    /// Below 2⁻⁹³⁶ the enclosure is [0, 2⁻⁹³⁶].
+    /// A ratio below 2⁻⁹³⁶ comes as an enclosure from 0 to a little above that.
     ///
     /// ```
     /// use endwall::gas::{Fill, Gas, HeatCapacityRatio};
