@@ -86,10 +86,13 @@ impl HeatCapacity<Ball> {
         if rise.magnitude() == 0.0 {
             return one(Ball::whole(0), from);
         }
-        // Positive where T′ is greater than this temperature, which is an end of the range.
+        // Positive where T′ is greater than this temperature, which is an end of the range. Where the change leads away from the end the integral to it has the
+        // other sign than the rise, which then says all that is asked.
         let lacking = |end: f64, to: usize| {
-            let excess = (Ball::from(end) - temperature) / temperature;
-            rise - I::rise(self, from, temperature, excess, to)
+            let distance = Ball::from(end) - temperature;
+            let leads_away = distance.is_certainly_positive() && rise.is_certainly_negative()
+                || distance.is_certainly_negative() && rise.is_certainly_positive();
+            if leads_away { rise } else { rise - I::rise(self, from, temperature, distance / temperature, to) }
         };
         let mut low = coldest;
         let mut below = lacking(low, 0);

@@ -3,7 +3,7 @@
 use alloc::string::ToString;
 use alloc::vec::Vec;
 
-use super::reduce::figure;
+use super::reduce::figures;
 use super::report::{Alternative, HeatCapacityChoice, Relaxation};
 use super::shot::Shot;
 use crate::gas::{HeatCapacityModel, ThermallyPerfectGas, relaxation_times};
@@ -26,9 +26,7 @@ pub(super) fn alternatives(shot: &Shot, reduction: &Reduction<'_>) -> HeatCapaci
     };
     let beside = HeatCapacityModel::ALL.map(|model| {
         let outputs = |reduction: &Reduction<'_>| {
-            let [temperature_2, temperature, pressure] =
-                reduction.estimates([Output::Temperature2, Output::Temperature5, Output::Pressure5]);
-            [(temperature_2, "K"), (temperature, "K"), (pressure, "Pa")].map(|(estimate, unit)| Some(figure(&estimate, unit)))
+            figures(reduction, [(Output::Temperature2, "K"), (Output::Temperature5, "K"), (Output::Pressure5, "Pa")]).map(Some)
         };
         let [temperature_2, temperature, pressure] = if model == shot.heat_capacity {
             outputs(reduction)

@@ -12,12 +12,12 @@ use super::flag::Flag;
 use super::format::significant;
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
-use super::plan_report::computed;
 use super::reduce::report;
-use super::report::{Report, ReportQuantity};
+use super::report::{Report, ReportQuantity, computed};
 use super::shot::{Shot, Speed};
+use super::shot_tube::test_gas;
 use crate::number::{Enclosure, Known};
-use crate::shot::{Reduction, Solved};
+use crate::shot::Reduction;
 use crate::tube::{Driver, DriverError, TestGas};
 
 /// A fill pressure further than this from that of the plan was set for another state.
@@ -40,12 +40,11 @@ pub(super) fn past_shot(plan: &Plan, wanted: &Wanted, shot: &Shot) -> Result<Pas
     let (report, ideal) = reduced?;
     let five = &report.states.reflected;
     let fill = report.states.fill.pressure.clone();
-    let driver_pressure = shot.driver.as_ref().and_then(|driver| driver.pressure.as_ref()).map(|(_, absolute)| ReportQuantity {
-        standard_uncertainty: absolute.standard_uncertainty,
-        expanded: absolute.standard_uncertainty.map(|standard| 2.0 * standard),
-        coverage_factor: absolute.standard_uncertainty.map(|_| 2.0),
-        ..computed(absolute.value.to_f64(), "Pa", None)
-    });
+    let driver_pressure = shot
+        .driver
+        .as_ref()
+        .and_then(|driver| driver.pressure.as_ref())
+        .map(|(_, absolute)| computed(absolute.value.to_f64(), "Pa", None).with_standard_uncertainty(absolute.standard_uncertainty));
     let against = |found: &ReportQuantity, wanted: &ReportQuantity| found.value / wanted.value - 1.0;
     let departure = Departure {
         fill: against(&fill, &wanted.fill),
@@ -59,10 +58,7 @@ pub(super) fn past_shot(plan: &Plan, wanted: &Wanted, shot: &Shot) -> Result<Pas
     let (ideal_mach, efficiency) = ideal.unzip();
     let counts = counts(shot, &departure, efficiency.as_ref(), &mut flags);
     // Tube and driver are used here, whatever a reduction says.
-    let used_here = |flag: &Flag| {
-        flag.code == "not-used"
-            && (flag.text.starts_with("tube ") || flag.text.starts_with("driver ") || flag.text.starts_with("driver.pressure "))
-    };
+    let used_here = |flag: &Flag| ["tube", "driver", "driver.pressure"].iter().any(|path| *flag == Flag::not_used(path));
     let report_flags = report.flags.iter().filter(|flag| !used_here(flag)).cloned().collect();
     Ok(PastShot {
         name: shot.name.clone(),
@@ -186,10 +182,7 @@ fn ideal(
         return without(format!("neither the record nor the plan has driver.{field}"));
     }
     let Some((typed, p4)) = &record.pressure else { return Ok(None) };
-    let gas = match reduction.solved() {
-        Solved::Constant(incident, _) => TestGas::from(incident.fill()),
-        Solved::Thermal(shock) => TestGas::from(shock.fill()),
-    };
+    let gas = test_gas(reduction);
     let p1 = report.states.fill.pressure.value;
     if p4.value.to_f64() <= p1 {
         let wrong = format!("the driver pressure is not above that of the fill, {} Pa", significant(p1, 4));

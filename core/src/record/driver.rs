@@ -31,16 +31,12 @@ pub(super) fn with_driver<T>(
     };
     let temperature = record.temperature.as_ref().ok_or_else(|| missing("driver.temperature", "\"temperature\": \"295 K\""))?.value();
     let gas = record.gas.as_ref().ok_or_else(|| missing("driver.gas", "\"gas\": { \"He\": \"balance\" }"))?;
-    let bores = tube.and_then(|tube| Some((tube.driver_bore.as_ref()?.value(), tube.driven_bore.as_ref()?.value())));
-    let ratio = bores.and_then(|(driver, driven)| driver.checked_div(driven)).and_then(|ratio| ratio.checked_mul(ratio));
-    if let (Some([driver, driven]), Some(typed)) =
-        (bores.map(|(driver, driven)| [driver, driven].map(Rational::to_f64)), tube.and_then(|tube| tube.driver_bore.as_ref()))
-    {
-        if driver < driven {
-            let wrong = "a driver that is narrower than the driven section is another flow, which is not computed";
-            return Err(RecordError::new(ErrorKind::Value, "tube.driver_bore", typed.typed(), wrong, "check both bores"));
-        }
+    let bores = tube.and_then(|tube| tube.driver_bore.as_ref().zip(tube.driven_bore.as_ref()));
+    if let Some((driver, _)) = bores.filter(|(driver, driven)| driver.value().to_f64() < driven.value().to_f64()) {
+        let wrong = "a driver that is narrower than the driven section is another flow, which is not computed";
+        return Err(RecordError::new(ErrorKind::Value, "tube.driver_bore", driver.typed(), wrong, "check both bores"));
     }
+    let ratio = bores.and_then(|(driver, driven)| driver.value().checked_div(driven.value())).and_then(|ratio| ratio.checked_mul(ratio));
     let in_tube = |driver: Driver<'_>| match ratio {
         None => use_it(&driver),
         Some(ratio) => use_it(&driver.with_area_ratio(ratio).map_err(|error| no_driver(&error))?),

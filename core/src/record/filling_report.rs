@@ -11,9 +11,9 @@ use super::filling::{FillingRecord, Vessel};
 use super::flag::Flag;
 use super::hazard;
 use super::plan::Plan;
-use super::plan_report::{LimitLine, computed};
+use super::plan_report::LimitLine;
 use super::quantity::{Absolute, Quantity};
-use super::report::ReportQuantity;
+use super::report::{ReportQuantity, computed};
 use super::shot::Shot;
 use crate::gas::{HeatCapacityModel, InputError, Parameter, departure_from_ideal};
 use crate::number::{Enclosure, Known, Rational};
@@ -69,6 +69,7 @@ pub(super) struct FillingPart {
 
 /// What acts on the vessel, in a comparison with its rating.
 pub(super) const LOAD: &str = "filling, unburnt gas";
+
 impl FillingRecord {
     /// The rating that counts, with the name of the part.
     fn rating<'a>(&'a self, plan: &'a Plan) -> Option<(&'static str, &'a (Quantity, Absolute))> {
@@ -125,7 +126,7 @@ impl Plan {
         let fractions: Vec<Rational> = record.order.iter().map(|component| component.fraction).collect();
         let filling = Filling::new(residual, pressure, &fractions).map_err(|error| self.filling_refused(&error))?;
         let uncertainty = |number: usize, reading: f64| record.uncertainty(number, reading, temperature);
-        let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map(|ambient| ambient.value.to_f64());
+        let ambient = self.ambient_pressure();
         let mut steps = Vec::new();
         for (number, component) in record.order.iter().enumerate() {
             let Some(step) = filling.step(number) else { break };
@@ -141,7 +142,8 @@ impl Plan {
             });
         }
         let left = record.residual.as_ref().map(|(_, absolute)| FillingResidual {
-            pressure: with_uncertainty(computed(residual.nominal(), "Pa", Some(residual.enclosure())), absolute.standard_uncertainty),
+            pressure: computed(residual.nominal(), "Pa", Some(residual.enclosure()))
+                .with_standard_uncertainty(absolute.standard_uncertainty),
             fraction: fraction(filling.residual_fraction(), Some(filling.residual_uncertainty(uncertainty)).filter(|_| record.is_stated())),
         });
         let mixture = shot.with_gas(HeatCapacityModel::Equilibrium, |gas, _| Ok(departure(&gas, temperature, pressure.nominal())))?;
@@ -181,12 +183,5 @@ fn departure(gas: &DrivenGas<'_>, temperature: f64, pressure: f64) -> f64 {
 }
 
 fn fraction((nearest, bounds): (f64, Enclosure), standard: Option<f64>) -> ReportQuantity {
-    with_uncertainty(computed(nearest, "1", Some(bounds)), standard)
-}
-
-fn with_uncertainty(mut quantity: ReportQuantity, standard: Option<f64>) -> ReportQuantity {
-    quantity.standard_uncertainty = standard;
-    quantity.expanded = standard.map(|standard| 2.0 * standard);
-    quantity.coverage_factor = standard.map(|_| 2.0);
-    quantity
+    computed(nearest, "1", Some(bounds)).with_standard_uncertainty(standard)
 }

@@ -195,6 +195,11 @@ impl Plan {
         Ok(plan)
     }
 
+    /// The ambient pressure, Pa.
+    pub(super) fn ambient_pressure(&self) -> Option<f64> {
+        self.ambient.as_ref().map(|ambient| ambient.value().to_f64())
+    }
+
     /// A shot into this gas at a fill pressure (Pa) and a shock speed (m/s), with the tolerances of the laboratory as standard uncertainties.
     pub(super) fn shot(&self, fill_pressure: f64, shock_speed: f64) -> Result<Shot, RecordError> {
         let typed = |value: f64, unit: &str, relative: &Option<Quantity>, dimension| {

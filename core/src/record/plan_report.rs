@@ -112,15 +112,3 @@ impl PlanReport {
         plan_text::render(self, plan)
     }
 }
-
-/// A quantity that is computed and not measured.
-pub(super) fn computed(value: f64, unit: &'static str, proven: Option<crate::number::Enclosure>) -> ReportQuantity {
-    ReportQuantity {
-        value,
-        unit,
-        proven: proven.filter(|bounds| bounds.is_proven()).map(|bounds| [bounds.low(), bounds.high()]),
-        standard_uncertainty: None,
-        expanded: None,
-        coverage_factor: None,
-    }
-}

@@ -114,8 +114,8 @@ fn set(page: &mut Page, report: &PlanReport, plan: &Plan, units: DisplayUnits) {
     let mut rows = alloc::vec![row(["Driven fill p1", &units.show(&report.fill.p1)])];
     if let Some(p4) = &report.fill.p4 {
         rows.push(row(["Driver pressure p4", &units.pressure(p4.value)]));
-        if let Some(ambient) = &plan.ambient {
-            rows.push(row(["  on a gauge at the ambient pressure", &units.pressure(p4.value - ambient.value().to_f64())]));
+        if let Some(ambient) = plan.ambient_pressure() {
+            rows.push(row(["  on a gauge at the ambient pressure", &units.pressure(p4.value - ambient)]));
         }
     }
     if let Some([low, high]) = report.fill.p4_band {

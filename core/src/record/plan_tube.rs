@@ -9,9 +9,9 @@ use super::error::RecordError;
 use super::flag::Flag;
 use super::optional::{Driver as DriverRecord, Tube as TubeRecord};
 use super::plan::Plan;
-use super::plan_report::{LimitLine, PlannedWave, computed};
+use super::plan_report::{LimitLine, PlannedWave};
 use super::quantity::Quantity;
-use super::report::{ReportQuantity, States};
+use super::report::{ReportQuantity, States, computed};
 use super::shot::Shot;
 use super::shot_tube::Layers;
 use super::tailoring::PlannedTailoring;
@@ -143,7 +143,7 @@ impl Plan {
     }
 
     fn loads(&self, part: &mut TubePart, tube: &TubeRecord, loads: &Loads) {
-        let ambient = self.ambient.as_ref().and_then(|ambient| ambient.absolute(None)).map(|ambient| ambient.value.to_f64());
+        let ambient = self.ambient_pressure();
         if ambient.is_none() && tube.driven_bore.is_some() {
             let text = "no ambient pressure is given: end load and stored energy are those against 101.325 kPa";
             part.flags.push(Flag::new("ambient-assumed", text));

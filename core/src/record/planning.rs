@@ -6,9 +6,9 @@ use alloc::vec::Vec;
 use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::plan::{Plan, Target};
-use super::plan_report::{PlanReport, PlannedFill, computed};
+use super::plan_report::{PlanReport, PlannedFill};
 use super::reduce::without_tube;
-use super::report::{Report, ReportQuantity};
+use super::report::{Report, ReportQuantity, computed};
 use super::shot::Shot;
 use super::shot_tube::test_gas;
 use crate::gas::{Fill, Gas, HeatCapacityRatio, ThermallyPerfectGas};
@@ -153,7 +153,7 @@ impl Plan {
         }
         flags.extend(part.flags);
         flags.extend(report.flags.iter().cloned());
-        flags.retain(|flag| flag.code != "missing-uncertainty" && !(flag.code == "not-used" && flag.text.starts_with("tube is recorded")));
+        flags.retain(|flag| flag.code != "missing-uncertainty" && *flag != Flag::not_used("tube"));
         Ok(PlanReport {
             limits: part.limits,
             fill: PlannedFill { p1, p4: part.p4, p4_band: part.p4_band },

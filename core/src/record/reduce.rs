@@ -13,6 +13,7 @@ use super::optional::Wall;
 use super::quantity::{Coverage, Mark, Quantity};
 use super::report::{
     BudgetLine, Correlation, Fit, FitLine, Incident, LeftOut, MadeBy, Reflected, Report, ReportQuantity, ReportState, Share, States,
+    computed,
 };
 use super::shot::{Shot, Speed};
 use crate::gas::{HeatCapacityModel, MixtureChange};
@@ -113,26 +114,6 @@ fn measured(quantity: &Quantity) -> Measured {
     Measured { value: Known::from(quantity.value()), uncertainty }
 }
 
-/// What a report shows.
-const OUTPUTS: [Output; 16] = [
-    Output::Density1,
-    Output::SoundSpeed1,
-    Output::Pressure2,
-    Output::Temperature2,
-    Output::Density2,
-    Output::SoundSpeed2,
-    Output::GasSpeed2,
-    Output::Pressure5,
-    Output::Temperature5,
-    Output::Density5,
-    Output::SoundSpeed5,
-    Output::Step,
-    Output::ShockSpeed,
-    Output::Mach,
-    Output::ReflectedSpeed,
-    Output::ReflectedMach,
-];
-
 /// The report of a shot from its reduction.
 pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
     let mut report = without_tube(shot, reduction, notes);
@@ -142,50 +123,72 @@ pub(super) fn report(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -
 
 /// The same without what driver and tube add.
 pub(super) fn without_tube(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNotes) -> Report {
-    let estimates = reduction.estimates(OUTPUTS);
-    let estimate = |output: Output, unit| {
-        let found = OUTPUTS.iter().zip(&estimates).find(|(own, _)| **own == output);
-        found.map_or_else(|| figure(&reduction.estimate(output), unit), |(_, estimate)| figure(estimate, unit))
-    };
-    let state = |pressure, temperature, outputs: [Output; 2], gas_speed| ReportState {
-        pressure,
-        temperature,
-        density: estimate(outputs[0], "kg/m3"),
-        sound_speed: estimate(outputs[1], "m/s"),
-        gas_speed,
-    };
+    let shown = [
+        (Output::Density1, "kg/m3"),
+        (Output::SoundSpeed1, "m/s"),
+        (Output::Pressure2, "Pa"),
+        (Output::Temperature2, "K"),
+        (Output::Density2, "kg/m3"),
+        (Output::SoundSpeed2, "m/s"),
+        (Output::GasSpeed2, "m/s"),
+        (Output::Pressure5, "Pa"),
+        (Output::Temperature5, "K"),
+        (Output::Density5, "kg/m3"),
+        (Output::SoundSpeed5, "m/s"),
+        (Output::Step, "Pa"),
+        (Output::ShockSpeed, "m/s"),
+        (Output::Mach, "1"),
+        (Output::ReflectedSpeed, "m/s"),
+        (Output::ReflectedMach, "1"),
+    ];
+    let [
+        density_1,
+        sound_speed_1,
+        pressure_2,
+        temperature_2,
+        density_2,
+        sound_speed_2,
+        gas_speed_2,
+        pressure_5,
+        temperature_5,
+        density_5,
+        sound_speed_5,
+        step,
+        speed,
+        mach,
+        reflected_speed,
+        reflected_mach,
+    ] = figures(reduction, shown);
     let states = States {
-        fill: state(
-            figure(&reduction.fill_pressure(), "Pa"),
-            figure(&reduction.fill_temperature(), "K"),
-            [Output::Density1, Output::SoundSpeed1],
-            at_rest(),
-        ),
-        incident: state(
-            estimate(Output::Pressure2, "Pa"),
-            estimate(Output::Temperature2, "K"),
-            [Output::Density2, Output::SoundSpeed2],
-            estimate(Output::GasSpeed2, "m/s"),
-        ),
-        reflected: state(
-            estimate(Output::Pressure5, "Pa"),
-            estimate(Output::Temperature5, "K"),
-            [Output::Density5, Output::SoundSpeed5],
-            if matches!(reduction.wall(), EndWall::Rigid) { at_rest() } else { figure(&reduction.wall_velocity(), "m/s") },
-        ),
+        fill: ReportState {
+            pressure: figure(&reduction.fill_pressure(), "Pa"),
+            temperature: figure(&reduction.fill_temperature(), "K"),
+            density: density_1,
+            sound_speed: sound_speed_1,
+            gas_speed: at_rest(),
+        },
+        incident: ReportState {
+            pressure: pressure_2,
+            temperature: temperature_2,
+            density: density_2,
+            sound_speed: sound_speed_2,
+            gas_speed: gas_speed_2,
+        },
+        reflected: ReportState {
+            pressure: pressure_5,
+            temperature: temperature_5,
+            density: density_5,
+            sound_speed: sound_speed_5,
+            gas_speed: if matches!(reduction.wall(), EndWall::Rigid) { at_rest() } else { figure(&reduction.wall_velocity(), "m/s") },
+        },
     };
-    let step = estimate(Output::Step, "Pa");
     let mut flags = shot.flags.clone();
     flags.extend(notes.flags.iter().cloned());
     flags.extend(check::result(shot, reduction, &states, &step));
     Report {
-        incident: Incident {
-            speed: estimate(Output::ShockSpeed, "m/s"),
-            mach: estimate(Output::Mach, "1"),
-            attenuation: reduction.fit().map(attenuation),
-        },
+        incident: Incident { speed, mach, attenuation: reduction.fit().map(attenuation) },
         states,
-        reflected: Reflected { speed: estimate(Output::ReflectedSpeed, "m/s"), mach: estimate(Output::ReflectedMach, "1") },
+        reflected: Reflected { speed: reflected_speed, mach: reflected_mach },
         step,
         heat_capacity: alternatives(shot, reduction),
         fit: reduction.fit().map(|fit| fit_lines(shot, fit)),
@@ -197,6 +200,12 @@ pub(super) fn without_tube(shot: &Shot, reduction: &Reduction<'_>, notes: &GasNo
         flags,
         made_by: MadeBy::this_version(shot, &notes.source),
     }
+}
+
+/// Outputs with their units, as they are reported.
+pub(super) fn figures<const N: usize>(reduction: &Reduction<'_>, outputs: [(Output, &'static str); N]) -> [ReportQuantity; N] {
+    let mut estimates = reduction.estimates(outputs.map(|(output, _)| output)).into_iter();
+    outputs.map(|(output, unit)| figure(&estimates.next().unwrap_or_else(|| reduction.estimate(output)), unit))
 }
 
 pub(super) fn figure(estimate: &Estimate, unit: &'static str) -> ReportQuantity {
@@ -219,16 +228,7 @@ fn at_rest() -> ReportQuantity {
 
 /// The fitted attenuation. The times' uncertainties are stated, not estimated from their scatter: infinite degrees of freedom, k = 2.
 fn attenuation(fit: &crate::shot::Fit) -> ReportQuantity {
-    let standard_uncertainty = fit.attenuation_uncertainty();
-    let factor = standard_uncertainty.map(|_| 2.0);
-    ReportQuantity {
-        value: fit.attenuation,
-        unit: "1/m",
-        proven: None,
-        standard_uncertainty,
-        expanded: standard_uncertainty.zip(factor).map(|(standard, factor)| standard * factor),
-        coverage_factor: factor,
-    }
+    computed(fit.attenuation, "1/m", None).with_standard_uncertainty(fit.attenuation_uncertainty())
 }
 
 fn fit_lines(shot: &Shot, fit: &crate::shot::Fit) -> Fit {

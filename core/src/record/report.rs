@@ -12,6 +12,7 @@ use super::shot::Shot;
 use super::text;
 use super::uniform_time::UniformTime;
 use super::wall_layer::{WallLayer, WallLayerCriterion};
+use crate::number::Enclosure;
 
 /// A reported quantity, in SI units.
 #[derive(Clone, Debug, PartialEq, Serialize)]
@@ -29,6 +30,26 @@ pub struct ReportQuantity {
     pub expanded: Option<f64>,
     /// k.
     pub coverage_factor: Option<f64>,
+}
+
+/// A quantity that is computed and not measured.
+pub(super) fn computed(value: f64, unit: &'static str, proven: Option<Enclosure>) -> ReportQuantity {
+    ReportQuantity {
+        value,
+        unit,
+        proven: proven.filter(|bounds| bounds.is_proven()).map(|bounds| [bounds.low(), bounds.high()]),
+        standard_uncertainty: None,
+        expanded: None,
+        coverage_factor: None,
+    }
+}
+
+impl ReportQuantity {
+    /// With a standard uncertainty of infinite degrees of freedom: k = 2.
+    pub(super) fn with_standard_uncertainty(self, standard_uncertainty: Option<f64>) -> Self {
+        let (expanded, coverage_factor) = (standard_uncertainty.map(|standard| 2.0 * standard), standard_uncertainty.map(|_| 2.0));
+        Self { standard_uncertainty, expanded, coverage_factor, ..self }
+    }
 }
 
 /// A state of the gas.

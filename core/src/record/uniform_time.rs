@@ -10,8 +10,7 @@ use super::error::{ErrorKind, RecordError};
 use super::flag::Flag;
 use super::format::significant;
 use super::optional::Tube as TubeRecord;
-use super::plan_report::computed;
-use super::report::ReportQuantity;
+use super::report::{ReportQuantity, computed};
 use crate::number::{Ball, Enclosure, Rational};
 use crate::tube::{
     BehindShock, Contact, ContactReturn, ContactWaves, Driver, DriverGas, Interaction, Lengths, Limit, Tailoring, TestTime, Tube,
@@ -111,14 +110,13 @@ impl Setting<'_> {
             flags.push(Flag::new("driver-expansion", text));
         }
         let met = self.met.map(ContactWaves::interaction);
-        let contact = self.met.map_or_else(
-            || {
+        let contact = if let Some(met) = self.met {
+            met.contact_return()
+        } else {
             let text = "the wave that comes back from the contact surface is taken as a sound wave, since its strength is not computed; a returned shock would be faster";
             flags.push(Flag::new("returned-wave", text));
             ContactReturn::Wave { speed: speeds.sound_speed_5 }
-            },
-            ContactWaves::contact_return,
-        );
+        };
         let lengths = Lengths { driven: Ball::from(driven), driver: Ball::from(driver_length) };
         let diagram = WaveDiagram::new(Tube { speeds, lengths, contact }).map_err(refused)?;
         let returned_speed = match contact {

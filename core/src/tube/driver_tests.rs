@@ -1,15 +1,11 @@
 extern crate std;
 
 use super::*;
-use crate::gas::species::{Species, named, table};
-use crate::gas::{Fill, HeatCapacityModel, HeatCapacityRatio, Portion, molar_gas_constant};
+use crate::gas::species::{named, table};
+use crate::gas::{Fill, HeatCapacityModel, HeatCapacityRatio, molar_gas_constant};
 use crate::shock::{Incident, ThermalFill};
-use crate::tube::pure_gases::{argon, gas, helium, hydrogen, nitrogen};
+use crate::tube::pure_gases::{argon, exact, gas, helium, hydrogen, nitrogen, pure};
 use crate::tube::{Contact, Unproven};
-
-fn exact(text: &str) -> Rational {
-    text.parse().unwrap()
-}
 
 fn fill(gas: Gas) -> Fill {
     Fill::new(gas, 10e3, 295.0).unwrap()
@@ -128,10 +124,6 @@ fn there_and_back() {
             }
         }
     }
-}
-
-fn pure<'a>(species: &'a Species<'a>) -> [Portion<'a>; 1] {
-    [Portion { species, fraction: Rational::ONE }]
 }
 
 #[test]

@@ -2,10 +2,9 @@
 
 use super::contact::{Contact, Tailoring};
 use super::driver_error::{DriverError, Unproven};
-use super::proven_root::{newton, search};
+use super::proven_root::{newton, polished, search};
 use super::side::{ContactSide, expansion_speed, shock_speed};
 use super::test_gas::BehindShock;
-use super::thermal_side::polished;
 use super::waves::ContactReturn;
 use crate::gas::Gamma;
 use crate::number::{Ball, Dual, Enclosure, Semifield};

@@ -4,6 +4,8 @@ use crate::number::{Ball, Dual, Enclosure};
 
 /// Plain steps of a search, at most; about 12 are taken.
 const PLAIN_STEPS: u32 = 200;
+/// Newton steps without proof, at most; two to five are taken.
+const POLISHING_STEPS: u32 = 40;
 /// Newton steps with proof, at most.
 const NEWTON_STEPS: u32 = 6;
 /// 2⁻⁴⁴, relative: what a plain search is nearly always good to, and so narrow that the slope over it leaves about 2⁻⁹⁰.
@@ -34,6 +36,24 @@ pub(super) fn search(f: impl Fn(f64) -> f64, low: f64, high: f64) -> f64 {
     }
     // The end whose residual is smaller.
     if f_low.abs() < f_high.abs() { low } else { high }
+}
+
+/// A root by Newton's method without proof, from a start that is nearly good.
+pub(super) fn polished(f: impl Fn(Dual<Ball, 1>) -> Dual<Ball, 1>, start: f64) -> f64 {
+    let mut y = start;
+    for _ in 0..POLISHING_STEPS {
+        let value = f(Dual::variable(Ball::from(y), 0));
+        let [slope] = value.slopes();
+        let step = value.value().nearest() / slope.nearest();
+        if step.is_nan() {
+            break;
+        }
+        y -= step;
+        if step.abs() <= 1e-12 * y.abs() {
+            break;
+        }
+    }
+    y
 }
 
 /// The root of f near an approximation, by interval Newton: N = x − f(x)/f′(X) inside X holds a root, and X holds no other.

@@ -1,10 +1,20 @@
-//! Gases of constant heat capacity for the unit tests of driver and contact surface.
+//! Gases for the unit tests of driver and contact surface.
 
-use crate::gas::{Gas, HeatCapacityRatio};
+use crate::gas::species::Species;
+use crate::gas::{Gas, HeatCapacityRatio, Portion};
 use crate::number::Rational;
 
+pub(super) fn exact(text: &str) -> Rational {
+    text.parse().unwrap()
+}
+
+/// One species, of which a thermally perfect gas is made.
+pub(super) fn pure<'a>(species: &'a Species<'a>) -> [Portion<'a>; 1] {
+    [Portion { species, fraction: Rational::ONE }]
+}
+
 pub(super) fn gas(n: u32, d: u32, molar_mass: &str) -> Gas {
-    Gas::new(HeatCapacityRatio::ratio(n, d).unwrap(), molar_mass.parse::<Rational>().unwrap()).unwrap()
+    Gas::new(HeatCapacityRatio::ratio(n, d).unwrap(), exact(molar_mass)).unwrap()
 }
 
 pub(super) fn helium() -> Gas {

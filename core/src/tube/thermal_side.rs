@@ -1,6 +1,6 @@
 //! The same for a thermally perfect gas.
 
-use super::proven_root::newton;
+use super::proven_root::{newton, polished};
 use crate::gas::isentropic_change::{Change, Pressure, Speed};
 use crate::gas::{Gamma, HeatCapacity, ThermallyPerfectGas, molar_gas_constant};
 use crate::number::{Ball, Dual, Elementary, Positive, Semifield};
@@ -208,24 +208,6 @@ impl<'a> ThermalSide<'a> {
         };
         Some(self.heat_capacity.entropy_rise(self.range, self.temperature, twice.excess, twice.to).exp())
     }
-}
-
-/// A root by Newton's method without proof, from a start that is nearly good.
-pub(super) fn polished(f: impl Fn(Dual<Ball, 1>) -> Dual<Ball, 1>, start: f64) -> f64 {
-    let mut y = start;
-    for _ in 0..PLAIN_STEPS {
-        let value = f(Dual::variable(Ball::from(y), 0));
-        let [slope] = value.slopes();
-        let step = value.value().nearest() / slope.nearest();
-        if step.is_nan() {
-            break;
-        }
-        y -= step;
-        if step.abs() <= 1e-12 * y.abs() {
-            break;
-        }
-    }
-    y
 }
 
 #[cfg(test)]

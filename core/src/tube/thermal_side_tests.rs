@@ -2,23 +2,12 @@
 
 use super::super::side::ContactSide;
 use super::*;
-use crate::gas::species::{Species, named, table};
-use crate::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio, Portion};
-use crate::number::{Enclosure, Known, Rational};
+use crate::gas::species::{named, table};
+use crate::gas::{Fill, Gas, HeatCapacityModel, HeatCapacityRatio};
+use crate::number::{Enclosure, Known};
 use crate::shock::{Entry, ThermalFill};
+use crate::tube::pure_gases::{exact, helium, pure};
 use crate::tube::{Contact, Driver, Interaction, Tailoring, TestGas};
-
-fn exact(text: &str) -> Rational {
-    text.parse().unwrap()
-}
-
-fn pure<'a>(species: &'a Species<'a>) -> [Portion<'a>; 1] {
-    [Portion { species, fraction: Rational::ONE }]
-}
-
-fn helium() -> Gas {
-    Gas::new(HeatCapacityRatio::ratio(5, 3).unwrap(), exact("0.004002602")).unwrap()
-}
 
 /// What follows a shock driven by helium of temperature T4.
 fn met(gas: TestGas<'_>, entry: Entry, value: impl Into<Known>, t4: &str) -> Interaction {
