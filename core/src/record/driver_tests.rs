@@ -78,6 +78,47 @@ fn what_a_driver_cannot_follow_is_refused() {
 }
 
 #[test]
+fn a_driver_gas_that_condenses_is_refused() {
+    let carbon_dioxide = r#"{ "gas": { "CO2": "balance" }, "temperature": "250 K" }"#;
+    // 18 bar at 250 K (from memory); the shock wants more of so heavy a gas.
+    let error = refusal(carbon_dioxide, "80 mm");
+    for name in ["driver.gas.CO2", "would condense", "in the driver", "take another driver gas"] {
+        assert!(error.contains(name), "{name} is not in: {error}");
+    }
+}
+
+#[test]
+fn a_narrow_driver_and_one_bore_alone_are_named() {
+    let helium = r#"{ "gas": { "He": "balance" }, "temperature": "295 K" }"#;
+    let error = refusal(helium, "79.9 mm");
+    assert!(error.contains("tube.driver_bore") && error.contains("79.9 mm") && error.contains("narrower"), "{error}");
+    let one = plan(helium, "80 mm").replace("\"driven_bore\": \"80 mm\", ", "");
+    let one = Plan::read(one.as_bytes()).and_then(|plan| plan.report()).unwrap();
+    assert!(flagged(&one, "one-bore") && !flagged(&report(helium), "one-bore"));
+}
+
+#[test]
+fn what_a_plan_does_not_use_or_assumes_is_said() {
+    let helium = r#"{ "gas": { "He": "balance" }, "temperature": "295 K" }"#;
+    let planned = |from: &str, to: &str| {
+        let file = plan(helium, "80 mm");
+        assert!(file.contains(from), "{from}");
+        Plan::read(file.replacen(from, to, 1).as_bytes()).and_then(|plan| plan.report())
+    };
+    let plain = report(helium);
+    // No ambient pressure, but a bore: the load on the end wall counts from some pressure.
+    assert!(flagged(&plain, "ambient-assumed") && !flagged(&plain, "target-exact") && !flagged(&plain, "not-used"));
+    let ambient = planned("\"target\"", "\"ambient\": \"98 kPa\", \"target\"").unwrap();
+    assert!(!flagged(&ambient, "ambient-assumed"));
+    assert!(flagged(&planned("\"1100 K\"", "\"1100 ± 20 K\"").unwrap(), "target-exact"));
+    assert!(flagged(&planned("\"295 K\" },", "\"295 K\", \"pressure\": \"5 bar(a)\" },").unwrap(), "not-used"));
+    for (stations, said) in [("\"6.5 m\"", "only 6 m long"), ("\"-1 m\"", "not negative")] {
+        let error = planned("\"driven_bore\"", &format!("\"stations\": [{stations}], \"driven_bore\"")).unwrap_err().to_string();
+        assert!(error.contains("tube.stations[0]") && error.contains(said), "{error}");
+    }
+}
+
+#[test]
 fn a_plan_says_what_would_be_tailored() {
     // Helium at 295 K tailors Mach 3.314 in nitrogen (an independent calculation with the same data).
     let helium = report(r#"{ "gas": { "He": "balance" }, "temperature": "295 K" }"#);

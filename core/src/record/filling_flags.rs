@@ -32,27 +32,33 @@ const ACETYLENE: f64 = 205e3;
 impl Plan {
     /// Refuses a gas that condenses in the driven section.
     pub(super) fn check_condensation(&self, fill_pressure: f64) -> Result<(), RecordError> {
-        let GasRecord::Mixture(components) = &self.gas else { return Ok(()) };
-        let temperature = self.temperature.value().to_f64();
-        for component in components {
-            let partial = component.fraction.to_f64() * fill_pressure;
-            let place = Place { name: "driven section", temperature, remedy: "take a lower fill pressure, or a warmer tube" };
-            self.condenses(&component.species, partial, &place)?;
-        }
-        Ok(())
+        let place = Place {
+            name: "driven section",
+            path: "gas",
+            temperature: self.temperature.value().to_f64(),
+            remedy: "take a lower fill pressure, or a warmer tube",
+        };
+        self.condensing(&self.gas, fill_pressure, &place).map(|_| ())
     }
 
     /// Refuses a driver gas that condenses at this pressure (Pa); flags for what comes near.
     pub(super) fn condensing_driver(&self, driver: &Driver, pressure: f64) -> Result<Vec<Flag>, RecordError> {
-        let (Some(GasRecord::Mixture(components)), Some(temperature)) = (&driver.gas, &driver.temperature) else { return Ok(Vec::new()) };
+        let (Some(gas), Some(temperature)) = (&driver.gas, &driver.temperature) else { return Ok(Vec::new()) };
         let place = Place {
             name: "driver",
+            path: "driver.gas",
             temperature: temperature.value().to_f64(),
             remedy: "take another driver gas, a hotter driver or a weaker shock",
         };
+        self.condensing(gas, pressure, &place)
+    }
+
+    /// Every species of a gas at its partial pressure.
+    fn condensing(&self, gas: &GasRecord, pressure: f64, place: &Place) -> Result<Vec<Flag>, RecordError> {
+        let GasRecord::Mixture(components) = gas else { return Ok(Vec::new()) };
         let mut flags = Vec::new();
         for component in components {
-            flags.extend(self.condenses(&component.species, component.fraction.to_f64() * pressure, &place)?);
+            flags.extend(self.condenses(&component.species, component.fraction.to_f64() * pressure, place)?);
         }
         Ok(flags)
     }
@@ -68,6 +74,7 @@ impl Plan {
         flags.extend(meets_undiluted(record, report, &self.species.iter().map(|own| own.name.as_str()).collect::<Vec<_>>()));
         let place = Place {
             name: record.vessel.name(),
+            path: "gas",
             temperature: report.temperature,
             remedy: match record.vessel {
                 Vessel::Mixing => "lower filling.pressure, or warm the vessel and state filling.temperature",
@@ -130,7 +137,7 @@ impl Plan {
             Condensation::Above(limit) => limit,
         };
         if partial > limit {
-            let path = format!("{}gas.{species}", if place.name == "driver" { "driver." } else { "" });
+            let path = format!("{}.{species}", place.path);
             let typed = self.entries.iter().find(|entry| entry.path == path).map_or("", |entry| entry.typed.as_str());
             let wrong = format!(
                 "it would condense: its partial pressure in the {} is {}, its vapour pressure at {} K is {}",
@@ -156,6 +163,8 @@ impl Plan {
 /// Where a gas could condense.
 struct Place {
     name: &'static str,
+    /// The field that holds its gas.
+    path: &'static str,
     temperature: f64,
     remedy: &'static str,
 }
